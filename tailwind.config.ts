@@ -1,11 +1,10 @@
 import type { Config } from 'tailwindcss';
 
-/** The values stand in app/globals.css as variables, once for each theme. */
+/** The values stand in app/globals.css as variables, light and dark. */
 const token = (name: string) => `var(--${name})`;
 
 export default {
   content: [],
-  darkMode: ['class', '[data-theme="dark"]'],
   theme: {
     extend: {
       colors: {

@@ -80,12 +80,7 @@ export function DataTable<Row>(props: DataTableProps<Row>) {
           </p>
         </div>
       ) : null}
-      {/* biome-ignore lint/a11y/noNoninteractiveTabindex: a region that scrolls must be reachable by keyboard */}
-      <section
-        className="overflow-x-auto rounded-md border border-rule bg-surface"
-        aria-label={caption}
-        tabIndex={0}
-      >
+      <section className="overflow-x-auto rounded-md border border-rule bg-surface" aria-label={caption}>
         <table className="w-full border-collapse text-sm">
           <caption className="sr-only">{caption}</caption>
           <thead>
