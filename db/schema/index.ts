@@ -1,0 +1,17 @@
+export { auditEntries } from './audit-entries';
+export { capturedMail } from './captured-mail';
+export { fabricVersions } from './fabric-versions';
+export { fabrics } from './fabrics';
+export { invitations } from './invitations';
+export { kernelVersions } from './kernel-versions';
+export { kernels } from './kernels';
+export { mappingDrafts } from './mapping-drafts';
+export { mappings } from './mappings';
+export { members } from './members';
+export { passwordResets } from './password-resets';
+export { rateLimits } from './rate-limits';
+export { sessions } from './sessions';
+export { solveJobs } from './solve-jobs';
+export { users } from './users';
+export { workerHeartbeats } from './worker-heartbeats';
+export { workspaces } from './workspaces';
