@@ -20,7 +20,8 @@ import { fileURLToPath, pathToFileURL } from 'node:url';
 
 const NAME = 'pinloom';
 const ROOT = resolve(dirname(fileURLToPath(import.meta.url)), '..');
-const STATE = join(ROOT, '.data');
+// The tests keep a server and data of their own beside the one that people work with.
+const STATE = resolve(process.env.PINLOOM_STATE ?? join(ROOT, '.data'));
 const STATE_FILE = join(STATE, 'postgres.json');
 const LOCK_STALE_MS = 120_000;
 // For tests alone: without fsync a crash of the machine may lose commits that were acknowledged.
@@ -63,7 +64,7 @@ function chooseDataDir() {
   if (!isRoot) return inside;
   const reachable = spawnSync('runuser', ['-u', 'postgres', '--', 'test', '-x', STATE], { cwd: '/' });
   if (reachable.status === 0) return inside;
-  return `/var/tmp/${NAME}-pg-${createHash('sha256').update(ROOT).digest('hex').slice(0, 12)}`;
+  return `/var/tmp/${NAME}-pg-${createHash('sha256').update(STATE).digest('hex').slice(0, 12)}`;
 }
 
 const freePort = (wanted) =>
