@@ -1,0 +1,178 @@
+/**
+ * Trees for all nets at once: nets that share a full link negotiate for it.
+ *
+ * Every net is routed alone at first. Then, round by round, the nets on overfull links are taken up and routed
+ * anew, where a full link costs more the more nets want it now and the longer it has been wanted, until no link is
+ * overfull or the rounds are over. Nets that took a detour are at last tried again on what is left free.
+ *
+ * Source of the method: rip-up and re-route with present and historic congestion costs, L. McMurchie and C. Ebeling,
+ * Proc. ACM Symposium on Field-Programmable Gate Arrays (1995) 111–117.
+ *
+ * Deterministic. Costs are multiples of 1/4096, so sums are exact and do not depend on their order.
+ */
+import type { FabricGraph } from '../../fabric/compile';
+import type { Objective } from '../../mapping/mapping';
+import { type LinkLoads, linkLoads } from './link-loads';
+import type { NetTask } from './net-tasks';
+import { netTree } from './net-tree';
+
+const GRAIN = 4096;
+/** Of equal trees the one on freer links: far too small to make up for one hop in a tree of under 1000 links. */
+const TIE = 1 / GRAIN;
+const FIRST_PRESSURE = 0.5;
+const PRESSURE_GROWTH = 1.4;
+const MOST_PRESSURE = 64;
+const HISTORY_STEP = 0.5;
+const POLISH_PASSES = 3;
+
+export interface NetTrees {
+  /** Link indices of each task's tree. */
+  trees: number[][];
+  /** The links that each tree would have if it were the only one. */
+  aloneHops: number[];
+  /** Whether `aloneHops` is proved to be the fewest. */
+  exact: boolean[];
+  loads: LinkLoads;
+}
+
+export interface NegotiateOptions {
+  objective: Objective;
+  maxRounds: number;
+  /** The order in which nets are routed, as indices of tasks. */
+  order: readonly number[];
+  /** Trees to start from where they are as good as the net alone could have. */
+  start: readonly (readonly number[] | undefined)[];
+}
+
+export function negotiate(
+  graph: FabricGraph,
+  tasks: readonly NetTask[],
+  options: NegotiateOptions,
+): NetTrees {
+  const state = routeAlone(graph, tasks, options);
+  let best = snapshot(state);
+  if (best.excess > 0) {
+    const history = new Float64Array(graph.links.length);
+    let pressure = FIRST_PRESSURE;
+    for (let round = 0; round < options.maxRounds && best.excess > 0; round++) {
+      reroute(graph, tasks, options, state, history, pressure);
+      const now = snapshot(state);
+      if (now.excess < best.excess || (now.excess === best.excess && now.hops < best.hops)) best = now;
+      pressure = Math.min(MOST_PRESSURE, pressure * PRESSURE_GROWTH);
+    }
+    state.trees.forEach((tree, i) => {
+      state.loads.remove(tree);
+      state.trees[i] = best.trees[i] ?? tree;
+    });
+    for (const tree of state.trees) state.loads.add(tree);
+  }
+  polish(graph, tasks, options, state);
+  return state;
+}
+
+function snapshot(state: NetTrees): { trees: number[][]; excess: number; hops: number } {
+  return {
+    trees: [...state.trees],
+    excess: state.loads.totalExcess(),
+    hops: state.trees.reduce((sum, tree) => sum + tree.length, 0),
+  };
+}
+
+/** Each net on a cheapest tree of its own; full links are avoided only where that costs no hop. */
+function routeAlone(graph: FabricGraph, tasks: readonly NetTask[], options: NegotiateOptions): NetTrees {
+  const loads = linkLoads(graph);
+  const state: NetTrees = {
+    trees: tasks.map(() => []),
+    aloneHops: tasks.map(() => 0),
+    exact: tasks.map(() => false),
+    loads,
+  };
+  const cost = new Float64Array(graph.links.length);
+  for (const i of options.order) {
+    const task = tasks[i];
+    if (!task) continue;
+    for (let link = 0; link < cost.length; link++) cost[link] = 1 + tieCost(graph, loads, link);
+    const found = netTree(graph, task, cost, options.objective);
+    const start = options.start[i];
+    const links = found?.links ?? [];
+    const tree = start && start.length === links.length && fits(loads, start) ? [...start] : links;
+    state.trees[i] = tree;
+    state.aloneHops[i] = links.length;
+    state.exact[i] = found?.exact ?? false;
+    loads.add(tree);
+  }
+  return state;
+}
+
+const fits = (loads: LinkLoads, tree: readonly number[]): boolean => {
+  loads.add(tree);
+  const fit = tree.every((link) => loads.excess(link) === 0);
+  loads.remove(tree);
+  return fit;
+};
+
+function tieCost(graph: FabricGraph, loads: LinkLoads, link: number): number {
+  const nets = loads.nets[link] ?? 0;
+  return nets >= (graph.links[link]?.channels ?? 1) ? 2 * TIE : nets > 0 ? TIE : 0;
+}
+
+/** One round: history grows on overfull links, and the nets on them are routed anew, one after the other. */
+function reroute(
+  graph: FabricGraph,
+  tasks: readonly NetTask[],
+  options: NegotiateOptions,
+  state: NetTrees,
+  history: Float64Array,
+  pressure: number,
+): void {
+  const { loads, trees } = state;
+  for (let link = 0; link < history.length; link++) {
+    history[link] = (history[link] ?? 0) + HISTORY_STEP * loads.excess(link);
+  }
+  const cost = new Float64Array(history.length);
+  for (const i of options.order) {
+    const task = tasks[i];
+    const tree = trees[i] ?? [];
+    if (!task || !tree.some((link) => loads.excess(link) > 0)) continue;
+    loads.remove(tree);
+    for (let link = 0; link < cost.length; link++) {
+      const over = (loads.nets[link] ?? 0) + 1 - (graph.links[link]?.channels ?? 1);
+      const raw = (1 + (history[link] ?? 0)) * (over > 0 ? 1 + pressure * over : 1);
+      cost[link] = Math.round(raw * GRAIN) / GRAIN;
+    }
+    // Detours are what negotiation is about, so even `path` routes by cost here; polishing shortens again.
+    trees[i] = netTree(graph, task, cost, 'wire')?.links ?? tree;
+    loads.add(trees[i] ?? []);
+  }
+}
+
+/** Nets with more hops than alone try again on the links that have room, without pushing others. */
+function polish(
+  graph: FabricGraph,
+  tasks: readonly NetTask[],
+  options: NegotiateOptions,
+  state: NetTrees,
+): void {
+  const { loads, trees, aloneHops } = state;
+  const cost = new Float64Array(graph.links.length);
+  for (let pass = 0; pass < POLISH_PASSES; pass++) {
+    let improved = false;
+    for (const i of options.order) {
+      const task = tasks[i];
+      const tree = trees[i] ?? [];
+      if (!task || tree.length <= (aloneHops[i] ?? 0)) continue;
+      loads.remove(tree);
+      for (let link = 0; link < cost.length; link++) {
+        const free = (loads.nets[link] ?? 0) < (graph.links[link]?.channels ?? 1);
+        cost[link] = free ? 1 : Number.POSITIVE_INFINITY;
+      }
+      const found = netTree(graph, task, cost, options.objective)?.links;
+      if (found && found.length < tree.length) {
+        trees[i] = found;
+        improved = true;
+      }
+      loads.add(trees[i] ?? []);
+    }
+    if (!improved) return;
+  }
+}
