@@ -1,0 +1,147 @@
+/**
+ * A placement problem as small integers: what search, bounds and integer programs work on.
+ * Ops and tiles are indices; pins and units have become lists of candidate tiles.
+ */
+import type { FabricGraph } from '../fabric/compile';
+import { builtInLibrary, canHost, type UnitLibrary } from '../fabric/unit-library';
+import type { Kernel, OpId } from '../graph/kernel';
+import { netsOf } from '../graph/nets';
+import type { Objective, Pins, Placement } from '../mapping/mapping';
+
+export const UNREACHABLE_HOPS = 0xffff;
+
+/** All edges from one op to another, joined; the weight is how many they are (or their weights' sum). */
+export interface PlacedPair {
+  from: number;
+  to: number;
+  weight: number;
+}
+
+export interface PlacedNet {
+  source: number;
+  consumers: readonly number[];
+  weight: number;
+}
+
+export interface HopTable {
+  tileCount: number;
+  rows: number;
+  cols: number;
+  /** Hops from tile p to tile q at [p · tileCount + q], UNREACHABLE_HOPS where there is no way. */
+  distance: Uint16Array;
+  maxHops: number | null;
+}
+
+export interface PlacementInstance extends HopTable {
+  objective: Objective;
+  opCount: number;
+  /** Tiles that implement the op (R3) and agree with its pin (R4), ascending. */
+  candidates: readonly (readonly number[])[];
+  pairs: readonly PlacedPair[];
+  nets: readonly PlacedNet[];
+  /** Every distance is the grid's row distance plus column distance. */
+  isPlainMesh: boolean;
+}
+
+/** Tile index by op index. */
+export type Tiling = Int32Array;
+
+/** Preconditions: a checked problem. Cost: ops × tiles, and tiles² for the test of the mesh. */
+export function buildInstance(
+  kernel: Kernel,
+  graph: FabricGraph,
+  pins: Pins,
+  objective: Objective,
+  library: UnitLibrary = builtInLibrary,
+): PlacementInstance {
+  const index = new Map<OpId, number>(kernel.ops.map((op, i) => [op.id, i]));
+  const candidates = kernel.ops.map((op) => {
+    const pin = pins[op.id];
+    const tiles: number[] = [];
+    for (let tile = 0; tile < graph.tileCount; tile++) {
+      if (pin !== undefined && graph.tiles[tile] !== pin) continue;
+      if (canHost(graph.units[tile] ?? null, op.kind, library)) tiles.push(tile);
+    }
+    return tiles;
+  });
+  const nets = netsOf(kernel).map((net) => ({
+    source: index.get(net.source) as number,
+    consumers: net.consumers.map((id) => index.get(id) as number),
+    weight: 1,
+  }));
+  const table = {
+    tileCount: graph.tileCount,
+    rows: graph.rows,
+    cols: graph.cols,
+    distance: graph.distance,
+    maxHops: graph.maxHops,
+  };
+  return {
+    ...table,
+    objective,
+    opCount: kernel.ops.length,
+    candidates,
+    pairs: joinPairs(
+      kernel.edges.map((edge) => ({
+        from: index.get(edge.from) as number,
+        to: index.get(edge.to) as number,
+        weight: 1,
+      })),
+    ),
+    nets,
+    isPlainMesh: hasMeshDistances(table),
+  };
+}
+
+/** Pairs with the same ends become one; an op that feeds itself costs nothing and is left out. */
+export function joinPairs(pairs: readonly PlacedPair[]): PlacedPair[] {
+  const joined = new Map<string, PlacedPair>();
+  for (const { from, to, weight } of pairs) {
+    if (from === to) continue;
+    const key = `${from}>${to}`;
+    const known = joined.get(key);
+    if (known) known.weight += weight;
+    else joined.set(key, { from, to, weight });
+  }
+  return [...joined.values()];
+}
+
+/** Whether all hop counts are grid distances, which also says that every link joins grid neighbours. */
+export function hasMeshDistances({ tileCount, cols, distance }: HopTable): boolean {
+  for (let p = 0; p < tileCount; p++) {
+    const row = Math.floor(p / cols);
+    const col = p % cols;
+    for (let q = 0; q < tileCount; q++) {
+      const grid = Math.abs(Math.floor(q / cols) - row) + Math.abs((q % cols) - col);
+      if (distance[p * tileCount + q] !== grid) return false;
+    }
+  }
+  return true;
+}
+
+export const hopsBetween = (table: HopTable, from: number, to: number): number =>
+  table.distance[from * table.tileCount + to] as number;
+
+/** Whether a path of that many hops exists and is within the clock's limit (R7). */
+export const withinReach = (table: HopTable, hops: number): boolean =>
+  hops !== UNREACHABLE_HOPS && (table.maxHops === null || hops <= table.maxHops);
+
+export function tilingOf(kernel: Kernel, graph: FabricGraph, placement: Placement): Tiling | null {
+  const tiling = new Int32Array(kernel.ops.length);
+  for (const [i, op] of kernel.ops.entries()) {
+    const tile = placement[op.id];
+    const at = tile === undefined ? -1 : graph.tileIndex(tile);
+    if (at < 0) return null;
+    tiling[i] = at;
+  }
+  return tiling;
+}
+
+export function placementOf(kernel: Kernel, graph: FabricGraph, tiling: ArrayLike<number>): Placement {
+  const placement: Placement = {};
+  for (const [i, op] of kernel.ops.entries()) {
+    const tile = graph.tiles[tiling[i] as number];
+    if (tile !== undefined) placement[op.id] = tile;
+  }
+  return placement;
+}

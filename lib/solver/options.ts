@@ -1,0 +1,17 @@
+/** How long and with what a placement is solved. */
+import { z } from 'zod';
+
+export const engineChoices = ['auto', 'highs', 'simplex', 'search'] as const;
+export type EngineChoice = (typeof engineChoices)[number];
+
+export const SOLVE_LIMITS = { timeLimitMs: 3_600_000, seed: 2 ** 31 - 1, memoryLimitMb: 4096 } as const;
+
+export const solveOptionsSchema = z.strictObject({
+  /** `auto` picks the integer-program engine by the model's size; `search` uses none. */
+  engine: z.enum(engineChoices),
+  timeLimitMs: z.number().int().min(1).max(SOLVE_LIMITS.timeLimitMs),
+  seed: z.number().int().min(0).max(SOLVE_LIMITS.seed),
+});
+export type SolveOptions = z.infer<typeof solveOptionsSchema>;
+
+export const defaultSolveOptions: SolveOptions = { engine: 'auto', timeLimitMs: 30_000, seed: 1 };

@@ -1,0 +1,144 @@
+/**
+ * Simulated annealing over placements (Kirkpatrick, Gelatt and Vecchi 1983): moves to a free tile and swaps of
+ * two ops, always on candidate tiles, so R1–R4 hold throughout. The schedule is geometric in the number of moves.
+ * Same random stream, same result. Cost: `moves` × the terms of two ops.
+ */
+import type { PlacementInstance } from '../instance';
+import type { PlacementCost } from './placement-cost';
+import type { Random } from './random';
+
+export interface AnnealSchedule {
+  moves: number;
+  startTemperature: number;
+  endTemperature: number;
+}
+
+export interface AnnealMoves {
+  instance: PlacementInstance;
+  cost: PlacementCost;
+  /** For each op and tile, the op's candidates nearest to the tile. */
+  nearCandidates: (op: number, tile: number) => readonly number[];
+  /** What an op pays to stand on a tile; raised where routes were crowded. */
+  tileCost: Float64Array;
+}
+
+const NEAR_COUNT = 10;
+
+export function annealMoves(instance: PlacementInstance, cost: PlacementCost): AnnealMoves {
+  const cache = new Map<number, readonly number[]>();
+  const { tileCount, candidates, distance } = instance;
+  const groups = new Map<string, number>();
+  const groupOf = candidates.map((list) => {
+    const key = list.join();
+    const group = groups.get(key) ?? groups.size;
+    groups.set(key, group);
+    return group;
+  });
+  return {
+    instance,
+    cost,
+    tileCost: new Float64Array(tileCount),
+    nearCandidates: (op, tile) => {
+      const key = (groupOf[op] as number) * tileCount + tile;
+      let near = cache.get(key);
+      if (!near) {
+        near = [...(candidates[op] ?? [])]
+          .sort(
+            (a, b) =>
+              (distance[tile * tileCount + a] as number) - (distance[tile * tileCount + b] as number) ||
+              a - b,
+          )
+          .slice(0, NEAR_COUNT);
+        cache.set(key, near);
+      }
+      return near;
+    },
+  };
+}
+
+/** Anneals `start` in place of nothing: returns the best tiling met and its cost, tile costs included. */
+export function anneal(
+  moves: AnnealMoves,
+  start: Int32Array,
+  schedule: AnnealSchedule,
+  random: Random,
+): { tiling: Int32Array; cost: number } {
+  const { instance, cost, tileCost } = moves;
+  const movable = instance.candidates.flatMap((list, op) => (list.length > 1 ? [op] : []));
+  const tiling = start.slice();
+  const opAt = new Int32Array(instance.tileCount).fill(-1);
+  tiling.forEach((tile, op) => {
+    opAt[tile] = op;
+  });
+  let current = cost.total(tiling) + tiling.reduce((sum, tile) => sum + (tileCost[tile] as number), 0);
+  let best = current;
+  let bestTiling = tiling.slice();
+  if (movable.length === 0) return { tiling: bestTiling, cost: best };
+  const isCandidate = candidateTest(instance);
+  const stamp = new Int32Array(cost.termCount);
+  let tick = 0;
+  const cooling = (schedule.endTemperature / schedule.startTemperature) ** (1 / Math.max(1, schedule.moves));
+  let temperature = schedule.startTemperature;
+
+  /** Sum of the terms of one or two ops, each term once. */
+  const local = (a: number, b: number): number => {
+    tick++;
+    let sum = tileCost[tiling[a] as number] as number;
+    for (const term of cost.termsOf[a] as readonly number[]) {
+      stamp[term] = tick;
+      sum += cost.term(term, tiling);
+    }
+    if (b < 0) return sum;
+    sum += tileCost[tiling[b] as number] as number;
+    for (const term of cost.termsOf[b] as readonly number[]) {
+      if (stamp[term] !== tick) sum += cost.term(term, tiling);
+    }
+    return sum;
+  };
+
+  for (let move = 0; move < schedule.moves; move++, temperature *= cooling) {
+    const op = movable[random.below(movable.length)] as number;
+    const from = tiling[op] as number;
+    const to = pickTile(moves, tiling, op, random);
+    if (to === from) continue;
+    const other = opAt[to] as number;
+    if (other >= 0 && !isCandidate(other, from)) continue;
+    const before = local(op, other);
+    tiling[op] = to;
+    if (other >= 0) tiling[other] = from;
+    const delta = local(op, other) - before;
+    if (delta <= 0 || random.unit() < Math.exp(-delta / temperature)) {
+      opAt[from] = other;
+      opAt[to] = op;
+      current += delta;
+      if (current < best - 1e-9) {
+        best = current;
+        bestTiling = tiling.slice();
+      }
+    } else {
+      tiling[op] = from;
+      if (other >= 0) tiling[other] = to;
+    }
+  }
+  return { tiling: bestTiling, cost: best };
+}
+
+/** Mostly a tile near one of the op's neighbours, otherwise any candidate. */
+function pickTile(moves: AnnealMoves, tiling: Int32Array, op: number, random: Random): number {
+  const neighbours = moves.cost.neighboursOf[op] as readonly number[];
+  if (neighbours.length > 0 && random.unit() < 0.8) {
+    const neighbour = neighbours[random.below(neighbours.length)] as number;
+    const near = moves.nearCandidates(op, tiling[neighbour] as number);
+    return near[random.below(near.length)] as number;
+  }
+  const all = moves.instance.candidates[op] as readonly number[];
+  return all[random.below(all.length)] as number;
+}
+
+function candidateTest(instance: PlacementInstance): (op: number, tile: number) => boolean {
+  const allowed = new Uint8Array(instance.opCount * instance.tileCount);
+  instance.candidates.forEach((list, op) => {
+    for (const tile of list) allowed[op * instance.tileCount + tile] = 1;
+  });
+  return (op, tile) => allowed[op * instance.tileCount + tile] === 1;
+}
