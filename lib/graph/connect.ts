@@ -18,9 +18,14 @@ const refuse = (reason: string): ConnectionAnswer => ({ ok: false, reason });
 /**
  * Checks ends, port, type, width and that the port is free. Linear in ops and edges.
  * `ignoring` is an edge that is being moved: it neither occupies its port nor closes cycles.
+ * Who asks for many ports of one kernel gives its index along, which saves building it each time.
  */
-export function canConnect(kernel: Kernel, request: ConnectionRequest, ignoring?: EdgeId): ConnectionAnswer {
-  const index = indexKernel(kernel);
+export function canConnect(
+  kernel: Kernel,
+  request: ConnectionRequest,
+  ignoring?: EdgeId,
+  index: KernelIndex = indexKernel(kernel),
+): ConnectionAnswer {
   const source = index.opById.get(request.from);
   const target = index.opById.get(request.to);
   if (source === undefined) return refuse('The op that the connection starts from no longer exists.');
