@@ -14,6 +14,7 @@ import {
 } from 'drizzle-orm/pg-core';
 import type { Id } from '../../lib/ids';
 import type { Objective, Pins, Placement, Routes } from '../../lib/mapping/mapping';
+import type { InfeasibleReason } from '../../lib/solver/outcome';
 import { createdAt, instant } from './columns';
 import { fabricVersions } from './fabric-versions';
 import { kernelVersions } from './kernel-versions';
@@ -54,6 +55,8 @@ export interface SolveEnd {
   stopReason: string | null;
   /** Why nothing fits, or what went wrong; plain sentences for the person at the bench. */
   reason: string | null;
+  /** The ops, tiles and connections that the reason names, to be shown on the bench; null unless infeasible. */
+  explanation: InfeasibleReason | null;
 }
 
 /** One request to the solver. The queue delivers its id; what it is and how far it came stands here. */
