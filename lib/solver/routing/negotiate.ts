@@ -14,7 +14,7 @@ import type { FabricGraph } from '../../fabric/compile';
 import type { Objective } from '../../mapping/mapping';
 import { type LinkLoads, linkLoads } from './link-loads';
 import type { NetTask } from './net-tasks';
-import { netTree } from './net-tree';
+import { netTree, objectiveHops } from './net-tree';
 
 const GRAIN = 4096;
 /** Of equal trees the one on freer links: far too small to make up for one hop in a tree of under 1000 links. */
@@ -28,7 +28,7 @@ const POLISH_PASSES = 3;
 export interface NetTrees {
   /** Link indices of each task's tree. */
   trees: number[][];
-  /** The links that each tree would have if it were the only one. */
+  /** What each tree would cost by the objective if it were the only one. */
   aloneHops: number[];
   /** Whether `aloneHops` is proved to be the fewest. */
   exact: boolean[];
@@ -50,13 +50,14 @@ export function negotiate(
   options: NegotiateOptions,
 ): NetTrees {
   const state = routeAlone(graph, tasks, options);
-  let best = snapshot(state);
+  const snapshot = (): Snapshot => takeSnapshot(graph, tasks, options.objective, state);
+  let best = snapshot();
   if (best.excess > 0) {
     const history = new Float64Array(graph.links.length);
     let pressure = FIRST_PRESSURE;
     for (let round = 0; round < options.maxRounds && best.excess > 0; round++) {
       reroute(graph, tasks, options, state, history, pressure);
-      const now = snapshot(state);
+      const now = snapshot();
       if (now.excess < best.excess || (now.excess === best.excess && now.hops < best.hops)) best = now;
       pressure = Math.min(MOST_PRESSURE, pressure * PRESSURE_GROWTH);
     }
@@ -70,11 +71,25 @@ export function negotiate(
   return state;
 }
 
-function snapshot(state: NetTrees): { trees: number[][]; excess: number; hops: number } {
+interface Snapshot {
+  trees: number[][];
+  excess: number;
+  hops: number;
+}
+
+function takeSnapshot(
+  graph: FabricGraph,
+  tasks: readonly NetTask[],
+  objective: Objective,
+  state: NetTrees,
+): Snapshot {
   return {
     trees: [...state.trees],
     excess: state.loads.totalExcess(),
-    hops: state.trees.reduce((sum, tree) => sum + tree.length, 0),
+    hops: tasks.reduce(
+      (sum, task, i) => sum + objectiveHops(graph, task, state.trees[i] ?? [], objective),
+      0,
+    ),
   };
 }
 
@@ -95,9 +110,13 @@ function routeAlone(graph: FabricGraph, tasks: readonly NetTask[], options: Nego
     const found = netTree(graph, task, cost, options.objective);
     const start = options.start[i];
     const links = found?.links ?? [];
-    const tree = start && start.length === links.length && fits(loads, start) ? [...start] : links;
+    const alone = objectiveHops(graph, task, links, options.objective);
+    const tree =
+      start && objectiveHops(graph, task, start, options.objective) === alone && fits(loads, start)
+        ? [...start]
+        : links;
     state.trees[i] = tree;
-    state.aloneHops[i] = links.length;
+    state.aloneHops[i] = alone;
     state.exact[i] = found?.exact ?? false;
     loads.add(tree);
   }
@@ -160,14 +179,16 @@ function polish(
     for (const i of options.order) {
       const task = tasks[i];
       const tree = trees[i] ?? [];
-      if (!task || tree.length <= (aloneHops[i] ?? 0)) continue;
+      if (!task) continue;
+      const hops = objectiveHops(graph, task, tree, options.objective);
+      if (hops <= (aloneHops[i] ?? 0)) continue;
       loads.remove(tree);
       for (let link = 0; link < cost.length; link++) {
         const free = (loads.nets[link] ?? 0) < (graph.links[link]?.channels ?? 1);
         cost[link] = free ? 1 : Number.POSITIVE_INFINITY;
       }
       const found = netTree(graph, task, cost, options.objective)?.links;
-      if (found && found.length < tree.length) {
+      if (found && objectiveHops(graph, task, found, options.objective) < hops) {
         trees[i] = found;
         improved = true;
       }

@@ -1,7 +1,8 @@
 /** The tree of one net at given link costs, under the objective and the clock's limit. */
 import type { FabricGraph } from '../../fabric/compile';
 import type { Objective } from '../../mapping/mapping';
-import { treeDepth } from './link-tree';
+import { costOf } from './attach-tree';
+import { treeDepth, walkLinks } from './link-tree';
 import type { NetTask } from './net-tasks';
 import { type SteinerTree, shortestPathsTree, steinerTree } from './steiner-tree';
 
@@ -20,19 +21,32 @@ export function netTree(
   objective: Objective,
 ): SteinerTree | null {
   const { sourceTile, targets, farthestHops } = task;
-  const fewestHops = (): SteinerTree | null => {
+  const fewestHops = (exact: boolean): SteinerTree | null => {
     const links = shortestPathsTree(graph, sourceTile, targets, linkCost);
-    return links && { links, cost: links.length, exact: false };
+    return links && { links, cost: costOf(links, linkCost), exact };
   };
   if (objective === 'path') {
-    const direct = fewestHops();
+    // Every path is as short as the fabric allows, so the sum of paths is the least there is.
+    const direct = fewestHops(true);
     if (direct !== null) return direct;
   }
   const limited = steinerTree(graph, sourceTile, targets, linkCost, { maxDepthHops: graph.maxHops });
-  if (limited === null) return fewestHops() ?? steinerTree(graph, sourceTile, targets, linkCost);
+  if (limited === null) return fewestHops(false) ?? steinerTree(graph, sourceTile, targets, linkCost);
   if (!limited.exact || targets.length > SHALLOW_TARGETS) return limited;
   const depth = treeDepth(graph, sourceTile, targets, limited.links);
   if (depth <= farthestHops) return limited;
   const shallow = steinerTree(graph, sourceTile, targets, linkCost, { maxDepthHops: farthestHops });
   return shallow !== null && shallow.cost <= limited.cost ? shallow : limited;
+}
+
+/** What a tree adds to the objective: its links for `wire`, the hops of all its connections for `path`. */
+export function objectiveHops(
+  graph: FabricGraph,
+  task: NetTask,
+  tree: readonly number[],
+  objective: Objective,
+): number {
+  if (objective === 'wire') return tree.length;
+  const { hops } = walkLinks(graph, task.sourceTile, tree);
+  return task.edges.reduce((sum, { tile }) => sum + (hops.get(tile) ?? 0), 0);
 }

@@ -22,9 +22,9 @@ export interface RouteOptions {
 export interface NetRoute {
   source: OpId;
   wireHops: number;
-  /** The links of the net's tree if no other net were there. */
+  /** What the net adds to the objective (its links, or the hops of its paths) if no other net were there. */
   aloneHops: number;
-  /** Whether no tree with fewer links than `aloneHops` exists, for the objective `wire`. */
+  /** Whether `aloneHops` is proved to be the least possible within the clock's limit. */
   exact: boolean;
 }
 
@@ -75,7 +75,7 @@ export function routePlacement(
       source: task.source,
       wireHops: state.trees[i]?.length ?? 0,
       aloneHops: state.aloneHops[i] ?? 0,
-      exact: objective === 'wire' && (state.exact[i] ?? false),
+      exact: state.exact[i] ?? false,
     })),
   };
 }
