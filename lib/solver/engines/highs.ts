@@ -1,6 +1,6 @@
 /** HiGHS, as WebAssembly: branch and cut (package `highs`, MIT). */
 import loadHighs, { type Highs, type Model } from 'highs';
-import { type IntegerProgram, objectiveAt } from '../integer-program/integer-program';
+import { type IntegerProgram, wholeObjective } from '../integer-program/integer-program';
 import { type Engine, type EngineLimits, type EngineOutcome, tightenBound } from './engine';
 
 /** Loads the WebAssembly module once; takes about 50 ms. */
@@ -90,7 +90,7 @@ function callbacks(highs: Highs, program: IntegerProgram, limits: EngineLimits, 
     [callbackType.mipImprovingSolution]: (event: { data: { mip_solution?: Float64Array } }): undefined => {
       const values = event.data.mip_solution;
       if (!values) return;
-      const objectiveValue = objectiveAt(program, values);
+      const objectiveValue = wholeObjective(program, values);
       if (state.best && state.best.objectiveValue <= objectiveValue) return;
       state.best = { objectiveValue, values };
       limits.onPoint?.(objectiveValue, values);
@@ -109,7 +109,7 @@ function readOutcome(
   if (modelStatus === status.infeasible) return { status: 'infeasible' };
   if (modelStatus === status.optimal || modelStatus === status.empty) {
     const values = model.getSolution().colValue;
-    const objectiveValue = objectiveAt(program, values);
+    const objectiveValue = wholeObjective(program, values);
     const dual = program.isInteger.includes(1) ? Number(model.info.get('mip_dual_bound')) : objectiveValue;
     const bound = Number.isFinite(dual)
       ? Math.min(objectiveValue, tightenBound(program, dual))

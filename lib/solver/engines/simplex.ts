@@ -1,7 +1,7 @@
 /** javascript-lp-solver: tableau simplex and branch and bound in plain JavaScript (Unlicense); for small models. */
 import solver, { type Model } from 'javascript-lp-solver';
-import { type IntegerProgram, objectiveAt, violationAt } from '../integer-program/integer-program';
-import { type Engine, type EngineLimits, type EngineOutcome, tightenBound } from './engine';
+import { type IntegerProgram, violationAt, wholeObjective } from '../integer-program/integer-program';
+import { type Engine, type EngineOutcome, tightenBound } from './engine';
 
 /** What ends a run from within a pivot: the package looks at its own time limit only between nodes. */
 const deadlineReached = new Error('deadline reached');
@@ -108,7 +108,7 @@ function read(program: IntegerProgram, answer: unknown): EngineOutcome {
   if (violationAt(program, values) > FEASIBLE_WITHIN) {
     return unfinished('engine failed', 'the point found breaks a row');
   }
-  const objectiveValue = objectiveAt(program, values);
+  const objectiveValue = wholeObjective(program, values);
   return {
     status: 'optimal',
     objectiveValue,

@@ -103,6 +103,12 @@ export function objectiveAt(program: IntegerProgram, values: ArrayLike<number>):
   return sum;
 }
 
+/** The objective of a feasible point, without an engine's rounding error where it must be whole. */
+export function wholeObjective(program: IntegerProgram, values: ArrayLike<number>): number {
+  const value = objectiveAt(program, values);
+  return program.hasIntegerObjective ? Math.round(value) : value;
+}
+
 /** The largest amount by which a point breaks a bound, a row or integrality; 0 for a feasible point. */
 export function violationAt(program: IntegerProgram, values: ArrayLike<number>): number {
   let worst = 0;

@@ -11,6 +11,8 @@ export interface AnnealSchedule {
   moves: number;
   startTemperature: number;
   endTemperature: number;
+  /** Looked at every 1024 moves; true ends the run with the best so far. */
+  shouldStop?: () => boolean;
 }
 
 export interface AnnealMoves {
@@ -97,6 +99,7 @@ export function anneal(
   };
 
   for (let move = 0; move < schedule.moves; move++, temperature *= cooling) {
+    if ((move & 1023) === 1023 && schedule.shouldStop?.()) break;
     const op = movable[random.below(movable.length)] as number;
     const from = tiling[op] as number;
     const to = pickTile(moves, tiling, op, random);

@@ -20,6 +20,9 @@ export interface PlacementCost {
   total(tiling: Int32Array): number;
 }
 
+/** Above this, a net's estimate is one of linear cost. */
+const PRIM_TERMINALS = 24;
+
 type Term = { ops: readonly number[]; cost: (tiling: Int32Array) => number };
 
 export function placementCost(instance: PlacementInstance): PlacementCost {
@@ -69,8 +72,11 @@ function limitTerms(instance: PlacementInstance): Term[] {
   }));
 }
 
-function costTable(instance: PlacementInstance, inReach: (hops: number) => number): Float64Array {
+function costTable(instance: PlacementInstance, inReach: (hops: number) => number): ArrayLike<number> {
   const limit = instance.maxHops ?? 0;
+  if (inReach(1) === 1 && instance.distance.every((hops) => withinReach(instance, hops))) {
+    return instance.distance;
+  }
   return Float64Array.from(instance.distance, (hops) => {
     if (withinReach(instance, hops)) return inReach(hops);
     return LIMIT_PENALTY + (hops === UNREACHABLE_HOPS ? instance.tileCount : hops - limit);
@@ -93,9 +99,12 @@ function treeEstimate(instance: PlacementInstance, ops: readonly number[]): Term
   if (ops.length === 2) return (tiling) => hops(tiling[a] as number, tiling[b] as number);
   if (instance.isPlainMesh) {
     if (ops.length === 3) return (tiling) => boundingSpan(instance.cols, ops, tiling);
+    const trunks = trunkTree(instance.rows, instance.cols, ops);
+    if (ops.length > PRIM_TERMINALS) return trunks;
     const prim = directedPrim(hops, ops);
-    return (tiling) => Math.min(prim(tiling), trunkTree(instance.cols, ops, tiling));
+    return (tiling) => Math.min(prim(tiling), trunks(tiling));
   }
+  if (ops.length > PRIM_TERMINALS) return sourceStar(hops, ops);
   if (ops.length > 3) return directedPrim(hops, ops);
   return (tiling) => {
     let best = Number.POSITIVE_INFINITY;
@@ -107,6 +116,17 @@ function treeEstimate(instance: PlacementInstance, ops: readonly number[]): Term
     return best;
   };
 }
+
+/** Each consumer on its own: far above the least tree, but cheap. */
+const sourceStar =
+  (hops: (from: number, to: number) => number, ops: readonly number[]): Term['cost'] =>
+  (tiling) => {
+    let sum = 0;
+    for (let k = 1; k < ops.length; k++) {
+      sum += hops(tiling[ops[0] as number] as number, tiling[ops[k] as number] as number);
+    }
+    return sum;
+  };
 
 function boundingSpan(cols: number, ops: readonly number[], tiling: Int32Array): number {
   let [rowLow, rowHigh, colLow, colHigh] = [0xffff, -1, 0xffff, -1];
@@ -122,31 +142,57 @@ function boundingSpan(cols: number, ops: readonly number[], tiling: Int32Array):
   return rowHigh - rowLow + colHigh - colLow;
 }
 
-/** The shorter of a horizontal trunk at the median row and a vertical one at the median column, with branches. */
-function trunkTree(cols: number, ops: readonly number[], tiling: Int32Array): number {
-  const rows = ops.map((op) => Math.floor((tiling[op] as number) / cols)).sort((x, y) => x - y);
-  const columns = ops.map((op) => (tiling[op] as number) % cols).sort((x, y) => x - y);
-  const span = (sorted: readonly number[]) => (sorted.at(-1) as number) - (sorted[0] as number);
-  /** Ops on one line of the trunk's direction share a branch on each side, so count the farthest only. */
-  const branches = (along: (tile: number) => number, across: (tile: number) => number, trunk: number) => {
-    const reach = new Map<number, { up: number; down: number }>();
-    for (const op of ops) {
-      const tile = tiling[op] as number;
-      const off = across(tile) - trunk;
-      const line = reach.get(along(tile)) ?? { up: 0, down: 0 };
-      reach.set(along(tile), { up: Math.max(line.up, -off), down: Math.max(line.down, off) });
+/**
+ * The shorter of a horizontal trunk at the median row and a vertical one at the median column. Terminals of one line
+ * across the trunk share a branch on each side, so only the farthest counts.
+ */
+function trunkTree(rows: number, cols: number, ops: readonly number[]): Term['cost'] {
+  const rowOf = new Int32Array(ops.length);
+  const colOf = new Int32Array(ops.length);
+  const rowTrunk = trunk(cols, ops.length);
+  const colTrunk = trunk(rows, ops.length);
+  return (tiling) => {
+    for (let k = 0; k < ops.length; k++) {
+      const tile = tiling[ops[k] as number] as number;
+      rowOf[k] = Math.floor(tile / cols);
+      colOf[k] = tile % cols;
     }
-    let sum = 0;
-    for (const line of reach.values()) sum += line.up + line.down;
-    return sum;
+    return Math.min(rowTrunk(colOf, rowOf), colTrunk(rowOf, colOf));
   };
-  const row = (tile: number) => Math.floor(tile / cols);
-  const col = (tile: number) => tile % cols;
-  const middle = (sorted: readonly number[]) => sorted[sorted.length >> 1] as number;
-  return Math.min(
-    span(columns) + branches(col, row, middle(rows)),
-    span(rows) + branches(row, col, middle(columns)),
-  );
+}
+
+/** Length of the trunk along one axis with its branches across; scratch space is kept between calls. */
+function trunk(lines: number, count: number): (along: Int32Array, across: Int32Array) => number {
+  const sorted = new Int32Array(count);
+  const up = new Int32Array(lines);
+  const down = new Int32Array(lines);
+  return (along, across) => {
+    sorted.set(across);
+    sorted.sort();
+    const at = sorted[count >> 1] as number;
+    let low = lines;
+    let high = -1;
+    let sum = 0;
+    for (let k = 0; k < count; k++) {
+      const line = along[k] as number;
+      up[line] = 0;
+      down[line] = 0;
+      if (line < low) low = line;
+      if (line > high) high = line;
+    }
+    for (let k = 0; k < count; k++) {
+      const line = along[k] as number;
+      const off = (across[k] as number) - at;
+      if (-off > (up[line] as number)) {
+        sum += -off - (up[line] as number);
+        up[line] = -off;
+      } else if (off > (down[line] as number)) {
+        sum += off - (down[line] as number);
+        down[line] = off;
+      }
+    }
+    return high - low + sum;
+  };
 }
 
 /** Joins the nearest op again and again, by the shortest way from an op that is joined already (Prim 1957). */

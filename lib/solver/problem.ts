@@ -1,0 +1,90 @@
+/** What is to be placed, and whether it can be tried at all. */
+import { compileFabric, type FabricGraph } from '../fabric/compile';
+import { type Fabric, fabricSchema } from '../fabric/fabric';
+import { type UnitLibrary, type UnitSpec, unitLibrary } from '../fabric/unit-library';
+import { type Kernel, kernelSchema, type OpId } from '../graph/kernel';
+import { validateKernel } from '../graph/validate';
+import {
+  type Objective,
+  objectives,
+  type Pins,
+  type Placement,
+  pinsSchema,
+  placementSchema,
+} from '../mapping/mapping';
+import { err, ok, type Result } from '../result';
+
+export interface PlacementProblem {
+  kernel: Kernel;
+  fabric: Fabric;
+  pins: Pins;
+  objective: Objective;
+  /** A placement to start from, whole or partial. Parts that are not legal are left out. */
+  start?: Placement;
+  /** The workspace's own units, besides the built-in ones. */
+  units?: readonly UnitSpec[];
+}
+
+export interface CheckedProblem extends PlacementProblem {
+  graph: FabricGraph;
+  library: UnitLibrary;
+}
+
+/** Sizes that the solver takes on. Above them it says so instead of running out of memory. */
+export const PROBLEM_LIMITS = { ops: 2000, tiles: 4096, candidates: 4_000_000 } as const;
+
+/** What is wrong with the input, in sentences that say what to change. */
+export interface BadInput {
+  code: 'bad input';
+  messages: string[];
+}
+
+/** Checks shapes, the kernel's rules, and that pins name ops and tiles that exist. Never throws. */
+export function checkProblem(problem: PlacementProblem): Result<CheckedProblem, BadInput> {
+  const shape = shapeFaults(problem);
+  if (shape.length > 0) return err({ code: 'bad input', messages: shape });
+  const { kernel, fabric, pins } = problem;
+  const messages = validateKernel(kernel)
+    .filter((found) => found.severity === 'error')
+    .map((found) => found.message);
+  const graph = compileFabric(fabric);
+  const opIds = new Set<string>(kernel.ops.map((op) => op.id));
+  for (const [id, tile] of Object.entries(pins)) {
+    if (!opIds.has(id))
+      messages.push(`A pin names the op ${id}, which the kernel does not have: remove the pin.`);
+    if (graph.tileIndex(tile) < 0) {
+      messages.push(
+        `The pin of ${id} names the tile ${tile}, but the fabric has ${fabric.rows} rows and ${fabric.cols} columns: pin it to a tile of the fabric.`,
+      );
+    }
+  }
+  if (graph.tileCount * kernel.ops.length > PROBLEM_LIMITS.candidates) {
+    messages.push(
+      `${kernel.ops.length} ops on ${graph.tileCount} tiles are more than the solver takes on: use a smaller fabric or kernel.`,
+    );
+  }
+  if (messages.length > 0) return err({ code: 'bad input', messages });
+  return ok({ ...problem, graph, library: unitLibrary(problem.units ?? []) });
+}
+
+function shapeFaults(problem: PlacementProblem): string[] {
+  const parts = [
+    ['kernel', kernelSchema.safeParse(problem.kernel)],
+    ['fabric', fabricSchema.safeParse(problem.fabric)],
+    ['pins', pinsSchema.safeParse(problem.pins)],
+    ['start', placementSchema.safeParse(problem.start ?? {})],
+  ] as const;
+  const faults = parts.flatMap(([name, parsed]) =>
+    parsed.success
+      ? []
+      : parsed.error.issues
+          .slice(0, 10)
+          .map((issue) => `${[name, ...issue.path].join('.')}: ${issue.message}`),
+  );
+  if (!objectives.includes(problem.objective)) faults.push(`objective: one of ${objectives.join(', ')}`);
+  return faults;
+}
+
+/** How an op is called in reasons: its label, or its id. */
+export const opLabel = (kernel: Kernel, id: OpId): string =>
+  kernel.ops.find((op) => op.id === id)?.label || id;

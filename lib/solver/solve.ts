@@ -1,0 +1,129 @@
+/**
+ * Places a kernel on a fabric: presolve → search → bound by an integer program → exact routes, with every mapping
+ * routed and verified before it counts. One pass a function; each may end the solve by proving the best optimal.
+ */
+
+import { ok, type Result } from '../result';
+import { starBound, trivialBound } from './bounds/star-bound';
+import type { Engine } from './engines/engine';
+import { explainInfeasible } from './explain/explain-infeasible';
+import { explainStars } from './explain/explain-stars';
+import { buildInstance, type PlacementInstance } from './instance';
+import { legalMapping, startTiles } from './legal-mapping';
+import type { SolveOptions } from './options';
+import type { SolveOutcome, SolveProgress, StopReason } from './outcome';
+import { placementPass } from './placement-pass';
+import { type BadInput, type CheckedProblem, checkProblem, type PlacementProblem } from './problem';
+import { routedPass } from './routed-pass';
+import { searchPlacements } from './search/search';
+import { type SolveClock, type SolveState, solveState } from './solve-state';
+
+export interface SolveHooks extends SolveClock {
+  onProgress(progress: SolveProgress): void;
+  /** The integer-program engines at hand. Without any, the search's answer and the star bound stand alone. */
+  engines: readonly Engine[];
+}
+
+/** Work of the star bound (ops × candidates × tiles × neighbours) above which it is left out. */
+const STAR_WORK_LIMIT = 4e8;
+/** The part of the time that the search may take before an engine takes over. */
+const SEARCH_SHARE = 0.25;
+
+/**
+ * Blocks until done: run it in a thread (see worker/). Same problem, options and seed give the same answer as long
+ * as neither the time limit nor a stop ends it. Bad input is a value, not a throw.
+ */
+export function solve(
+  problem: PlacementProblem,
+  options: SolveOptions,
+  hooks: SolveHooks,
+): Result<SolveOutcome, BadInput> {
+  const checked = checkProblem(problem);
+  if (!checked.ok) return checked;
+  const state = solveState(checked.value, options, hooks, hooks.onProgress);
+  return ok(runPasses(checked.value, options, hooks, state));
+}
+
+function runPasses(
+  problem: CheckedProblem,
+  options: SolveOptions,
+  hooks: SolveHooks,
+  state: SolveState,
+): SolveOutcome {
+  const instance = buildInstance(
+    problem.kernel,
+    problem.graph,
+    problem.pins,
+    problem.objective,
+    problem.library,
+  );
+  const explanation = explainInfeasible(problem, instance);
+  if (explanation) return state.infeasible(explanation);
+  state.raise(trivialBound(instance));
+  const star = starsWithinWork(instance);
+  if (star) {
+    const tooFar = explainStars(problem, instance, star.star);
+    if (tooFar) return state.infeasible(tooFar);
+    state.raise(Math.ceil(star.bound - 1e-6));
+  }
+  searchPass(problem, instance, options, state);
+  if (options.engine === 'search' || state.shouldStop()) return state.finish('search complete');
+  const engines = enginesFor(options, hooks.engines);
+  const placed = placementPass({
+    problem,
+    instance,
+    star: star?.star ?? null,
+    options,
+    hooks,
+    state,
+    engines,
+  });
+  if (placed.kind === 'infeasible') return state.infeasible(placed.explanation);
+  if (placed.kind === 'unfinished' || state.shouldStop()) return state.finish(stopOf(placed));
+  const routed = routedPass({ problem, instance, options, hooks, state, engines });
+  if (routed.kind === 'infeasible') return state.infeasible(routed.explanation);
+  return state.finish(routed.kind === 'unfinished' ? 'routing gap' : 'search complete');
+}
+
+const stopOf = (result: { kind: string; stop?: StopReason }): StopReason => result.stop ?? 'search complete';
+
+const enginesFor = (options: SolveOptions, engines: readonly Engine[]): readonly Engine[] =>
+  options.engine === 'auto' ? engines : engines.filter((engine) => engine.name === options.engine);
+
+function starsWithinWork(instance: PlacementInstance): ReturnType<typeof starBound> | null {
+  const binaries = instance.candidates.reduce((sum, list) => sum + list.length, 0);
+  const degree = instance.nets.reduce((most, net) => Math.max(most, net.consumers.length + 1), 4);
+  return binaries * instance.tileCount * degree > STAR_WORK_LIMIT ? null : starBound(instance);
+}
+
+/** Legal mappings from the search, each better one reported at once. */
+function searchPass(
+  problem: CheckedProblem,
+  instance: PlacementInstance,
+  options: SolveOptions,
+  state: SolveState,
+): void {
+  state.setPhase('search');
+  state.noteEngine('search');
+  const alone = options.engine === 'search';
+  const untilMs = options.timeLimitMs * (alone ? 1 : SEARCH_SHARE);
+  searchPlacements(
+    instance,
+    startTiles(problem, instance),
+    {
+      seed: options.seed,
+      rounds: alone ? 400 : 60,
+      staleRounds: alone ? 120 : 14,
+      bound: state.bound(),
+    },
+    {
+      shouldStop: () => state.shouldStop() || state.elapsedMs() >= untilMs,
+      settle: (tiling, round) => {
+        const legal = legalMapping(problem, tiling, round);
+        if (!legal.ok) return legal;
+        state.offer(legal.mapping);
+        return { ok: true, objectiveValue: legal.mapping.objectiveValue };
+      },
+    },
+  );
+}
