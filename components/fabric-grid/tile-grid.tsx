@@ -59,16 +59,17 @@ export function TileGrid(props: TileGridProps) {
   };
   const onLeave = useCallback(() => onPoint?.(null), [onPoint]);
   const picture = pictureSize(size);
+  const grid = {
+    ...roles.grid,
+    'aria-label': label,
+    'aria-rowcount': size.rows,
+    'aria-colcount': size.cols,
+    onKeyDown,
+    onClick,
+    onPointerLeave: onLeave,
+  };
   return (
-    <div
-      ref={root}
-      {...roles.grid}
-      {...{ 'aria-label': label, 'aria-rowcount': size.rows, 'aria-colcount': size.cols }}
-      className="absolute inset-0"
-      onKeyDown={onKeyDown}
-      onClick={onClick}
-      onPointerLeave={onLeave}
-    >
+    <div ref={root} className="absolute inset-0" {...grid}>
       {Array.from({ length: size.rows }, (_, row) => (
         <div key={row} {...roles.row} className="contents">
           {Array.from({ length: size.cols }, (_, col) => {
@@ -121,20 +122,25 @@ interface TileCellProps {
 
 const TileCell = memo(function TileCell(props: TileCellProps) {
   const { tile, text, left, top, width, height, tabIndex, disabled, selected } = props;
+  const cell = {
+    ...roles.cell,
+    'aria-label': text,
+    'aria-disabled': disabled || undefined,
+    'aria-selected': selected,
+    tabIndex,
+    onFocus: () => {
+      props.onCursor(tile);
+      props.onPoint?.(tile);
+    },
+    onPointerEnter: () => props.onPoint?.(tile),
+    onPointerDown: (event: PointerEvent) => props.onDown?.(event, tile),
+  };
   return (
     <div
-      {...roles.cell}
       data-tile={tile}
-      {...{ 'aria-label': text, 'aria-disabled': disabled || undefined, 'aria-selected': selected }}
-      tabIndex={tabIndex}
       className="absolute touch-none rounded-sm outline-offset-3"
       style={{ left: `${left}%`, top: `${top}%`, width: `${width}%`, height: `${height}%` }}
-      onFocus={() => {
-        props.onCursor(tile);
-        props.onPoint?.(tile);
-      }}
-      onPointerEnter={() => props.onPoint?.(tile)}
-      onPointerDown={(event) => props.onDown?.(event, tile)}
+      {...cell}
     />
   );
 });
