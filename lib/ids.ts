@@ -6,6 +6,7 @@ export const idKinds = [
   'workspace',
   'invitation',
   'reset',
+  'signup',
   'kernel',
   'kernelversion',
   'fabric',

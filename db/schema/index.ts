@@ -11,6 +11,7 @@ export { members } from './members';
 export { passwordResets } from './password-resets';
 export { rateLimits } from './rate-limits';
 export { sessions } from './sessions';
+export { signUps } from './sign-ups';
 export { solveJobs } from './solve-jobs';
 export { users } from './users';
 export { workerHeartbeats } from './worker-heartbeats';
