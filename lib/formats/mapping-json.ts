@@ -1,0 +1,39 @@
+/** Mappings as JSON: the document of `mapping.schema.json`. */
+import { type MappingDocument, mappingSchema, type Provenance } from '../mapping/mapping';
+import { parseJsonDocument } from './json-document';
+import { jsonText, sortedRecord } from './json-text';
+import type { ParseResult } from './parse-result';
+
+/** Reads a mapping by itself. Whether it is legal depends on its kernel and fabric: `verifyMapping` says so. */
+export const parseMappingJson = (text: string): ParseResult<MappingDocument> =>
+  parseJsonDocument(text, mappingSchema);
+
+/** The same mapping always gives the same text; reading it gives the mapping back. */
+export const writeMappingJson = (mapping: MappingDocument): string =>
+  jsonText({
+    format: mapping.format,
+    formatVersion: mapping.formatVersion,
+    name: mapping.name,
+    kernel: { name: mapping.kernel.name, version: mapping.kernel.version },
+    fabric: { name: mapping.fabric.name, version: mapping.fabric.version },
+    placement: sortedRecord(mapping.placement),
+    pins: sortedRecord(mapping.pins),
+    routes: sortedRecord(mapping.routes),
+    provenance: provenanceMembers(mapping.provenance),
+  });
+
+function provenanceMembers(provenance: Provenance): Record<string, string | number | boolean> {
+  if (provenance.by === 'hand') return { by: provenance.by };
+  return {
+    by: provenance.by,
+    engine: provenance.engine,
+    objective: provenance.objective,
+    timeLimitMs: provenance.timeLimitMs,
+    seed: provenance.seed,
+    status: provenance.status,
+    objectiveValue: provenance.objectiveValue,
+    bound: provenance.bound,
+    elapsedMs: provenance.elapsedMs,
+    changedByHand: provenance.changedByHand,
+  };
+}
