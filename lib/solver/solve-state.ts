@@ -1,5 +1,6 @@
 /** The best mapping and bound of one solve while it runs, and how they become an outcome. */
 
+import type { Objective } from '../mapping/mapping';
 import { compareMappings } from './legal-mapping';
 import type { SolveOptions } from './options';
 import {
@@ -153,4 +154,17 @@ function nothing(bound: number, stopReason: StopReason, common: Common): SolveOu
     reason: why[stopReason],
     explanation: null,
   };
+}
+
+/** The outcome of a solve that was cut off, from its last report. */
+export function interruptedOutcome(
+  objective: Objective,
+  options: SolveOptions,
+  last: SolveProgress | null,
+  elapsedMs: number,
+  stopReason: StopReason,
+): SolveOutcome {
+  const common = { engine: options.engine, objective, elapsedMs: Math.round(elapsedMs), seed: options.seed };
+  const bound = last?.bound ?? 0;
+  return last?.best ? found(last.best, bound, stopReason, common) : nothing(bound, stopReason, common);
 }

@@ -1,0 +1,82 @@
+/**
+ * Solves every demo kernel on every demo fabric and prints one JSON line a case:
+ *   node dist/bench-solve.mjs [--time-limit-ms N] [--objective wire|path] [--engine auto|highs|simplex|search]
+ *                             [--kernel part of its name] [--fabric part of its name]
+ */
+import { parseArgs } from 'node:util';
+import { demoFabrics } from '../db/seed/fabrics';
+import { demoKernels } from '../db/seed/kernels';
+import type { Fabric } from '../lib/fabric/fabric';
+import type { Kernel } from '../lib/graph/kernel';
+import { objectives } from '../lib/mapping/mapping';
+import { engineChoices, SOLVE_LIMITS } from '../lib/solver/options';
+import { runSolve } from '../lib/solver/worker/client';
+
+const { values } = parseArgs({
+  options: {
+    'time-limit-ms': { type: 'string', default: '20000' },
+    objective: { type: 'string', default: 'wire' },
+    engine: { type: 'string', default: 'auto' },
+    kernel: { type: 'string', default: '' },
+    fabric: { type: 'string', default: '' },
+  },
+});
+const objective = objectives.find((one) => one === values.objective) ?? 'wire';
+const engine = engineChoices.find((one) => one === values.engine) ?? 'auto';
+const timeLimitMs = Math.min(Math.max(1, Number(values['time-limit-ms'])), SOLVE_LIMITS.timeLimitMs);
+const threadPath = new URL('./threads/solver.mjs', import.meta.url);
+
+let lastObjective: number | null = null;
+
+/** Solves one case with the process's memory watched; the peak is of the whole process. */
+async function measure(kernel: Kernel, fabric: Fabric) {
+  let peakBytes = 0;
+  const watch = setInterval(() => {
+    peakBytes = Math.max(peakBytes, process.memoryUsage.rss());
+  }, 50);
+  const startMs = performance.now();
+  let firstMs: number | null = null;
+  let bestMs: number | null = null;
+  try {
+    const outcome = await runSolve(
+      { kernel, fabric, pins: {}, objective },
+      { engine, timeLimitMs, seed: 1 },
+      {
+        threadPath,
+        onProgress: ({ best }) => {
+          if (!best) return;
+          firstMs ??= performance.now() - startMs;
+          if (best.objectiveValue !== lastObjective) bestMs = performance.now() - startMs;
+          lastObjective = best.objectiveValue;
+        },
+      },
+    );
+    const { status, objectiveValue, bound, elapsedMs, stopReason, reason } = outcome;
+    const round = (ms: number | null) => (ms === null ? null : Math.round(ms));
+    return {
+      engine: outcome.engine,
+      status,
+      objective,
+      objectiveValue,
+      bound,
+      elapsedMs,
+      firstMappingMs: round(firstMs),
+      bestMappingMs: round(bestMs),
+      peakMemoryMb: Math.round(peakBytes / 2 ** 20),
+      stopReason,
+      reason,
+    };
+  } finally {
+    clearInterval(watch);
+    lastObjective = null;
+  }
+}
+
+for (const { slug, kernel } of demoKernels) {
+  for (const { key, fabric } of demoFabrics) {
+    if (!slug.includes(values.kernel) || !key.includes(values.fabric)) continue;
+    const figures = await measure(kernel, fabric);
+    const line = { case: `${slug} on ${key}`, ops: kernel.ops.length, fabric: fabric.name, ...figures };
+    process.stdout.write(`${JSON.stringify(line)}\n`);
+  }
+}
