@@ -12,7 +12,7 @@ import type { Tx } from '../client';
 import { fabricVersions, kernelVersions, solveJobs, workerHeartbeats } from '../schema';
 import type { SolveBest, SolveEnd, SolveHistoryPoint, SolveSettings } from '../schema/solve-jobs';
 
-export const LEASE_SECONDS = 20;
+export const LEASE_SECONDS = 8;
 export const MAX_ATTEMPTS = 3;
 export const MAX_HISTORY_POINTS = 400;
 
@@ -148,6 +148,11 @@ export async function finishSolve(
   return rows.length === 1;
 }
 
+/** Hands a running job back, so that the next sweep gives it to another worker at once. */
+export async function releaseSolve(tx: Tx, hold: Hold): Promise<void> {
+  await tx.update(solveJobs).set({ leaseUntil: sql`now() - interval '1 second'` }).where(held(hold));
+}
+
 export interface Sweep {
   /** To be sent to the queue again. */
   resend: { id: Id<'solve'>; timeLimitMs: number }[];
@@ -168,7 +173,7 @@ export function sweepSolves(tx: Tx): Promise<Sweep> {
         outcome: sql`jsonb_build_object('status', 'unknown', 'engine', '', 'elapsedMs', ${solveJobs.elapsedMs},
           'objectiveValue', ${solveJobs.bestObjective}, 'bound', ${solveJobs.bound}, 'gapRatio', ${solveJobs.gapRatio},
           'stopReason', case when ${solveJobs.cancelRequested} then 'stopped' else 'worker lost' end,
-          'reason', case when ${solveJobs.cancelRequested} then null
+          'explanation', null, 'reason', case when ${solveJobs.cancelRequested} then null
             else 'The solver was interrupted ' || ${solveJobs.attempt} || ' times. The best placement found is kept; try again with a shorter time limit.' end)`,
       })
       .where(sql`${lost} and (${solveJobs.cancelRequested} or ${solveJobs.attempt} >= ${MAX_ATTEMPTS})`)
