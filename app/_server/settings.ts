@@ -3,7 +3,7 @@ import 'server-only';
 
 /** Where people reach the application; links in letters start with it, never with a request's Host header. */
 export function publicUrl(path: string): string {
-  return new URL(path, process.env.PUBLIC_URL ?? 'http://127.0.0.1:3000').href;
+  return new URL(path, process.env.PUBLIC_ADDRESS ?? 'http://127.0.0.1:3000').href;
 }
 
 /** Off only for plain http on a developer's own machine. */

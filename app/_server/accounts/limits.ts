@@ -23,3 +23,4 @@ export const linkAddress: Limit = { name: 'link by address', attempts: 60, windo
 export const passwordChange: Limit = { name: 'password change', attempts: 10, windowSeconds: 15 * MINUTE };
 /** Letters that one workspace makes us send. */
 export const inviteWorkspace: Limit = { name: 'invitations by workspace', attempts: 50, windowSeconds: HOUR };
+export const newWorkspace: Limit = { name: 'workspaces by account', attempts: 10, windowSeconds: HOUR };
