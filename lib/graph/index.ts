@@ -25,6 +25,7 @@ export { layoutEdit } from './layout';
 export { type Net, netsOf } from './nets';
 export { GRID_PX, NODE_WIDTH_PX, type NodeSize, type NodeSizeOf, nodeSizePx } from './node-size';
 export {
+  fallbackPort,
   type OpGroup,
   type OpKind,
   type OpSpec,
@@ -34,6 +35,7 @@ export {
   type ParamSpec,
   type PortSpec,
   type PortType,
+  PREDICATE_PORT,
   portsOf,
 } from './op-catalog';
 export { type Cycle, iterationOrder, sameIterationCycles } from './order';
