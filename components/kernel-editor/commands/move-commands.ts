@@ -33,7 +33,7 @@ const nudge = ({ name, key, text, dx, dy }: (typeof directions)[number], stepPx:
   id: `nudge-${name}-${stepPx}`,
   label: `Move the selection ${text} by ${stepPx}`,
   group: 'Move',
-  shortcuts: [stepPx === NUDGE_PX ? `Alt+${key}` : `Alt+Shift+${key}`],
+  shortcuts: [stepPx === NUDGE_PX ? `Shift+${key}` : `Alt+Shift+${key}`],
   writes: true,
   enabled: opsChosen,
   run: ({ state }) => {

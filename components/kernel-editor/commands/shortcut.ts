@@ -31,11 +31,8 @@ export function matches(shortcut: string, press: KeyPress): boolean {
   );
 }
 
-/** Whether the shortcut needs a modifier key: only such ones work outside the canvas (WCAG 2.2, 2.1.4). */
-export const hasModifier = (shortcut: string): boolean => {
-  const { held } = parse(shortcut);
-  return held.has('Mod') || held.has('Alt');
-};
+/** Whether the shortcut needs Ctrl or ⌘: only such ones work outside the canvas (WCAG 2.2, 2.1.4). */
+export const hasModifier = (shortcut: string): boolean => parse(shortcut).held.has('Mod');
 
 const keyNames: Record<string, string> = {
   ArrowLeft: '←',
