@@ -37,51 +37,73 @@ export const PROBLEM_LIMITS = { ops: 2000, tiles: 4096, candidates: 4_000_000 } 
 export interface BadInput {
   code: 'bad input';
   messages: string[];
+  faults: InputFault[];
 }
+
+export interface InputFault {
+  part: 'kernel' | 'fabric' | 'pins' | 'start' | 'objective';
+  message: string;
+  /** The op or connection that is at fault, where it is one. */
+  id: string | null;
+}
+
+const badInput = (faults: InputFault[]): BadInput => ({
+  code: 'bad input',
+  messages: faults.map((fault) => fault.message),
+  faults,
+});
 
 /** Checks shapes, the kernel's rules, and that pins name ops and tiles that exist. Never throws. */
 export function checkProblem(problem: PlacementProblem): Result<CheckedProblem, BadInput> {
   const shape = shapeFaults(problem);
-  if (shape.length > 0) return err({ code: 'bad input', messages: shape });
+  if (shape.length > 0) return err(badInput(shape));
   const { kernel, fabric, pins } = problem;
-  const messages = validateKernel(kernel)
+  const faults: InputFault[] = validateKernel(kernel)
     .filter((found) => found.severity === 'error')
-    .map((found) => found.message);
+    .map((found) => ({
+      part: 'kernel',
+      message: found.message,
+      id: found.edgeIds[0] ?? found.opIds[0] ?? null,
+    }));
   const graph = compileFabric(fabric);
   const opIds = new Set<string>(kernel.ops.map((op) => op.id));
   for (const [id, tile] of Object.entries(pins)) {
-    if (!opIds.has(id))
-      messages.push(`A pin names the op ${id}, which the kernel does not have: remove the pin.`);
+    const pinFault = (message: string) => faults.push({ part: 'pins', message, id });
+    if (!opIds.has(id)) {
+      pinFault(`A pin names the op ${id}, which the kernel does not have: remove the pin.`);
+    }
     if (graph.tileIndex(tile) < 0) {
-      messages.push(
-        `The pin of ${id} names the tile ${tile}, but the fabric has ${fabric.rows} rows and ${fabric.cols} columns: pin it to a tile of the fabric.`,
-      );
+      const size = `${fabric.rows} rows and ${fabric.cols} columns`;
+      pinFault(`${id} is pinned to ${tile}, but the fabric has ${size}: pin it to a tile of the fabric.`);
     }
   }
   if (graph.tileCount * kernel.ops.length > PROBLEM_LIMITS.candidates) {
-    messages.push(
-      `${kernel.ops.length} ops on ${graph.tileCount} tiles are more than the solver takes on: use a smaller fabric or kernel.`,
-    );
+    const message = `${kernel.ops.length} ops on ${graph.tileCount} tiles are more than the solver takes on: use a smaller fabric or kernel.`;
+    faults.push({ part: 'kernel', message, id: null });
   }
-  if (messages.length > 0) return err({ code: 'bad input', messages });
+  if (faults.length > 0) return err(badInput(faults));
   return ok({ ...problem, graph, library: unitLibrary(problem.units ?? []) });
 }
 
-function shapeFaults(problem: PlacementProblem): string[] {
+function shapeFaults(problem: PlacementProblem): InputFault[] {
   const parts = [
     ['kernel', kernelSchema.safeParse(problem.kernel)],
     ['fabric', fabricSchema.safeParse(problem.fabric)],
     ['pins', pinsSchema.safeParse(problem.pins)],
     ['start', placementSchema.safeParse(problem.start ?? {})],
   ] as const;
-  const faults = parts.flatMap(([name, parsed]) =>
+  const faults: InputFault[] = parts.flatMap(([part, parsed]) =>
     parsed.success
       ? []
-      : parsed.error.issues
-          .slice(0, 10)
-          .map((issue) => `${[name, ...issue.path].join('.')}: ${issue.message}`),
+      : parsed.error.issues.slice(0, 10).map((issue) => ({
+          part,
+          message: `${[part, ...issue.path].join('.')}: ${issue.message}`,
+          id: null,
+        })),
   );
-  if (!objectives.includes(problem.objective)) faults.push(`objective: one of ${objectives.join(', ')}`);
+  if (!objectives.includes(problem.objective)) {
+    faults.push({ part: 'objective', message: `objective: one of ${objectives.join(', ')}`, id: null });
+  }
   return faults;
 }
 

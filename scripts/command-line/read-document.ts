@@ -1,0 +1,50 @@
+/** Reads the files that the commands name; a fault is told as file:line:column. */
+import { readFileSync, statSync } from 'node:fs';
+import type { Fabric } from '../../lib/fabric/fabric';
+import { parseFabricJson } from '../../lib/formats/fabric-json';
+import { parseKernelDot } from '../../lib/formats/kernel-dot';
+import { parseKernelJson } from '../../lib/formats/kernel-json';
+import { parseMappingJson } from '../../lib/formats/mapping-json';
+import { type ParseResult, positionAt } from '../../lib/formats/parse-result';
+import { parsePinsJson } from '../../lib/formats/pins-json';
+import type { Kernel } from '../../lib/graph/kernel';
+import type { MappingDocument, Pins } from '../../lib/mapping/mapping';
+import { err, ok, type Result } from '../../lib/result';
+
+/** Lines for standard error. */
+export type Faults = string[];
+
+const MAX_FILE_BYTES = 16 * 2 ** 20;
+
+function read<T>(path: string, parse: (text: string) => ParseResult<T>): Result<T, Faults> {
+  let text: string;
+  try {
+    if (statSync(path).size > MAX_FILE_BYTES) return err([`${path}: larger than 16 MiB`]);
+    text = readFileSync(path, 'utf8');
+  } catch (error) {
+    return err([`${path}: cannot be read (${(error as NodeJS.ErrnoException).code ?? 'unknown cause'})`]);
+  }
+  const parsed = parse(text);
+  if (parsed.ok) return ok(parsed.value);
+  return err(
+    parsed.errors.map(({ line, column, path: place, message, expected }) => {
+      const where = place ? `${place}: ` : '';
+      return `${path}:${line}:${column}: ${where}${message}${expected ? ` Expected: ${expected}.` : ''}`;
+    }),
+  );
+}
+
+export const readKernel = (path: string): Result<Kernel, Faults> =>
+  read(path, path.endsWith('.dot') || path.endsWith('.gv') ? parseKernelDot : parseKernelJson);
+export const readFabric = (path: string): Result<Fabric, Faults> => read(path, parseFabricJson);
+export const readPins = (path: string): Result<Pins, Faults> => read(path, parsePinsJson);
+export const readMapping = (path: string): Result<MappingDocument, Faults> => read(path, parseMappingJson);
+
+/** line:column of the first word that is the id; 1:1 without an id. */
+export function placeInFile(path: string, id: string | null): string {
+  if (id === null) return '1:1';
+  const text = readFileSync(path, 'utf8');
+  const offset = text.search(new RegExp(`\\b${id}\\b`));
+  const { line, column } = positionAt(text, Math.max(0, offset));
+  return `${line}:${column}`;
+}

@@ -1,0 +1,18 @@
+export const usage = `Places kernels on fabrics and checks mappings.
+
+npm run -s pinloom -- place --kernel K --fabric F [options]
+  --kernel K          kernel, .json or .dot
+  --fabric F          fabric, .json
+  --pins P            pins, .json
+  --objective O       wire (default): links of all nets; path: links of all paths
+  --engine E          auto (default), highs, simplex or search
+  --time-limit-ms N   30000 by default
+  --seed N            1 by default; the same seed gives the same answer, within the time limit
+
+npm run -s pinloom -- verify --kernel K --fabric F --mapping M
+  Checks the mapping by rules R1 to R7 and names each one that it breaks.
+
+Both print one JSON document on standard output and nothing else there.
+Exit codes: 0 placed or legal, 2 bad input (file:line:column on standard error),
+3 no legal mapping exists or rules are broken, 4 nothing found.
+`;

@@ -1,0 +1,19 @@
+/** The command line's entry: exit codes are 0 done, 2 bad input, 3 infeasible or illegal, 4 nothing found. */
+import { place } from './command-line/place';
+import { usage } from './command-line/usage';
+import { verify } from './command-line/verify';
+
+export type ExitCode = 0 | 2 | 3 | 4;
+
+async function run(args: readonly string[]): Promise<ExitCode> {
+  const [command, ...rest] = args;
+  if (command === 'place') return place(rest);
+  if (command === 'verify') return verify(rest);
+  const wantsHelp = command === undefined || command === '--help' || command === '-h' || command === 'help';
+  (command !== undefined && wantsHelp ? process.stdout : process.stderr).write(
+    wantsHelp ? usage : `There is no command ${command}.\n\n${usage}`,
+  );
+  return command !== undefined && wantsHelp ? 0 : 2;
+}
+
+process.exitCode = await run(process.argv.slice(2));
