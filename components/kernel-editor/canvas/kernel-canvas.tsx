@@ -17,6 +17,7 @@ import { useEditor, useKernelState } from '../store/editor-context';
 import { selectEdge, selectOps } from '../store/selection';
 import { canvasHandle } from './canvas-handle';
 import { createFlowElements, type DragPositions } from './flow-elements';
+import { OP_DRAG_TYPE } from './op-drag';
 import { type OpFlowNode, OpNode } from './op-node';
 import { ThreadEdge, type ThreadFlowEdge } from './thread-edge';
 import { useCanvasConnections } from './use-canvas-connections';
@@ -26,9 +27,6 @@ const edgeTypes = { thread: ThreadEdge };
 const SNAP: [number, number] = [GRID_PX, GRID_PX];
 const PAN_BUTTONS = [1, 2];
 const ADD_KEYS = ['Shift', 'Control', 'Meta'];
-
-/** What a palette entry carries while it is dragged. */
-export const OP_DRAG_TYPE = 'application/x-pinloom-op';
 
 type Flow = ReactFlowInstance<OpFlowNode, ThreadFlowEdge>;
 
