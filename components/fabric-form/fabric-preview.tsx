@@ -27,9 +27,7 @@ export function FabricPreview({ values }: { values: FabricFormValues }) {
     <section aria-label="Preview" className="grid content-start gap-6 xl:grid-cols-[1fr_15rem]">
       <div>
         <p className="mb-2 text-xs text-quiet" role="status">
-          {drawn
-            ? 'Preview'
-            : 'Preview of the last valid values; correct the marked fields to go on.'}
+          {drawn ? 'Preview' : 'Preview of the last valid values; correct the marked fields to go on.'}
         </p>
         <FabricGrid fabric={document} graph={graph} label="Preview of the fabric" />
       </div>
