@@ -1,4 +1,4 @@
-import { and, desc, eq, lt } from 'drizzle-orm';
+import { and, desc, eq, sql } from 'drizzle-orm';
 import type { Id } from '../../lib/ids';
 import type { Tx } from '../client';
 import { newId } from '../ids';
@@ -30,10 +30,10 @@ export async function recordAudit(tx: Tx, fact: AuditFact): Promise<void> {
   await tx.insert(auditEntries).values({ ...fact, id: newId('audit'), detail: fact.detail ?? {} });
 }
 
-/** Newest first; `before` continues an earlier page. */
+/** Newest first; `beforeId` continues after the last entry of an earlier page. */
 export function listAudit(
   tx: Tx,
-  of: { workspaceId: Id<'workspace'>; before?: Date; limit?: number },
+  of: { workspaceId: Id<'workspace'>; beforeId?: Id<'audit'>; limit?: number },
 ): Promise<AuditEntry[]> {
   return tx
     .select({
@@ -50,7 +50,10 @@ export function listAudit(
     .where(
       and(
         eq(auditEntries.workspaceId, of.workspaceId),
-        of.before ? lt(auditEntries.createdAt, of.before) : undefined,
+        of.beforeId
+          ? sql`(${auditEntries.createdAt}, ${auditEntries.id}) <
+              (select created_at, id from audit_entries where workspace_id = ${of.workspaceId} and id = ${of.beforeId})`
+          : undefined,
       ),
     )
     .orderBy(desc(auditEntries.createdAt), desc(auditEntries.id))

@@ -95,15 +95,15 @@ export type MemberProblem = 'not_found' | 'last_owner';
 export function changeRole(
   tx: Tx,
   change: { workspaceId: Id<'workspace'>; userId: Id<'user'>; role: Role },
-): Promise<Result<{ before: Role }, MemberProblem>> {
+): Promise<Result<{ name: string; before: Role }, MemberProblem>> {
   return tx.transaction(async (inner) => {
-    const before = await lockMember(inner, change);
-    if (!before) return err('not_found');
-    if (before === 'owner' && change.role !== 'owner' && (await ownerCount(inner, change)) < 2) {
+    const member = await lockMember(inner, change);
+    if (!member) return err('not_found');
+    if (member.before === 'owner' && change.role !== 'owner' && (await ownerCount(inner, change)) < 2) {
       return err('last_owner');
     }
     await inner.update(members).set({ role: change.role }).where(one(change));
-    return ok({ before });
+    return ok(member);
   });
 }
 
@@ -111,31 +111,35 @@ export function changeRole(
 export function removeMember(
   tx: Tx,
   member: { workspaceId: Id<'workspace'>; userId: Id<'user'> },
-): Promise<Result<{ before: Role }, MemberProblem>> {
+): Promise<Result<{ name: string; before: Role }, MemberProblem>> {
   return tx.transaction(async (inner) => {
-    const before = await lockMember(inner, member);
-    if (!before) return err('not_found');
-    if (before === 'owner' && (await ownerCount(inner, member)) < 2) return err('last_owner');
+    const found = await lockMember(inner, member);
+    if (!found) return err('not_found');
+    if (found.before === 'owner' && (await ownerCount(inner, member)) < 2) return err('last_owner');
     await inner.delete(members).where(one(member));
-    return ok({ before });
+    return ok(found);
   });
 }
 
 const one = (m: { workspaceId: Id<'workspace'>; userId: Id<'user'> }) =>
   and(eq(members.workspaceId, m.workspaceId), eq(members.userId, m.userId));
 
-/** The member's role, with the workspace locked: changes of members wait for one another. */
+/** The member's name and role, with the workspace locked: changes of members wait for one another. */
 async function lockMember(
   tx: Tx,
   member: { workspaceId: Id<'workspace'>; userId: Id<'user'> },
-): Promise<Role | null> {
+): Promise<{ name: string; before: Role } | null> {
   await tx
     .select({ id: workspaces.id })
     .from(workspaces)
     .where(eq(workspaces.id, member.workspaceId))
     .for('update');
-  const rows = await tx.select({ role: members.role }).from(members).where(one(member));
-  return rows[0]?.role ?? null;
+  const rows = await tx
+    .select({ name: users.name, before: members.role })
+    .from(members)
+    .innerJoin(users, eq(users.id, members.userId))
+    .where(one(member));
+  return rows[0] ?? null;
 }
 
 async function ownerCount(tx: Tx, of: { workspaceId: Id<'workspace'> }): Promise<number> {
