@@ -4,6 +4,8 @@
  * attribute lists). The text keeps its length, so places stay true. Linear.
  */
 export const MAX_DOT_DEPTH = 48;
+/** Attributes in one text; the parser takes its time over each, so more are refused before it begins. */
+export const MAX_DOT_ATTRIBUTES = 60_000;
 
 type Prepared = { ok: true; text: string } | { ok: false; offset: number; message: string };
 
@@ -19,6 +21,7 @@ export function prepareDot(text: string): Prepared {
   /** Whether each open brace groups the ends of a connection. */
   const groups: boolean[] = [];
   let last = { token: '', offset: 0 };
+  let attributes = 0;
   TOKEN.lastIndex = 0;
   for (let found = TOKEN.exec(text); found !== null; found = TOKEN.exec(text)) {
     const token = found[0];
@@ -29,6 +32,10 @@ export function prepareDot(text: string): Prepared {
       continue;
     }
     if (isBetween(token)) continue;
+    if (token === '=' && ++attributes > MAX_DOT_ATTRIBUTES) {
+      const message = `The graph has more than ${MAX_DOT_ATTRIBUTES} attributes: use the JSON format.`;
+      return { ok: false, offset, message };
+    }
     if (token === '{') {
       if (groups.length >= MAX_DOT_DEPTH) {
         return { ok: false, offset, message: `Subgraphs nest deeper than ${MAX_DOT_DEPTH} levels.` };

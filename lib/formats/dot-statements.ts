@@ -51,6 +51,9 @@ export interface DotGraph {
   faults: DotFault[];
 }
 
+/** Attributes of one node, connection or list. No kind of op has a tenth of them. */
+const MAX_ATTRIBUTES = 100;
+
 interface Scope {
   node: DotAttributes;
   edge: DotAttributes;
@@ -101,8 +104,8 @@ function resolveBlock(
         break;
       case 'AttributeList': {
         const list = attributesOf(graph, statement.children);
-        if (statement.kind === 'Node') scope.node = new Map([...scope.node, ...list]);
-        else if (statement.kind === 'Edge') scope.edge = new Map([...scope.edge, ...list]);
+        if (statement.kind === 'Node') scope.node = withDefaults(scope.node, list);
+        else if (statement.kind === 'Edge') scope.edge = withDefaults(scope.edge, list);
         else if (isRoot) for (const [name, value] of list) graph.attributes.set(name, value);
         break;
       }
@@ -122,6 +125,13 @@ function resolveBlock(
         break;
     }
   }
+}
+
+/** Defaults are copied to every node or connection they hold for, so their number is kept small. */
+function withDefaults(old: DotAttributes, added: DotAttributes): DotAttributes {
+  const all = [...old, ...added];
+  // The newest ones of a name win; beyond the limit the oldest names go.
+  return new Map([...new Map(all)].slice(-MAX_ATTRIBUTES));
 }
 
 /** The node of a name; a new one takes the defaults that hold here. Null beyond the largest kernel. */
@@ -205,6 +215,11 @@ function addAttributes(
   attributes: readonly AttributeASTNode[],
 ): void {
   for (const { key, value } of attributes) {
+    if (target.size >= MAX_ATTRIBUTES && !target.has(readPlain(key.value))) {
+      const message = `There are more than ${MAX_ATTRIBUTES} attributes in one place.`;
+      graph.faults.push({ offset: offsetOf(key), message });
+      return;
+    }
     if (value.quoted === 'html') {
       graph.faults.push({
         offset: offsetOf(value),

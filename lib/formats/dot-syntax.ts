@@ -6,9 +6,11 @@ import { type FormatError, formatErrorAt, type ParseResult, refuse } from './par
 
 /** Longest text that is read, in UTF-16 units. */
 export const MAX_DOT_LENGTH = 2_000_000;
-/** Statements, ids and attributes together. */
-const MAX_DOT_NODES = 300_000;
+/** Statements, ids and attributes together: enough for 2,000 ops with two operands each. */
+const MAX_DOT_NODES = 160_000;
 const MAX_EDGE_CHAIN = 500;
+
+const TOO_LARGE = `The graph is too large to read as DOT: more than ${MAX_DOT_NODES} ids, attributes and statements. Use the JSON format.`;
 
 /** The one directed graph of the text. */
 export function parseDotSyntax(text: string): ParseResult<GraphASTNode> {
@@ -51,24 +53,24 @@ function isParserFault(cause: unknown): cause is ParserFault {
 function syntaxError(text: string, error: unknown): FormatError {
   const cause = error instanceof Error ? error.cause : undefined;
   if (!isParserFault(cause)) {
-    const message = `The graph is too large to read: more than ${MAX_DOT_NODES} ids, attributes and statements.`;
-    return { line: 1, column: 1, message };
+    return { line: 1, column: 1, message: TOO_LARGE };
   }
   const { offset } = cause.location.start;
-  const arrow = text.slice(offset, offset + 2);
-  if (cause.expected === null) {
-    const message =
-      arrow === '--'
-        ? 'In a digraph, connections are written with ->.'
-        : arrow === '->'
-          ? 'Connections with a direction need a digraph: write “digraph” in place of “graph”.'
-          : `This chain of connections or label is longer or deeper than can be read: break it up.`;
-    return formatErrorAt(text, offset, message);
-  }
+  if (cause.expected === null) return formatErrorAt(text, offset, ruleFault(text, offset, error));
   const expected = expectedText(cause.expected);
   return formatErrorAt(text, offset, `Found ${describeAt(text, offset)}, expected ${expected}.`, {
     expected,
   });
+}
+
+/** Faults that the parser finds by itself and not by its grammar. */
+function ruleFault(text: string, offset: number, error: unknown): string {
+  if (error instanceof Error && /depth/.test(error.message)) {
+    return `This chain of connections or label goes on for too long: break it up after ${MAX_EDGE_CHAIN} parts at most.`;
+  }
+  return text.startsWith('--', offset)
+    ? 'In a digraph, connections are written with ->.'
+    : 'Connections with a direction need a digraph: write “digraph” in place of “graph”.';
 }
 
 const RULE_NAMES: Partial<Record<string, string>> = {

@@ -14,6 +14,13 @@ export const quoteText = (text: string): string =>
     .replaceAll('\n', '\\n')
     .replace(/\p{Cc}|\p{Cs}|\u2028|\u2029/gu, (one) => `&#${one.charCodeAt(0)};`)}"`;
 
+const PLAIN = /^(?:[A-Za-z_][A-Za-z0-9_]*|-?\d+)$/;
+const KEYWORDS: ReadonlySet<string> = new Set(['node', 'edge', 'graph', 'digraph', 'subgraph', 'strict']);
+
+/** A name or integer as it is, anything else quoted. */
+export const plainOrQuoted = (text: string): string =>
+  PLAIN.test(text) && !KEYWORDS.has(text.toLowerCase()) ? text : quoteText(text);
+
 const NAMED_CHARACTERS: ReadonlyMap<string, string> = new Map([
   ['amp', '&'],
   ['lt', '<'],

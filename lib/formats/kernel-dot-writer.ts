@@ -1,6 +1,6 @@
 /** Kernels as DOT: a graph that Graphviz draws, with all of the kernel in attributes. See docs/formats/dot.md. */
 import type { Edge, Kernel, Op } from '../graph/kernel';
-import { quoteText } from './dot-text';
+import { plainOrQuoted, quoteText } from './dot-text';
 import { sortedRecord } from './json-text';
 
 /** The prefix of attributes that give a constant operand: `imm_b=3`. */
@@ -24,7 +24,7 @@ const opAttributes = (op: Op): string[] => [
   `label=${quoteText(op.label)}`,
   `widthBits=${op.widthBits}`,
   ...Object.entries(sortedRecord(op.params)).map(
-    ([name, value]) => `${quoteText(name)}=${quoteText(String(value))}`,
+    ([name, value]) => `${plainOrQuoted(name)}=${plainOrQuoted(String(value))}`,
   ),
   ...Object.entries(sortedRecord(op.immediates)).map(([port, value]) => `${CONSTANT_PREFIX}${port}=${value}`),
   `positionPx="${op.positionPx.x},${op.positionPx.y}"`,
