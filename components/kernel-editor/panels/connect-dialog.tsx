@@ -146,7 +146,7 @@ function TargetOption(props: { id: string; target: Target; active: boolean; onCh
     : target.answer.reason;
   return (
     <button
-      type=\"button\"
+      type="button"
       id={id}
       role="option"
       tabIndex={-1}

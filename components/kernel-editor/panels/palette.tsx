@@ -118,7 +118,7 @@ function PaletteEntry(props: { id: string; kind: OpKind; active: boolean; onAdd:
   const unit = unitHint[formOf(kind)];
   return (
     <button
-      type=\"button\"
+      type="button"
       id={id}
       role="option"
       tabIndex={-1}
