@@ -1,0 +1,126 @@
+/** Random tiny problems: up to five ops on up to six tiles, odd links, pins, hop limits; legal kernels always. */
+import fc from 'fast-check';
+import type { Fabric, LinkId, TileId, UnitId } from '@/lib/fabric/fabric';
+import { initialParams } from '@/lib/graph/edits';
+import { edgeId, opId } from '@/lib/graph/ids';
+import { type Edge, emptyKernel, type Kernel, type Op } from '@/lib/graph/kernel';
+import type { OpKind } from '@/lib/graph/op-catalog';
+import type { Objective, Pins } from '@/lib/mapping/mapping';
+
+export interface TinyCase {
+  kernel: Kernel;
+  fabric: Fabric;
+  pins: Pins;
+  objective: Objective;
+}
+
+const kindOf: Record<number, readonly OpKind[]> = {
+  0: ['load'],
+  1: ['absolute', 'pass'],
+  2: ['add', 'multiply', 'subtract', 'max'],
+};
+
+/** A load, then ops that read earlier ones or take constants, then a store of each value that nothing reads. */
+const kernelArb: fc.Arbitrary<Kernel> = fc
+  .array(fc.record({ operands: fc.array(fc.nat(20), { maxLength: 2 }), kind: fc.nat(20) }), {
+    minLength: 1,
+    maxLength: 3,
+  })
+  .map((plans) => {
+    const ops: Op[] = [];
+    const edges: Edge[] = [];
+    const add = (kind: OpKind, sources: readonly number[], ports: readonly string[]) => {
+      const id = opId(`op_${ops.length}`);
+      const constants = Object.fromEntries(ports.slice(sources.length).map((port) => [port, 3]));
+      for (const [i, source] of sources.entries()) {
+        const port = ports[i];
+        const from = ops[source];
+        if (!port || !from) continue;
+        edges.push({
+          id: edgeId(`edge_${edges.length}`),
+          from: from.id,
+          to: id,
+          port,
+          distance: 0,
+          initialValues: [],
+        });
+      }
+      ops.push({
+        id,
+        kind,
+        label: '',
+        widthBits: 32,
+        params: initialParams(kind),
+        immediates: constants,
+        positionPx: { x: 0, y: 0 },
+      });
+    };
+    add('load', [], []);
+    for (const plan of plans) {
+      const sources = [plan.operands[0] ?? 0, ...plan.operands.slice(1)].map((n) => n % ops.length);
+      const kinds = kindOf[sources.length] ?? ['add'];
+      const kind = kinds[plan.kind % kinds.length] as OpKind;
+      const ports =
+        kind === 'add' || kind === 'multiply' || kind === 'subtract' || kind === 'max'
+          ? ['a', 'b']
+          : kind === 'absolute'
+            ? ['a']
+            : ['value'];
+      add(kind, sources, ports);
+    }
+    add('store', [ops.length - 1], ['value']);
+    return { ...emptyKernel('tiny'), ops, edges };
+  });
+
+const units = ['unit_memory', 'unit_arithmetic', 'unit_multiplier', null] as unknown as (UnitId | null)[];
+
+const fabricArb: fc.Arbitrary<Fabric> = fc
+  .record({
+    size: fc.constantFrom([2, 3], [3, 2], [2, 2], [1, 5], [1, 6]),
+    topology: fc.constantFrom('mesh', 'torus', 'diagonal'),
+    mix: fc.array(fc.nat(99), { minLength: 6, maxLength: 6 }),
+    channels: fc.constantFrom(1, 1, 2),
+    removed: fc.array(fc.tuple(fc.nat(5), fc.nat(5)), { maxLength: 3 }),
+    added: fc.array(fc.tuple(fc.nat(5), fc.nat(5)), { maxLength: 1 }),
+    limit: fc.constantFrom(null, null, null, 1, 2, 3),
+  })
+  .map(({ size, topology, mix, channels, removed, added, limit }) => {
+    const [rows, cols] = size as [number, number];
+    const name = (i: number) => `r${Math.floor(i / cols)}c${i % cols}` as TileId;
+    const count = rows * cols;
+    const pick = (n: number): UnitId | null =>
+      (n < 40 ? units[0] : n < 75 ? units[1] : n < 92 ? units[2] : units[3]) ?? null;
+    const link = ([a, b]: [number, number]) => `${name(a % count)}>${name(b % count)}` as LinkId;
+    return {
+      format: 'pinloom.fabric',
+      formatVersion: 1,
+      name: 'tiny',
+      description: '',
+      rows,
+      cols,
+      topology,
+      units: Array.from({ length: count }, (_, i) => pick(mix[i] ?? 0)),
+      channels,
+      removedLinks: removed.map(link),
+      addedLinks: added.filter(([a, b]) => a % count !== b % count).map(link),
+      linkChannels: {},
+      bufferDepth: 4,
+      clock: limit === null ? null : { periodPs: 100 * limit + 50, entryDelayPs: 0, hopDelayPs: 100 },
+      memoryBanks: 1,
+    };
+  });
+
+export const tinyCaseArb: fc.Arbitrary<TinyCase> = fc
+  .record({
+    kernel: kernelArb,
+    fabric: fabricArb,
+    pin: fc.option(fc.tuple(fc.nat(4), fc.nat(5)), { freq: 3 }),
+    objective: fc.constantFrom<Objective>('wire', 'path'),
+  })
+  .map(({ kernel, fabric, pin, objective }) => {
+    const pins: Pins = {};
+    const op = pin ? kernel.ops[pin[0] % kernel.ops.length] : undefined;
+    const at = (pin?.[1] ?? 0) % fabric.units.length;
+    if (op) pins[op.id] = `r${Math.floor(at / fabric.cols)}c${at % fabric.cols}` as TileId;
+    return { kernel, fabric, pins, objective };
+  });
