@@ -13,6 +13,7 @@ const programs = {
   'mail-sink': 'scripts/mail-sink.ts',
   pinloom: 'scripts/pinloom.ts',
   'bench-solve': 'scripts/bench-solve.ts',
+  'demo-mappings': 'scripts/demo-mappings.ts',
   'threads/solver': 'lib/solver/worker/thread.ts',
 };
 
