@@ -138,7 +138,7 @@ const TileCell = memo(function TileCell(props: TileCellProps) {
   return (
     <div
       data-tile={tile}
-      className="absolute touch-none rounded-sm outline-offset-3"
+      className="absolute touch-manipulation rounded-sm outline-offset-3"
       style={{ left: `${left}%`, top: `${top}%`, width: `${width}%`, height: `${height}%` }}
       {...cell}
     />

@@ -1,0 +1,51 @@
+'use client';
+
+import type { Provenance } from '@/lib/mapping/mapping';
+import { useBench } from '../store/bench-context';
+import { durationText, gapText, objectiveNames } from './solve-state';
+
+/** What was proved of the mapping on the bench. */
+export function MakingStatus() {
+  const provenance = useBench((state) => state.content.provenance);
+  const placedOps = useBench((state) => state.facts.metrics.placedOps);
+  if (placedOps === 0) return <p className="text-sm text-quiet">Nothing is placed yet.</p>;
+  return <ProvedBlock provenance={provenance} />;
+}
+
+/** "Proved optimal · 0.4 s", or how far the mapping may be off, or that it is made by hand. */
+export function ProvedBlock({ provenance }: { provenance: Provenance }) {
+  if (provenance.by === 'hand')
+    return <p className="text-sm text-quiet">Placed by hand; nothing is proved.</p>;
+  const { objective, objectiveValue, bound, status, elapsedMs, changedByHand } = provenance;
+  const name = objectiveNames[objective].toLowerCase();
+  if (changedByHand) {
+    return (
+      <p className="text-sm text-quiet">
+        Changed by hand since the solve, which had found {objectiveValue} {name}
+        {status === 'optimal' ? ' and proved them optimal' : `, lower bound ${bound}`}.
+      </p>
+    );
+  }
+  if (status === 'optimal') {
+    return (
+      <>
+        <p className="rounded border border-verdigris! bg-verdigris-wash px-2 py-1 text-center text-sm font-semibold text-verdigris">
+          ✓ Proved optimal · {durationText(elapsedMs)}
+        </p>
+        <p className="mt-1 text-sm text-quiet">
+          No legal mapping has fewer than {objectiveValue} {name}.
+        </p>
+      </>
+    );
+  }
+  return (
+    <>
+      <p className="rounded border border-edge! bg-surface px-2 py-1 text-center text-sm font-semibold">
+        Feasible, {gapText(objectiveValue, bound)}
+      </p>
+      <p className="mt-1 text-sm text-quiet">
+        {objectiveValue} {name}, lower bound {Math.ceil(bound - 1e-6)}, after {durationText(elapsedMs)}.
+      </p>
+    </>
+  );
+}

@@ -1,0 +1,180 @@
+'use client';
+
+import { useState } from 'react';
+import { Button } from '@/components/ui/button';
+import { CheckboxField, SelectField, TextField } from '@/components/ui/field';
+import { PanelTitle } from '../panes/figures';
+import { BestChart } from './best-chart';
+import { MakingStatus } from './making-status';
+import { SolveEnd } from './solve-end';
+import { durationText, isLive, phaseText, type Solve, type SolveSettings } from './solve-state';
+
+export interface SolvePanelProps {
+  solve: Solve | null;
+  /** Asked for, without an answer yet. */
+  starting: boolean;
+  previewing: boolean;
+  readOnly: boolean;
+  onStart: (settings: SolveSettings, fromHere: boolean) => void;
+  onStop: () => void;
+  onPreview: (on: boolean) => void;
+  onTake: () => void;
+  /** The solve's result is what the bench holds. */
+  taken: boolean;
+}
+
+/** Auto-place: settings, progress, and the end. */
+export function SolvePanel(props: SolvePanelProps) {
+  const { solve, readOnly } = props;
+  const live = solve !== null && isLive(solve);
+  return (
+    <section aria-label="Auto-place">
+      <PanelTitle>Auto-place</PanelTitle>
+      <MakingStatus />
+      {live ? <Progress {...props} solve={solve} /> : null}
+      {solve && !live ? <SolveEnd {...props} solve={solve} /> : null}
+      {!live && !readOnly ? <SettingsForm {...props} /> : null}
+    </section>
+  );
+}
+
+const engines = [
+  { value: 'auto', label: 'Automatic' },
+  { value: 'search', label: 'Branch and bound' },
+  { value: 'highs', label: 'Integer program (HiGHS)' },
+  { value: 'simplex', label: 'Integer program (JavaScript)' },
+];
+const aims = [
+  { value: 'wire', label: 'Fewest wire hops' },
+  { value: 'path', label: 'Fewest path hops' },
+];
+const times = [
+  { value: '5', label: '5 s' },
+  { value: '20', label: '20 s' },
+  { value: '60', label: '60 s' },
+  { value: 'own', label: 'Other …' },
+];
+const LONGEST_S = 600;
+
+function SettingsForm({ starting, onStart, solve }: SolvePanelProps) {
+  const [objective, setObjective] = useState<SolveSettings['objective']>('wire');
+  const [engine, setEngine] = useState<SolveSettings['engine']>('auto');
+  const [time, setTime] = useState('20');
+  const [ownSeconds, setOwnSeconds] = useState('120');
+  const [seed, setSeed] = useState('1');
+  const [fromHere, setFromHere] = useState(true);
+  const seconds = Number(time === 'own' ? ownSeconds : time);
+  const timeError =
+    Number.isFinite(seconds) && seconds >= 1 && seconds <= LONGEST_S ? null : 'From 1 to 600 seconds';
+  const seedNumber = Number(seed);
+  const seedError =
+    Number.isInteger(seedNumber) && seedNumber >= 0 && seedNumber < 2 ** 31 ? null : 'A whole number from 0';
+  return (
+    <form
+      className="mt-3 space-y-2"
+      onSubmit={(event) => {
+        event.preventDefault();
+        if (timeError || seedError) return;
+        onStart({ objective, engine, timeLimitMs: Math.round(seconds * 1000), seed: seedNumber }, fromHere);
+      }}
+    >
+      <div className="grid grid-cols-2 gap-2">
+        <SelectField
+          label="Aim"
+          className="col-span-2"
+          choices={aims}
+          value={objective}
+          onChange={(event) => setObjective(event.target.value as SolveSettings['objective'])}
+        />
+        <SelectField
+          label="Time limit"
+          choices={times}
+          value={time}
+          onChange={(event) => setTime(event.target.value)}
+        />
+        {time === 'own' ? (
+          <TextField
+            label="Seconds"
+            inputMode="numeric"
+            value={ownSeconds}
+            error={timeError}
+            onChange={(event) => setOwnSeconds(event.target.value)}
+          />
+        ) : null}
+        <TextField
+          label="Seed"
+          inputMode="numeric"
+          value={seed}
+          error={seedError}
+          onChange={(event) => setSeed(event.target.value)}
+        />
+        <SelectField
+          label="Engine"
+          className="col-span-2"
+          choices={engines}
+          value={engine}
+          onChange={(event) => setEngine(event.target.value as SolveSettings['engine'])}
+        />
+      </div>
+      <CheckboxField
+        label="Begin with what is placed"
+        checked={fromHere}
+        onChange={(event) => setFromHere(event.target.checked)}
+      />
+      <Button type="submit" look="secondary" className="w-full" busy={starting}>
+        {solve ? 'Auto-place again' : 'Auto-place the rest'}
+      </Button>
+    </form>
+  );
+}
+
+function Progress({ solve, previewing, readOnly, onStop, onPreview }: SolvePanelProps & { solve: Solve }) {
+  const { bestObjective, bound, gapRatio } = solve;
+  const queued = solve.state === 'queued';
+  return (
+    <div className="mt-2">
+      <p className="text-sm" role="status">
+        {queued ? 'Waiting for a worker' : phaseText(solve.phase)}
+        {solve.cancelRequested ? ', stopping' : ''}
+      </p>
+      <div
+        className="mt-1 h-1.5 bg-(--channel)"
+        role="progressbar"
+        aria-label="Time used"
+        aria-valuemin={0}
+        aria-valuemax={100}
+        aria-valuenow={Math.min(100, Math.round((100 * solve.elapsedMs) / solve.settings.timeLimitMs))}
+      >
+        <div
+          className="h-full bg-indigo-fill"
+          style={{ width: `${Math.min(100, (100 * solve.elapsedMs) / solve.settings.timeLimitMs)}%` }}
+        />
+      </div>
+      <dl className="mt-2 grid grid-cols-4 gap-x-2 text-sm">
+        {[
+          ['Best', bestObjective ?? '–'],
+          ['Bound', bound === null ? '–' : Math.round(bound * 100) / 100],
+          ['Gap', gapRatio === null ? '–' : `${Math.round(gapRatio * 100)} %`],
+          ['Time', durationText(solve.elapsedMs)],
+        ].map(([label, value]) => (
+          <div key={label}>
+            <dt className="text-xs text-quiet">{label}</dt>
+            <dd className="font-mono font-semibold tabular-nums">{value}</dd>
+          </div>
+        ))}
+      </dl>
+      <BestChart history={solve.history} elapsedMs={solve.elapsedMs} />
+      <CheckboxField
+        label="Show the best on the fabric"
+        className="mt-2"
+        checked={previewing}
+        onChange={(event) => onPreview(event.target.checked)}
+      />
+      {readOnly ? null : (
+        <Button look="danger" className="mt-2 w-full" disabled={solve.cancelRequested} onClick={onStop}>
+          Stop and keep the best
+        </Button>
+      )}
+    </div>
+  );
+}

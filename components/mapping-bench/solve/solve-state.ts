@@ -1,0 +1,119 @@
+/** What the bench knows of a solve, as the server tells it, and the words for it. */
+import { z } from 'zod';
+import {
+  type Objective,
+  objectives,
+  type Placement,
+  type Provenance,
+  placementSchema,
+  type Routes,
+  routesSchema,
+} from '@/lib/mapping/mapping';
+import { engineChoices } from '@/lib/solver/options';
+
+const explanationSchema = z.object({ opIds: z.array(z.string()), tileIds: z.array(z.string()) }).nullish();
+
+export const solveSchema = z.object({
+  id: z.string(),
+  state: z.enum(['queued', 'running', 'done', 'failed', 'cancelled']),
+  settings: z.object({
+    engine: z.enum(engineChoices),
+    objective: z.enum(objectives),
+    timeLimitMs: z.number(),
+    seed: z.number(),
+  }),
+  cancelRequested: z.boolean(),
+  phase: z.string(),
+  bestObjective: z.number().nullable(),
+  bound: z.number().nullable(),
+  gapRatio: z.number().nullable(),
+  elapsedMs: z.number(),
+  best: z.object({ objectiveValue: z.number(), placement: placementSchema, routes: routesSchema }).nullable(),
+  history: z.array(
+    z.object({ elapsedMs: z.number(), best: z.number().nullable(), bound: z.number().nullable() }),
+  ),
+  outcome: z
+    .object({
+      status: z.enum(['optimal', 'feasible', 'infeasible', 'unknown']),
+      engine: z.string(),
+      elapsedMs: z.number(),
+      objectiveValue: z.number().nullable(),
+      bound: z.number().nullable(),
+      gapRatio: z.number().nullable(),
+      stopReason: z.string().nullable(),
+      reason: z.string().nullable(),
+      explanation: explanationSchema,
+    })
+    .nullable(),
+});
+export type Solve = z.infer<typeof solveSchema>;
+export type SolveSettings = Solve['settings'];
+
+export const isLive = (solve: Pick<Solve, 'state'>): boolean =>
+  solve.state === 'queued' || solve.state === 'running';
+
+export interface SolveResult {
+  placement: Placement;
+  routes: Routes;
+  provenance: Provenance;
+}
+
+/** What a finished solve would put on the bench; null while it runs or when it found nothing. */
+export function solveResult(solve: Solve): SolveResult | null {
+  const { best, outcome, settings } = solve;
+  if (isLive(solve) || !best) return null;
+  const bound = outcome?.bound ?? solve.bound ?? 0;
+  return {
+    placement: best.placement,
+    routes: best.routes,
+    provenance: {
+      by: 'solver',
+      engine: outcome?.engine ?? settings.engine,
+      objective: settings.objective,
+      timeLimitMs: settings.timeLimitMs,
+      seed: settings.seed,
+      status: outcome?.status === 'optimal' ? 'optimal' : 'feasible',
+      objectiveValue: best.objectiveValue,
+      bound: Math.min(bound, best.objectiveValue),
+      elapsedMs: outcome?.elapsedMs ?? solve.elapsedMs,
+      changedByHand: false,
+    },
+  };
+}
+
+/** 0.4 s, 12 s, 3 min 20 s. */
+export function durationText(elapsedMs: number): string {
+  const seconds = elapsedMs / 1000;
+  if (seconds < 10) return `${seconds.toFixed(1)} s`;
+  if (seconds < 100) return `${Math.round(seconds)} s`;
+  return `${Math.floor(seconds / 60)} min ${Math.round(seconds % 60)} s`;
+}
+
+/** How far a value may lie above the best possible, in words. */
+export function gapText(value: number, bound: number): string {
+  if (value <= bound) return 'no better one is possible';
+  if (bound <= 0) return 'no useful bound yet';
+  return `at most ${Math.ceil((100 * (value - bound)) / bound)} % above the bound`;
+}
+
+export const objectiveNames: Record<Objective, string> = { wire: 'Wire hops', path: 'Path hops' };
+
+const phases: Record<string, string> = {
+  presolve: 'Looking for what cannot fit',
+  search: 'Searching for good placements',
+  bound: 'Raising the lower bound',
+  exact: 'Proving with the integer program',
+  routes: 'Finding routes',
+};
+export const phaseText = (phase: string): string => phases[phase] ?? 'Waiting for a worker';
+
+const stops: Record<string, string> = {
+  'time limit': 'the time was up',
+  stopped: 'it was stopped',
+  'memory limit': 'memory ran out',
+  'model too large': 'the model is too large for the engine',
+  'search complete': 'the search was complete',
+  'routing gap': 'routes and bound did not meet',
+  'thread failed': 'its thread failed',
+};
+export const stopText = (reason: string | null): string => (reason === null ? '' : (stops[reason] ?? reason));
