@@ -9,6 +9,7 @@
  * cannot be reached. Cost: t searches for the start and t for each pass, at most PASSES of them.
  */
 import type { LinkGraph } from '../../fabric/compile';
+import { linkArrays } from './link-arrays';
 import { pruneToTree } from './link-tree';
 import { type TileHeap, tileHeap } from './tile-heap';
 
@@ -21,7 +22,7 @@ export function attachTree(
   linkCost: ArrayLike<number>,
 ): number[] | null {
   const heap = tileHeap();
-  let tree = complete(graph, source, targets, [], linkCost, heap);
+  let tree = growTree(graph, source, targets, [], linkCost, heap);
   if (tree === null) return null;
   for (let pass = 0; pass < PASSES; pass++) {
     const before = costOf(tree, linkCost);
@@ -32,7 +33,7 @@ export function attachTree(
         targets.filter((other) => other !== target),
         tree,
       );
-      const again = complete(graph, source, targets, rest, linkCost, heap);
+      const again = growTree(graph, source, targets, rest, linkCost, heap);
       if (again !== null && costOf(again, linkCost) < costOf(tree, linkCost)) tree = again;
     }
     if (costOf(tree, linkCost) >= before) break;
@@ -47,8 +48,8 @@ export function costOf(links: readonly number[], linkCost: ArrayLike<number>): n
   return cost;
 }
 
-/** Grows a tree until it reaches all targets, the nearest first. */
-function complete(
+/** Grows a tree until it reaches all targets, the nearest first; null where one cannot be reached. */
+export function growTree(
   graph: LinkGraph,
   source: number,
   targets: readonly number[],
@@ -81,26 +82,56 @@ function cheapestPath(
   linkCost: ArrayLike<number>,
   heap: TileHeap,
 ): number[] | null {
-  const cost = new Float64Array(graph.tileCount).fill(Number.POSITIVE_INFINITY);
   const entry = new Int32Array(graph.tileCount).fill(-1);
+  const cost = new Float64Array(graph.tileCount).fill(Number.POSITIVE_INFINITY);
+  const end = search(graph, from, linkCost, heap, cost, entry, (tile) => to.has(tile));
+  return end < 0 ? null : pathTo(graph, entry, end);
+}
+
+/** Least cost from a tile to every tile, Infinity where none leads there. */
+export function costsFrom(
+  graph: LinkGraph,
+  start: number,
+  linkCost: ArrayLike<number>,
+  heap: TileHeap,
+): Float64Array {
+  const cost = new Float64Array(graph.tileCount).fill(Number.POSITIVE_INFINITY);
+  search(graph, [start], linkCost, heap, cost, new Int32Array(graph.tileCount), () => false);
+  return cost;
+}
+
+/** Dijkstra's search from several tiles; returns the first tile settled that ends it, −1 when all are settled. */
+function search(
+  graph: LinkGraph,
+  from: Iterable<number>,
+  linkCost: ArrayLike<number>,
+  heap: TileHeap,
+  cost: Float64Array,
+  entry: Int32Array,
+  ends: (tile: number) => boolean,
+): number {
+  const { head, outStart, outLinks } = linkArrays(graph);
   heap.clear();
   for (const tile of from) {
     cost[tile] = 0;
     heap.push(tile, 0);
   }
   for (let tile = heap.pop(); tile >= 0; tile = heap.pop()) {
-    if (heap.lastCost() > (cost[tile] ?? 0)) continue;
-    if (to.has(tile)) return pathTo(graph, entry, tile);
-    for (const link of graph.outLinks[tile] ?? []) {
-      const head = graph.links[link]?.to ?? 0;
-      const next = (cost[tile] ?? 0) + (linkCost[link] ?? Number.POSITIVE_INFINITY);
-      if (next >= (cost[head] ?? 0)) continue;
-      cost[head] = next;
-      entry[head] = link;
-      heap.push(head, next);
+    const settled = heap.lastCost();
+    if (settled > (cost[tile] as number)) continue;
+    if (ends(tile)) return tile;
+    const stop = outStart[tile + 1] as number;
+    for (let i = outStart[tile] as number; i < stop; i++) {
+      const link = outLinks[i] as number;
+      const next = head[link] as number;
+      const reached = settled + (linkCost[link] as number);
+      if (!(reached < (cost[next] as number))) continue;
+      cost[next] = reached;
+      entry[next] = link;
+      heap.push(next, reached);
     }
   }
-  return null;
+  return -1;
 }
 
 function pathTo(graph: LinkGraph, entry: Int32Array, end: number): number[] {

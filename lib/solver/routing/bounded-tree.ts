@@ -7,10 +7,11 @@
  * set of links found this way is a tree after pruning.
  *
  * Precondition, postcondition as there; null where a target lies beyond the limit.
- * Cost: d · (3^t · tiles / 2 + 2^t · links); 12 · d · 2^t · tiles bytes.
+ * Cost: at most d · (3^t · tiles / 2 + 2^t · links); 12 · d · 2^t · tiles bytes.
  */
 import type { LinkGraph } from '../../fabric/compile';
-import { pruneToTree } from './link-tree';
+import { type LinkArrays, linkArrays } from './link-arrays';
+import { hopsFromTile, pruneToTree } from './link-tree';
 
 const NO_CHOICE = -1;
 const SHORTER = -2;
@@ -24,6 +25,7 @@ export function boundedTree(
   maxDepthHops: number,
 ): number[] | null {
   const { tileCount } = graph;
+  const links = linkArrays(graph);
   const subsets = 2 ** targets.length;
   const layer = subsets * tileCount;
   const cost = new Float64Array((maxDepthHops + 1) * layer).fill(Number.POSITIVE_INFINITY);
@@ -31,11 +33,14 @@ export function boundedTree(
   targets.forEach((target, i) => {
     cost[(1 << i) * tileCount + target] = 0;
   });
+  const ring = tilesByHops(graph, source);
   for (let hops = 0; hops <= maxDepthHops; hops++) {
+    // Only tiles that the source reaches within the hops left can be part of a tree.
+    const tiles = ring.slice(0, maxDepthHops - hops + 1).flat();
     for (let subset = 1; subset < subsets; subset++) {
       const base = hops * layer + subset * tileCount;
-      if (hops > 0) lengthen(graph, linkCost, cost, choice, base, base - layer);
-      mergeLayer(tileCount, cost, choice, hops * layer, subset);
+      if (hops > 0) lengthen(links, linkCost, cost, choice, base, base - layer, tiles);
+      mergeLayer(tileCount, cost, choice, hops * layer, subset, tiles);
     }
   }
   const whole = maxDepthHops * layer + (subsets - 1) * tileCount + source;
@@ -48,20 +53,33 @@ export function boundedTree(
   );
 }
 
+/** Tiles grouped by their hops from the source. */
+function tilesByHops(graph: LinkGraph, source: number): number[][] {
+  const groups: number[][] = [];
+  hopsFromTile(graph, source).forEach((hops, tile) => {
+    if (hops < 0) return;
+    while (groups.length <= hops) groups.push([]);
+    groups[hops]?.push(tile);
+  });
+  return groups;
+}
+
 function lengthen(
-  graph: LinkGraph,
+  { head, outStart, outLinks }: LinkArrays,
   linkCost: ArrayLike<number>,
   cost: Float64Array,
   choice: Int32Array,
   base: number,
   shorter: number,
+  tiles: readonly number[],
 ): void {
-  for (let tile = 0; tile < graph.tileCount; tile++) {
-    let best = cost[shorter + tile] ?? Number.POSITIVE_INFINITY;
+  for (const tile of tiles) {
+    let best = cost[shorter + tile] as number;
     let made = best < Number.POSITIVE_INFINITY ? SHORTER : NO_CHOICE;
-    for (const link of graph.outLinks[tile] ?? []) {
-      const head = graph.links[link]?.to ?? 0;
-      const reached = (cost[shorter + head] ?? 0) + (linkCost[link] ?? Number.POSITIVE_INFINITY);
+    const end = outStart[tile + 1] as number;
+    for (let i = outStart[tile] as number; i < end; i++) {
+      const link = outLinks[i] as number;
+      const reached = (cost[shorter + (head[link] as number)] as number) + (linkCost[link] as number);
       if (reached < best) {
         best = reached;
         made = link;
@@ -78,6 +96,7 @@ function mergeLayer(
   choice: Int32Array,
   layerStart: number,
   subset: number,
+  tiles: readonly number[],
 ): void {
   const lowest = subset & -subset;
   const base = layerStart + subset * tileCount;
@@ -85,9 +104,9 @@ function mergeLayer(
     if ((part & lowest) === 0) continue;
     const one = layerStart + part * tileCount;
     const other = layerStart + (subset ^ part) * tileCount;
-    for (let tile = 0; tile < tileCount; tile++) {
-      const joined = (cost[one + tile] ?? 0) + (cost[other + tile] ?? 0);
-      if (joined < (cost[base + tile] ?? 0)) {
+    for (const tile of tiles) {
+      const joined = (cost[one + tile] as number) + (cost[other + tile] as number);
+      if (joined < (cost[base + tile] as number)) {
         cost[base + tile] = joined;
         choice[base + tile] = MERGE - part;
       }

@@ -23,6 +23,8 @@ const FIRST_PRESSURE = 0.5;
 const PRESSURE_GROWTH = 1.4;
 const MOST_PRESSURE = 64;
 const HISTORY_STEP = 0.5;
+/** Rounds without fewer excess nets after which negotiation gives up. */
+const STALE_ROUNDS = 12;
 const POLISH_PASSES = 3;
 
 export interface NetTrees {
@@ -54,10 +56,13 @@ export function negotiate(
   let best = snapshot();
   if (best.excess > 0) {
     const history = new Float64Array(graph.links.length);
+    const least = leastExcess(graph, tasks);
     let pressure = FIRST_PRESSURE;
-    for (let round = 0; round < options.maxRounds && best.excess > 0; round++) {
+    let stale = 0;
+    for (let round = 0; round < options.maxRounds && best.excess > least && stale < STALE_ROUNDS; round++) {
       reroute(graph, tasks, options, state, history, pressure);
       const now = snapshot();
+      stale = now.excess < best.excess ? 0 : stale + 1;
       if (now.excess < best.excess || (now.excess === best.excess && now.hops < best.hops)) best = now;
       pressure = Math.min(MOST_PRESSURE, pressure * PRESSURE_GROWTH);
     }
@@ -69,6 +74,15 @@ export function negotiate(
   }
   polish(graph, tasks, options, state);
   return state;
+}
+
+/** Excess that no routing avoids: nets that end at a tile beyond the channels that lead into it. */
+function leastExcess(graph: FabricGraph, tasks: readonly NetTask[]): number {
+  const nets = new Int32Array(graph.tileCount);
+  for (const task of tasks) for (const tile of task.targets) nets[tile] = (nets[tile] ?? 0) + 1;
+  const room = (tile: number): number =>
+    (graph.inLinks[tile] ?? []).reduce((sum, link) => sum + (graph.links[link]?.channels ?? 0), 0);
+  return nets.reduce((sum, count, tile) => sum + Math.max(0, count - room(tile)), 0);
 }
 
 interface Snapshot {
@@ -160,7 +174,7 @@ function reroute(
       cost[link] = Math.round(raw * GRAIN) / GRAIN;
     }
     // Detours are what negotiation is about, so even `path` routes by cost here; polishing shortens again.
-    trees[i] = netTree(graph, task, cost, 'wire')?.links ?? tree;
+    trees[i] = netTree(graph, task, cost, 'wire', false)?.links ?? tree;
     loads.add(trees[i] ?? []);
   }
 }

@@ -2,6 +2,7 @@
 import type { FabricGraph } from '../../fabric/compile';
 import type { Objective } from '../../mapping/mapping';
 import { costOf } from './attach-tree';
+import { boundedTree } from './bounded-tree';
 import { treeDepth, walkLinks } from './link-tree';
 import type { NetTask } from './net-tasks';
 import { type SteinerTree, shortestPathsTree, steinerTree } from './steiner-tree';
@@ -10,7 +11,7 @@ import { type SteinerTree, shortestPathsTree, steinerTree } from './steiner-tree
 const SHALLOW_TARGETS = 5;
 
 /**
- * `wire`: a cheapest tree within the clock's limit, and for small nets the shallowest of these. `path`: fewest hops
+ * `wire`: a cheapest tree within the clock's limit, and for small nets, unless `shallow` is false, one as shallow as can be. `path`: fewest hops
  * to every consumer, and the cheapest such tree. Where the limit cannot be kept, fewest hops to every consumer
  * too. Null only where barred links (cost Infinity) leave no tree.
  */
@@ -19,6 +20,7 @@ export function netTree(
   task: NetTask,
   linkCost: ArrayLike<number>,
   objective: Objective,
+  shallow = true,
 ): SteinerTree | null {
   const { sourceTile, targets, farthestHops } = task;
   const fewestHops = (exact: boolean): SteinerTree | null => {
@@ -32,11 +34,12 @@ export function netTree(
   }
   const limited = steinerTree(graph, sourceTile, targets, linkCost, { maxDepthHops: graph.maxHops });
   if (limited === null) return fewestHops(false) ?? steinerTree(graph, sourceTile, targets, linkCost);
-  if (!limited.exact || targets.length > SHALLOW_TARGETS) return limited;
+  if (!shallow || !limited.exact || targets.length > SHALLOW_TARGETS) return limited;
   const depth = treeDepth(graph, sourceTile, targets, limited.links);
   if (depth <= farthestHops) return limited;
-  const shallow = steinerTree(graph, sourceTile, targets, linkCost, { maxDepthHops: farthestHops });
-  return shallow !== null && shallow.cost <= limited.cost ? shallow : limited;
+  const links = boundedTree(graph, sourceTile, targets, linkCost, farthestHops);
+  if (links === null || costOf(links, linkCost) > limited.cost) return limited;
+  return { links, cost: limited.cost, exact: true };
 }
 
 /** What a tree adds to the objective: its links for `wire`, the hops of all its connections for `path`. */
