@@ -19,7 +19,8 @@ export function itemList<T extends { id: string }>(items: readonly T[]): ItemLis
 export function findItem<T extends { id: string }>(list: ItemList<T>, id: string): number {
   const around = list.lastIndex.get(id);
   if (around === undefined) return -1;
-  for (let step = 0; step <= list.items.length; step++) {
+  const furthest = Math.max(around, list.items.length - 1 - around);
+  for (let step = 0; step <= furthest; step++) {
     const found =
       list.items[around - step]?.id === id
         ? around - step
