@@ -67,7 +67,7 @@ function EditorActions({ workspace, fabric, commands, exportHref }: EditorAction
   ];
   return (
     <>
-      <Menu label="More" items={items} />
+      <Menu label="More ▾" ariaLabel="More" items={items} />
       {fabric.archived ? (
         <Button look="primary" busy={busy} onClick={() => void restore()}>
           Restore

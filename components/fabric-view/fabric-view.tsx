@@ -9,6 +9,7 @@ import { validateFabric } from '@/lib/fabric/validate-fabric';
 import { pictureSize } from '@/lib/mapping/picture/fabric-geometry';
 import { FabricFigures } from './fabric-figures';
 import { TileDetails } from './tile-details';
+import { TileMark } from './tile-mark';
 import { UnitLegend } from './unit-legend';
 import { type FabricVersionRow, VersionList } from './version-list';
 import { ZoomFrame } from './zoom-frame';
@@ -25,6 +26,7 @@ export function FabricView({ workspace, fabricId, fabric, versions }: FabricView
   const graph = useMemo(() => compileFabric(fabric), [fabric]);
   const problems = useMemo(() => validateFabric(fabric), [fabric]);
   const [tile, setTile] = useState(0);
+  const picture = pictureSize(fabric);
   return (
     <div className="grid gap-6 p-4 lg:grid-cols-[minmax(0,1fr)_18rem]">
       <div className="min-w-0 space-y-3">
@@ -34,13 +36,14 @@ export function FabricView({ workspace, fabricId, fabric, versions }: FabricView
           </Notice>
         ))}
         {fabric.description ? <p className="max-w-prose text-sm">{fabric.description}</p> : null}
-        <ZoomFrame naturalWidthPx={pictureSize(fabric).width}>
+        <ZoomFrame naturalWidthPx={picture.width} naturalHeightPx={picture.height}>
           {(widthPx) => (
             <FabricGrid
               fabric={fabric}
               graph={graph}
               label={`${fabric.name}, ${fabric.rows} rows of ${fabric.cols} tiles`}
               widthPx={widthPx}
+              overlay={<TileMark fabric={fabric} graph={graph} tile={tile} />}
               cursor={tile}
               onCursor={setTile}
               onTile={setTile}

@@ -6,6 +6,7 @@ import { IconButton } from '@/components/ui/button';
 interface ZoomFrameProps {
   /** Width of the drawing at 100 %. */
   naturalWidthPx: number;
+  naturalHeightPx: number;
   /** Draws at a width in px; without one, as wide as there is room. */
   children: (widthPx: number | undefined) => ReactNode;
 }
@@ -27,7 +28,7 @@ const pans = [
  * A drawing that can be enlarged: by buttons, by + − 0 on the keyboard, by the wheel with Ctrl. It is moved by
  * buttons, by the plain wheel and the scroll bars, and follows the keyboard's focus.
  */
-export function ZoomFrame({ naturalWidthPx, children }: ZoomFrameProps) {
+export function ZoomFrame({ naturalWidthPx, naturalHeightPx, children }: ZoomFrameProps) {
   /** Null: fitted to the room there is. */
   const [zoom, setZoom] = useState<number | null>(null);
   const view = useRef<HTMLDivElement>(null);
@@ -89,7 +90,17 @@ export function ZoomFrame({ naturalWidthPx, children }: ZoomFrameProps) {
             ))}
       </div>
       <div ref={view} className="max-h-[78dvh] overflow-auto rounded-md border border-rule bg-surface p-3">
-        {children(zoom === null ? undefined : naturalWidthPx * zoom)}
+        {zoom === null ? (
+          <div
+            className="mx-auto"
+            // As wide as there is room, and no wider than what shows it whole in the frame's height.
+            style={{ maxWidth: `calc((78dvh - 1.75rem) * ${naturalWidthPx / naturalHeightPx})` }}
+          >
+            {children(undefined)}
+          </div>
+        ) : (
+          children(naturalWidthPx * zoom)
+        )}
       </div>
     </div>
   );
