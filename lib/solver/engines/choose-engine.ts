@@ -7,7 +7,7 @@ import type { Engine } from './engine';
  * The simplex engine is tried first on models of at most so many entries, and for so long. Measured in
  * docs/solver.md: below, it beats the start of HiGHS; above, it seldom ends at all.
  */
-export const SIMPLEX_ENTRIES = 250;
+export const SIMPLEX_ENTRIES = 200;
 export const SIMPLEX_TIME_LIMIT_MS = 300;
 
 export interface Attempt {

@@ -1,9 +1,15 @@
 import fc from 'fast-check';
 import { beforeAll, describe, expect, it } from 'vitest';
+import { compileFabric } from '@/lib/fabric/compile';
 import { verifyMapping } from '@/lib/mapping/verify';
+import { starBound } from '@/lib/solver/bounds/star-bound';
 import type { Engine } from '@/lib/solver/engines/engine';
 import { highsEngine } from '@/lib/solver/engines/highs';
 import { simplexEngine } from '@/lib/solver/engines/simplex';
+import { buildInstance } from '@/lib/solver/instance';
+import type { IntegerProgram } from '@/lib/solver/integer-program/integer-program';
+import { placementProgram } from '@/lib/solver/integer-program/placement-program';
+import { routedProgram } from '@/lib/solver/integer-program/routed-program';
 import type { SolveOutcome } from '@/lib/solver/outcome';
 import { solve } from '@/lib/solver/solve';
 import { exhaustiveOptimum } from './exhaustive';
@@ -20,6 +26,17 @@ function solved({ kernel, fabric, pins, objective }: TinyCase, engines: readonly
   if (!result.ok) throw new Error(result.error.messages.join('\n'));
   return result.value;
 }
+
+const modelOptimum = (program: IntegerProgram, engines: readonly Engine[]): number => {
+  const outcome = engines[0]?.solveModel(program, {
+    timeLimitMs: 20_000,
+    seed: 1,
+    nowMs: () => performance.now(),
+    shouldStop: () => false,
+    warmStart: null,
+  });
+  return outcome?.status === 'optimal' ? outcome.objectiveValue : Number.NaN;
+};
 
 describe('the solver against trying everything, on 400 tiny cases', () => {
   let engines: Engine[] = [];
@@ -61,11 +78,33 @@ describe('the solver against trying everything, on 400 tiny cases', () => {
     expect(broken).toEqual([]);
   });
 
+  it('has bounds that never cross the optimum: stars, placement model; and a full model that equals it', () => {
+    const highs = engines.filter((engine) => engine.name === 'highs');
+    const wrong = answers.slice(0, 200).flatMap(({ tiny, truth }) => {
+      if (truth === null) return [];
+      const graph = compileFabric(tiny.fabric);
+      const instance = buildInstance(tiny.kernel, graph, tiny.pins, tiny.objective);
+      const stars = starBound(instance);
+      const placement = modelOptimum(placementProgram(instance, stars.star).program, highs);
+      const full = modelOptimum(routedProgram(instance, graph, 0).program, highs);
+      return stars.bound <= truth && placement <= truth && full === truth
+        ? []
+        : [{ tiny, truth, stars: stars.bound, placement, full }];
+    });
+    expect(wrong).toEqual([]);
+  });
+
   it('meets every kind of case: both objectives, infeasible ones, congestion that lifts the optimum', () => {
     const kinds = answers.map(
       ({ tiny, outcome }) => `${tiny.objective} ${outcome.explanation?.code ?? outcome.status}`,
     );
-    for (const kind of ['wire optimal', 'path optimal', 'wire too few tiles', 'path out of reach']) {
+    for (const kind of [
+      'wire optimal',
+      'path optimal',
+      'wire too few tiles',
+      'path out of reach',
+      'wire too few channels',
+    ]) {
       expect(kinds).toContain(kind);
     }
   });

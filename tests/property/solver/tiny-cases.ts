@@ -17,7 +17,7 @@ export interface TinyCase {
 const kindOf: Record<number, readonly OpKind[]> = {
   0: ['load'],
   1: ['absolute', 'pass'],
-  2: ['add', 'multiply', 'subtract', 'max'],
+  2: ['add', 'subtract', 'max', 'subtract', 'add', 'max', 'multiply'],
 };
 
 /** A load, then ops that read earlier ones or take constants, then a store of each value that nothing reads. */
@@ -76,9 +76,12 @@ const units = ['unit_memory', 'unit_arithmetic', 'unit_multiplier', null] as unk
 
 const fabricArb: fc.Arbitrary<Fabric> = fc
   .record({
-    size: fc.constantFrom([2, 3], [3, 2], [2, 2], [1, 5], [1, 6]),
+    size: fc.constantFrom([2, 3], [2, 3], [3, 2], [2, 3], [1, 6], [1, 5], [2, 2]),
     topology: fc.constantFrom('mesh', 'torus', 'diagonal'),
-    mix: fc.array(fc.nat(99), { minLength: 6, maxLength: 6 }),
+    mix: fc.oneof(
+      { weight: 6, arbitrary: fc.shuffledSubarray([0, 0, 1, 1, 1, 2], { minLength: 6 }) },
+      { weight: 1, arbitrary: fc.shuffledSubarray([0, 0, 1, 1, 1, 1, 2, 2, 3], { minLength: 6 }) },
+    ),
     channels: fc.constantFrom(1, 1, 2),
     removed: fc.array(fc.tuple(fc.nat(5), fc.nat(5)), { maxLength: 3 }),
     added: fc.array(fc.tuple(fc.nat(5), fc.nat(5)), { maxLength: 1 }),
@@ -88,8 +91,6 @@ const fabricArb: fc.Arbitrary<Fabric> = fc
     const [rows, cols] = size as [number, number];
     const name = (i: number) => `r${Math.floor(i / cols)}c${i % cols}` as TileId;
     const count = rows * cols;
-    const pick = (n: number): UnitId | null =>
-      (n < 40 ? units[0] : n < 75 ? units[1] : n < 92 ? units[2] : units[3]) ?? null;
     const link = ([a, b]: [number, number]) => `${name(a % count)}>${name(b % count)}` as LinkId;
     return {
       format: 'pinloom.fabric',
@@ -99,7 +100,7 @@ const fabricArb: fc.Arbitrary<Fabric> = fc
       rows,
       cols,
       topology,
-      units: Array.from({ length: count }, (_, i) => pick(mix[i] ?? 0)),
+      units: Array.from({ length: count }, (_, i) => units[mix[i] ?? 3] ?? null),
       channels,
       removedLinks: removed.map(link),
       addedLinks: added.filter(([a, b]) => a % count !== b % count).map(link),
@@ -114,7 +115,10 @@ export const tinyCaseArb: fc.Arbitrary<TinyCase> = fc
   .record({
     kernel: kernelArb,
     fabric: fabricArb,
-    pin: fc.option(fc.tuple(fc.nat(4), fc.nat(5)), { freq: 3 }),
+    pin: fc.oneof(
+      { weight: 4, arbitrary: fc.constant(null) },
+      { weight: 1, arbitrary: fc.tuple(fc.nat(4), fc.nat(5)) },
+    ),
     objective: fc.constantFrom<Objective>('wire', 'path'),
   })
   .map(({ kernel, fabric, pin, objective }) => {
