@@ -12,6 +12,7 @@ import { shortName } from '@/lib/mapping/picture/op-label';
 import { OpPlates } from '../drawing/op-plates';
 import { ThreadLayer } from '../drawing/thread-layer';
 import { useSize } from '../drawing/use-size';
+import { tileRefusal } from '../store/bench-content';
 import { useBench, useBenchStore } from '../store/bench-context';
 import { litBy } from '../store/lit';
 import type { BenchView } from './bench-view';
@@ -44,10 +45,8 @@ export function GridPane({ shown, onOpDown, wasDragged }: GridPaneProps) {
     () =>
       held === null || shown.preview
         ? null
-        : graph.tiles.map((_, tile) => store.getState().refusal(held, tile)),
-    // The content decides what is refused, though it is read from the store.
-    // biome-ignore lint/correctness/useExhaustiveDependencies: see above
-    [held, content, graph, store, shown.preview],
+        : graph.tiles.map((_, tile) => tileRefusal(setting, content, held, tile)),
+    [held, content, graph, setting, shown.preview],
   );
   const heldName = held === null ? '' : shortName(setting.ops.get(held) ?? { label: '', kind: 'pass' });
   const tileLook = (tile: number): TileLook => {
