@@ -1,0 +1,25 @@
+'use client';
+
+import { useState } from 'react';
+import type { EditorCalls } from '@/components/kernel-editor/server-calls';
+import { Button } from '@/components/ui/button';
+import { Dialog } from '@/components/ui/dialog';
+import { ImportForm } from './import-form';
+
+interface ImportKernelProps {
+  workspace: string;
+  create: EditorCalls['create'];
+}
+
+/** Imports a kernel from a file or from text: what was read is shown before anything is saved. */
+export function ImportKernel(props: ImportKernelProps) {
+  const [open, setOpen] = useState(false);
+  return (
+    <>
+      <Button onClick={() => setOpen(true)}>Import</Button>
+      <Dialog open={open} title="Import a kernel" size="wide" onClose={() => setOpen(false)}>
+        <ImportForm {...props} onClose={() => setOpen(false)} />
+      </Dialog>
+    </>
+  );
+}
