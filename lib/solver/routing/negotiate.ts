@@ -24,7 +24,7 @@ const PRESSURE_GROWTH = 1.4;
 const MOST_PRESSURE = 64;
 const HISTORY_STEP = 0.5;
 /** Rounds without fewer excess nets after which negotiation gives up. */
-const STALE_ROUNDS = 12;
+const STALE_ROUNDS = 8;
 const POLISH_PASSES = 3;
 
 export interface NetTrees {
