@@ -22,6 +22,8 @@ export interface AnnealMoves {
   nearCandidates: (op: number, tile: number) => readonly number[];
   /** What an op pays to stand on a tile; raised where routes were crowded. */
   tileCost: Float64Array;
+  /** What one hop of one op typically costs: temperatures are in this unit. */
+  temperatureUnit: number;
 }
 
 const NEAR_COUNT = 10;
@@ -40,6 +42,7 @@ export function annealMoves(instance: PlacementInstance, cost: PlacementCost): A
     instance,
     cost,
     tileCost: new Float64Array(tileCount),
+    temperatureUnit: temperatureUnit(instance),
     nearCandidates: (op, tile) => {
       const key = (groupOf[op] as number) * tileCount + tile;
       let near = cache.get(key);
@@ -56,6 +59,15 @@ export function annealMoves(instance: PlacementInstance, cost: PlacementCost): A
       return near;
     },
   };
+}
+
+/** Mean weight, times the root of how many pairs or nets an op has beyond the usual four. */
+function temperatureUnit(instance: PlacementInstance): number {
+  const terms = instance.objective === 'path' ? instance.pairs : instance.nets;
+  if (terms.length === 0) return 1;
+  const meanWeight = terms.reduce((sum, one) => sum + one.weight, 0) / terms.length;
+  const perOp = (2 * terms.length) / Math.max(1, instance.opCount);
+  return meanWeight * Math.max(1, Math.sqrt(perOp / 4));
 }
 
 /** Anneals `start` in place of nothing: returns the best tiling met and its cost, tile costs included. */

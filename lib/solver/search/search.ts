@@ -81,10 +81,12 @@ function nextTiling(
 ): Int32Array {
   const perOp = MOVES_PER_OP[Math.min(round, MOVES_PER_OP.length - 1)] as number;
   const scale = Math.max(8, Math.min(best.length, 120));
+  const unit = moves.temperatureUnit;
+  const hot = round % 2 === 0 ? 4 : 1.2;
   return anneal(
     moves,
     best,
-    { moves: perOp * scale, startTemperature: round % 2 === 0 ? 4 : 1.2, endTemperature: 0.15, shouldStop },
+    { moves: perOp * scale, startTemperature: hot * unit, endTemperature: 0.15 * unit, shouldStop },
     random,
   ).tiling;
 }
