@@ -2,6 +2,7 @@
 export function slugOf(name: string): string {
   const slug = name
     .normalize('NFKD')
+    .replace(/\p{M}+/gu, '')
     .toLowerCase()
     .replace(/[^a-z0-9]+/g, '-')
     .replace(/^-+|-+$/g, '')
