@@ -1,6 +1,7 @@
 'use client';
 
 import { type ReactNode, useState } from 'react';
+import { PICTURE_CAUTION } from '@/lib/mapping/picture/mapping-svg';
 import { shortName } from '@/lib/mapping/picture/op-label';
 import type { BenchView } from './panes/bench-view';
 import { BrokenRules, Figures, LinkUse, PanelTitle, UnitUse } from './panes/figures';
@@ -11,8 +12,6 @@ import { StatusLine } from './panes/status-line';
 import { useOpDrag } from './panes/use-op-drag';
 import { SolvePanel, type SolvePanelProps } from './solve/solve-panel';
 import { useBenchStore } from './store/bench-context';
-
-export const CAUTION = 'Estimates; sign-off figures come from the implementation flow.';
 
 interface BenchPanesProps {
   shown: BenchView;
@@ -34,7 +33,7 @@ export function BenchPanes({ shown, kernelTitle, fabricTitle, solvePanel, more }
   const draggedOp = dragging ? setting.ops.get(dragging.op) : undefined;
   return (
     <div className="flex min-h-0 flex-1 flex-col md:grid md:grid-cols-[minmax(15rem,19rem)_minmax(0,1fr)_17rem]">
-      <div className="flex h-[112vw] max-h-[70dvh] min-h-0 flex-col md:order-2 md:h-auto md:max-h-none">
+      <div className="flex h-[112vw] max-h-[70dvh] min-h-0 flex-col bg-surface md:order-2 md:h-auto md:max-h-none">
         <div className="px-4 pt-3">
           <PanelTitle aside={fabricTitle}>{shown.preview ? 'Fabric, best so far' : 'Fabric'}</PanelTitle>
         </div>
@@ -56,7 +55,7 @@ export function BenchPanes({ shown, kernelTitle, fabricTitle, solvePanel, more }
         <UnitUse shown={shown} />
         {more}
         <LinkUse shown={shown} />
-        <p className="text-xs text-quiet">{CAUTION}</p>
+        <p className="text-xs text-quiet">{PICTURE_CAUTION}</p>
       </div>
       {dragging && draggedOp ? (
         <div

@@ -1,9 +1,9 @@
-/** The kernel from top to bottom, for the bench's narrow pane. Carried connections do not pull on the layers. */
+/** The kernel from top to bottom, for the bench's narrow pane. Carried connections are the ones turned back in a cycle. */
 import { graphlib, layout } from '@dagrejs/dagre';
 import type { EdgeId, Kernel, OpId } from '@/lib/graph/kernel';
 import type { Point } from '@/lib/mapping/picture/fabric-geometry';
 
-export const OP_WIDTH_PX = 104;
+export const OP_WIDTH_PX = 92;
 export const OP_HEIGHT_PX = 36;
 
 export interface KernelPicture {
@@ -14,15 +14,25 @@ export interface KernelPicture {
   edges: ReadonlyMap<EdgeId, readonly Point[]>;
 }
 
-const EDGE_GAP_PX = 14;
+const EDGE_GAP_PX = 10;
 
 export function kernelPicture(kernel: Kernel): KernelPicture {
   const graph = new graphlib.Graph({ multigraph: true });
-  graph.setGraph({ rankdir: 'TB', nodesep: 18, ranksep: 34, edgesep: EDGE_GAP_PX, marginx: 12, marginy: 12 });
+  graph.setGraph({
+    rankdir: 'TB',
+    nodesep: 10,
+    ranksep: 40,
+    edgesep: EDGE_GAP_PX,
+    marginx: 8,
+    marginy: 10,
+    acyclicer: 'greedy',
+  });
   graph.setDefaultEdgeLabel(() => ({}));
   for (const op of kernel.ops) graph.setNode(op.id, { width: OP_WIDTH_PX, height: OP_HEIGHT_PX });
   for (const edge of kernel.edges) {
-    if (edge.distance === 0 && edge.from !== edge.to) graph.setEdge(edge.from, edge.to, {}, edge.id);
+    if (edge.from !== edge.to) {
+      graph.setEdge(edge.from, edge.to, { weight: edge.distance === 0 ? 4 : 1 }, edge.id);
+    }
   }
   layout(graph);
   const ops = new Map<OpId, Point>();

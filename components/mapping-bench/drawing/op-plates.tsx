@@ -44,7 +44,7 @@ export function OpPlates({ graph, byTile, ops, pins, arriving, lit, held }: OpPl
 }
 
 const none: readonly ArrivingNet[] = [];
-const LINE_PX = 14;
+const LINE_PX = 13;
 
 interface OpPlateProps {
   op: Op;
@@ -60,7 +60,7 @@ const OpPlate = memo(function OpPlate({ op, row, col, pinned, arriving, part, he
   const { x, y } = tileBox(row, col);
   const lines = labelLines(shortName(op));
   const places = knotPlaces(arriving.length, TILE_PX);
-  const first = y + (lines.length > 1 ? 25 : 32);
+  const first = y + (lines.length > 1 ? 27 : 33);
   return (
     <g opacity={held ? 0.55 : 1}>
       {part === 'pointed' || held ? (
