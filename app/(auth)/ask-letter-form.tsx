@@ -28,6 +28,7 @@ export function AskLetterForm({ action, submitLabel, sentText }: AskLetterFormPr
   }
   return (
     <form
+      method="post"
       className="space-y-4"
       onSubmit={(event) => {
         event.preventDefault();

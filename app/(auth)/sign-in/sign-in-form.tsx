@@ -11,6 +11,7 @@ export function SignInForm({ next, email }: { next: string; email?: string }) {
   const { run, busy, fieldError, formError } = useAction(signInAction);
   return (
     <form
+      method="post"
       className="space-y-4"
       onSubmit={(event) => {
         event.preventDefault();

@@ -10,6 +10,7 @@ export function MakeWorkspaceForm() {
   const { run, busy, fieldError, formError } = useAction(makeWorkspaceAction);
   return (
     <form
+      method="post"
       className="space-y-4"
       onSubmit={(event) => {
         event.preventDefault();

@@ -31,6 +31,7 @@ export function AcceptAsNewForm({ token, email }: { token: string; email: string
   const { run, busy, fieldError, formError } = useAction(acceptAsNewAction);
   return (
     <form
+      method="post"
       className="space-y-4"
       onSubmit={(event) => {
         event.preventDefault();

@@ -10,6 +10,7 @@ export function ResetForm({ token }: { token: string }) {
   const { run, busy, fieldError, formError } = useAction(completeResetAction);
   return (
     <form
+      method="post"
       className="space-y-4"
       onSubmit={(event) => {
         event.preventDefault();

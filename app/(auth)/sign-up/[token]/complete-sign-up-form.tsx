@@ -11,6 +11,7 @@ export function CompleteSignUpForm({ token, email }: { token: string; email: str
   const { run, busy, fieldError, formError } = useAction(completeSignUpAction);
   return (
     <form
+      method="post"
       className="space-y-4"
       onSubmit={(event) => {
         event.preventDefault();

@@ -13,6 +13,7 @@ export function NameForm({ name }: { name: string }) {
   const say = useToast();
   return (
     <form
+      method="post"
       className="flex max-w-md items-end gap-2"
       onSubmit={(event) => {
         event.preventDefault();

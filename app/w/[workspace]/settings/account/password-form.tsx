@@ -15,6 +15,7 @@ export function PasswordForm({ email }: { email: string }) {
   const say = useToast();
   return (
     <form
+      method="post"
       ref={form}
       className="max-w-md space-y-4"
       onSubmit={(event) => {

@@ -17,6 +17,7 @@ export function InviteForm({ workspaceSlug }: { workspaceSlug: string }) {
   const say = useToast();
   return (
     <form
+      method="post"
       ref={form}
       className="max-w-md space-y-4"
       onSubmit={(event) => {
