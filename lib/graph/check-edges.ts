@@ -1,9 +1,9 @@
 /** Rules of single connections: ends, ports, types, widths, values carried in from before the first iteration. */
 import type { Edge, Kernel, Op } from './kernel';
 import type { KernelIndex } from './kernel-index';
-import { opSpec } from './op-catalog';
-import { connectionFault, initialValueRange, inRange, opName, portOf } from './ports';
-import { errorProblem, type Problem } from './problem';
+import { opSpec, type PortSpec } from './op-catalog';
+import { connectionFault, initialValueRange, inRange, isConstantOnly, opName, portOf } from './ports';
+import { errorProblem, type Problem, type ProblemCode } from './problem';
 
 /** K2, K3, K6, K9. */
 export function checkEdges(kernel: Kernel, { opById }: KernelIndex): Problem[] {
@@ -35,14 +35,15 @@ function checkPort(edge: Edge, source: Op, target: Op): Problem[] {
   }
   const fault = connectionFault(source, target, port);
   if (fault === null) return [];
+  return [errorProblem(faultCode(source, target, port), fault, places)];
+}
+
+/** The code of what `connectionFault` found. */
+function faultCode(source: Op, target: Op, port: PortSpec): ProblemCode {
   const { output } = opSpec(source.kind);
-  const code =
-    output === null
-      ? 'noResult'
-      : (output === 'flag') === (port.type === 'flag')
-        ? 'widthMismatch'
-        : 'typeMismatch';
-  return [errorProblem(code, fault, places)];
+  if (output === null) return 'noResult';
+  if (isConstantOnly(target, port)) return 'rateMismatch';
+  return (output === 'flag') === (port.type === 'flag') ? 'widthMismatch' : 'typeMismatch';
 }
 
 function checkInitialValues(edge: Edge, source: Op, target: Op): Problem[] {

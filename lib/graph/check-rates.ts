@@ -57,10 +57,8 @@ function checkReduction(id: OpId, index: KernelIndex, rates: ReadonlyMap<OpId, R
   const op = index.opById.get(id)!;
   return (index.edgesInto.get(id) ?? []).flatMap((edge) => {
     const places = { opIds: [id], edgeIds: [edge.id], port: edge.port };
-    if (edge.port === 'fallback') {
-      const text = `The fallback of ${opName(op)} stands for a vector in which no element counted: give it as a constant.`;
-      return [errorProblem('rateMismatch', text, places)];
-    }
+    // A connected fallback is reported with the connection's other faults.
+    if (edge.port === 'fallback') return [];
     if (rates.get(edge.from) !== 'vector') return [];
     const source = index.opById.get(edge.from)!;
     const text = `${opName(op)} goes through a vector, but ${opName(source)} gives only one value per vector: connect a value of each iteration.`;

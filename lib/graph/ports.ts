@@ -10,10 +10,17 @@ export const opName = (op: Op): string =>
 export const portOf = (op: Op, port: string): PortSpec | undefined =>
   portsOf(op.kind).find((spec) => spec.name === port);
 
+/** The fallback of a reduction cannot be connected: no result of an iteration belongs to a whole vector. */
+export const isConstantOnly = (target: Op, port: PortSpec): boolean =>
+  port.name === 'fallback' && opSpec(target.kind).yields === 'vector';
+
 /** Why the source's result cannot be the operand at a port, as one sentence; null when it can. */
 export function connectionFault(source: Op, target: Op, port: PortSpec): string | null {
   const { output } = opSpec(source.kind);
   if (output === null) return `${opName(source)} has no result to connect.`;
+  if (isConstantOnly(target, port)) {
+    return `The fallback of ${opName(target)} stands for a vector in which no element counted: give it as a constant.`;
+  }
   const operand = `the operand “${port.label}” of ${opName(target)}`;
   if (port.type === 'flag') {
     return output === 'flag'
