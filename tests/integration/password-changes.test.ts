@@ -71,6 +71,21 @@ describe('a forgotten password', () => {
     expect(outbox[1]?.text).not.toContain('/reset/');
   });
 
+  it('says when the letter could not be sent, for a known and an unknown address alike', async () => {
+    const { context } = accountContext(box.db, { mailDown: true });
+    const known = await requestReset(context, { email: person.email });
+    const unknown = await requestReset(context, { email: 'unknown2@tarnbrook.example' });
+    expect(known).toMatchObject({ error: { code: 'unavailable' } });
+    expect(unknown).toEqual(known);
+  });
+
+  it('is changed even when the letter that tells of it could not be sent', async () => {
+    const { context, lastToken } = accountContext(box.db);
+    value(await requestReset(context, { email: person.email }));
+    const down = accountContext(box.db, { mailDown: true }).context;
+    expect((await completeReset(down, { token: lastToken(), password: NEW_PASSWORD })).ok).toBe(true);
+  });
+
   it('sends three letters an hour at the most, and says nothing of it', async () => {
     const { context, outbox } = accountContext(box.db);
     for (let n = 0; n < 5; n++) expect((await requestReset(context, { email: person.email })).ok).toBe(true);

@@ -31,6 +31,7 @@ export async function changePassword(
     await setPasswordHash(tx, { userId: who.user.id, passwordHash });
     return input.endOthers ? endAllSessions(tx, { userId: who.user.id, keepId: who.session.id }) : 0;
   });
+  // The password is changed whether or not the letter goes out.
   await context.send(passwordChangedLetter({ to: who.user.email, resetLink: context.link('/forgotten') }));
   return ok({ endedSessions });
 }

@@ -19,7 +19,7 @@ import type { Member } from '../access';
 import { type AppResult, appError, notFound, refuse } from '../errors';
 import { takeAttempt } from '../rate-limit';
 import type { SignedIn } from '../session-store';
-import { type AccountContext, later, MINUTE_MS } from './context';
+import { type AccountContext, later, MINUTE_MS, notSent } from './context';
 import { invitationLetter } from './letters';
 import { inviteWorkspace, linkAddress } from './limits';
 import { passwordProblem } from './password-rule';
@@ -81,8 +81,14 @@ export async function invite(
         : 'This address is invited already. Send that invitation again instead.';
     return err(appError('conflict', message, { fields: { email: message } }));
   }
-  await context.send(letterFor(context, by, input.email, input.role, token));
-  return made;
+  const sent = await context.send(letterFor(context, by, input.email, input.role, token));
+  if (sent) return made;
+  return err(
+    appError(
+      'unavailable',
+      'The invitation is made, but its letter could not be sent. In a few minutes, reload this page and use "Send again".',
+    ),
+  );
 }
 
 /** Sends a pending invitation again, with a new link; the older link ends. */
@@ -101,8 +107,9 @@ export async function inviteAgain(
     expiresAt: validUntil(context.now),
   });
   if (!renewed.ok) return err(notFound('invitation'));
-  await context.send(letterFor(context, by, renewed.value.email, renewed.value.role, token));
-  return ok(null);
+  const { email, role } = renewed.value;
+  const sent = await context.send(letterFor(context, by, email, role, token));
+  return sent ? ok(null) : err(notSent);
 }
 
 export function withdrawInvitation(

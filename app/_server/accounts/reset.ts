@@ -8,7 +8,7 @@ import { err, ok } from '@/lib/result';
 import { type AppResult, appError } from '../errors';
 import { takeAttempt } from '../rate-limit';
 import { endAllSessions } from '../session-store';
-import { type AccountContext, later, MINUTE_MS } from './context';
+import { type AccountContext, later, MINUTE_MS, notSent } from './context';
 import { noAccountLetter, passwordChangedLetter, resetLetter } from './letters';
 import { linkAddress, resetAccount, resetAddress } from './limits';
 import { passwordProblem } from './password-rule';
@@ -28,8 +28,10 @@ export async function requestReset(
   if (!(await takeAttempt(context.db, resetAccount, input.email)).ok) return ok(null);
   const account = await findAccount(context.db, input);
   if (!account) {
-    await context.send(noAccountLetter({ to: input.email, signUpLink: context.link('/sign-up') }));
-    return ok(null);
+    const told = await context.send(
+      noAccountLetter({ to: input.email, signUpLink: context.link('/sign-up') }),
+    );
+    return told ? ok(null) : err(notSent);
   }
   const token = newToken();
   await context.db.transaction((tx) =>
@@ -40,10 +42,10 @@ export async function requestReset(
       expiresAt: later(context.now, VALID_MINUTES * MINUTE_MS),
     }),
   );
-  await context.send(
+  const sent = await context.send(
     resetLetter({ to: account.email, link: context.link(`/reset/${token}`), validMinutes: VALID_MINUTES }),
   );
-  return ok(null);
+  return sent ? ok(null) : err(notSent);
 }
 
 /** True while the link can be used. */
@@ -71,6 +73,7 @@ export async function completeReset(
     return true;
   });
   if (!done) return err(endedLink);
+  // The password is set whether or not the letter goes out.
   await context.send(passwordChangedLetter({ to: account.email, resetLink: context.link('/forgotten') }));
   return ok({ userId: account.id });
 }

@@ -12,7 +12,7 @@ import type { Id } from '@/lib/ids';
 import { err, ok } from '@/lib/result';
 import { type AppResult, appError, refuse } from '../errors';
 import { takeAttempt } from '../rate-limit';
-import { type AccountContext, later, MINUTE_MS } from './context';
+import { type AccountContext, later, MINUTE_MS, notSent } from './context';
 import { alreadyHereLetter, confirmSignUpLetter } from './letters';
 import { linkAddress, resetAccount, signUpAddress } from './limits';
 import { passwordProblem } from './password-rule';
@@ -36,14 +36,14 @@ export async function requestSignUp(
   if (!(await takeAttempt(context.db, resetAccount, input.email)).ok) return ok(null);
   const account = await findAccount(context.db, input);
   if (account) {
-    await context.send(
+    const told = await context.send(
       alreadyHereLetter({
         to: input.email,
         signInLink: context.link('/sign-in'),
         resetLink: context.link('/forgotten'),
       }),
     );
-    return ok(null);
+    return told ? ok(null) : err(notSent);
   }
   const token = newToken();
   await createSignUp(context.db, {
@@ -52,14 +52,14 @@ export async function requestSignUp(
     now: context.now,
     expiresAt: later(context.now, VALID_HOURS * 60 * MINUTE_MS),
   });
-  await context.send(
+  const sent = await context.send(
     confirmSignUpLetter({
       to: input.email,
       link: context.link(`/sign-up/${token}`),
       validHours: VALID_HOURS,
     }),
   );
-  return ok(null);
+  return sent ? ok(null) : err(notSent);
 }
 
 /** The address that a sign-up link was sent to, or null when the link has ended. */
