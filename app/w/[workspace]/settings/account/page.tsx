@@ -3,11 +3,11 @@ import Link from 'next/link';
 import { requireMember } from '@/app/_server/access';
 import { currentSession } from '@/app/_server/session';
 import { SignOutButton } from '@/app/(auth)/sign-out-button';
-import { TopBar } from '@/components/shell/top-bar';
 import { database } from '@/db/client';
 import { listMemberships } from '@/db/queries/members';
 import { listSessions } from '@/db/queries/sessions';
 import { Section } from '../section';
+import { SettingsBar } from '../settings-bar';
 import { browserName } from './browser-name';
 import { NameForm } from './name-form';
 import { PasswordForm } from './password-form';
@@ -22,7 +22,7 @@ export default async function AccountPage({ params }: { params: Promise<{ worksp
   const memberships = await listMemberships(database(), { userId: user.id });
   return (
     <>
-      <TopBar path={[{ label: 'Settings' }, { label: 'Account' }]} actions={<SignOutButton />} />
+      <SettingsBar workspaceSlug={workspace.slug} title="Account" actions={<SignOutButton />} />
       <div className="px-4">
         <Section title="You" text={`Signed in as ${user.email}.`}>
           <NameForm name={user.name} />

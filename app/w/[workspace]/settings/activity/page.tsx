@@ -1,12 +1,12 @@
 import type { Metadata } from 'next';
 import { requireMember } from '@/app/_server/access';
-import { TopBar } from '@/components/shell/top-bar';
 import { ButtonLink } from '@/components/ui/button';
 import { EmptyState } from '@/components/ui/notice';
 import { database } from '@/db/client';
 import { listAudit } from '@/db/queries/audit';
 import { parseId } from '@/lib/ids';
 import { Moment } from '../moment';
+import { SettingsBar } from '../settings-bar';
 
 export const metadata: Metadata = { title: 'Activity' };
 
@@ -29,7 +29,7 @@ export default async function ActivityPage({ params, searchParams }: ActivityPag
   const last = entries.at(-1);
   return (
     <>
-      <TopBar path={[{ label: 'Settings' }, { label: 'Activity' }]} />
+      <SettingsBar workspaceSlug={workspace.slug} title="Activity" />
       <div className="p-4">
         {entries.length === 0 ? (
           <EmptyState title={from ? 'Nothing earlier' : 'Nothing yet'}>

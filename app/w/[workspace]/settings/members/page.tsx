@@ -1,11 +1,11 @@
 import type { Metadata } from 'next';
 import { requireMember } from '@/app/_server/access';
-import { TopBar } from '@/components/shell/top-bar';
 import { database } from '@/db/client';
 import { listPendingInvitations } from '@/db/queries/invitations';
 import { listMembers } from '@/db/queries/members';
 import { roleReaches, roleSummaries, roles } from '@/lib/roles';
 import { Section } from '../section';
+import { SettingsBar } from '../settings-bar';
 import { InvitationList } from './invitation-list';
 import { InviteForm } from './invite-form';
 import { LeaveButton } from './leave-button';
@@ -21,8 +21,9 @@ export default async function MembersPage({ params }: { params: Promise<{ worksp
   const now = Date.now();
   return (
     <>
-      <TopBar
-        path={[{ label: 'Settings' }, { label: 'Members' }]}
+      <SettingsBar
+        workspaceSlug={workspace.slug}
+        title="Members"
         actions={<LeaveButton workspaceSlug={workspace.slug} workspaceName={workspace.name} />}
       />
       <div className="px-4">

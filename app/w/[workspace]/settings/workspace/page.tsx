@@ -1,8 +1,8 @@
 import type { Metadata } from 'next';
 import { requireMember } from '@/app/_server/access';
-import { TopBar } from '@/components/shell/top-bar';
 import { roleReaches } from '@/lib/roles';
 import { Section } from '../section';
+import { SettingsBar } from '../settings-bar';
 import { RenameWorkspaceForm } from './rename-workspace-form';
 
 export const metadata: Metadata = { title: 'Workspace' };
@@ -11,7 +11,7 @@ export default async function WorkspacePage({ params }: { params: Promise<{ work
   const { workspace, role } = await requireMember((await params).workspace);
   return (
     <>
-      <TopBar path={[{ label: 'Settings' }, { label: 'Workspace' }]} />
+      <SettingsBar workspaceSlug={workspace.slug} title="Workspace" />
       <div className="px-4">
         <Section
           title="Name"
