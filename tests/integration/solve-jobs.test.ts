@@ -121,7 +121,34 @@ describe('a worker that was thought lost', () => {
   });
 });
 
+describe('a worker that takes up its own lost solve', () => {
+  it('is fenced from its earlier attempt', async () => {
+    const solveId = await newSolve();
+    const earlier = (await takeSolve(box.db, { solveId, worker: 'a' })) as Hold;
+    await endLease(solveId);
+    await takeSolve(box.db, { solveId, worker: 'a' });
+    expect(await reportProgress(box.db, earlier, note())).toBe('lost');
+  });
+});
+
+describe('a solve that is over', () => {
+  it('takes no progress and no second end', async () => {
+    const solveId = await newSolve();
+    const hold = (await takeSolve(box.db, { solveId, worker: 'a' })) as Hold;
+    expect(await finishSolve(box.db, hold, { state: 'done', outcome: end(), best: null })).toBe(true);
+    expect(await reportProgress(box.db, hold, note())).toBe('lost');
+    expect(await finishSolve(box.db, hold, { state: 'failed', outcome: end(), best: null })).toBe(false);
+    expect((await getSolve(box.db, { ...of, solveId }))?.state).toBe('done');
+  });
+});
+
 describe('a running solve', () => {
+  it('is not taken by another worker while its lease lasts', async () => {
+    const solveId = await newSolve();
+    await takeSolve(box.db, { solveId, worker: 'a' });
+    expect(await takeSolve(box.db, { solveId, worker: 'b' })).toBeNull();
+  });
+
   it('shows progress, is asked to stop and ends with its best', async () => {
     const solveId = await newSolve();
     const hold = (await takeSolve(box.db, { solveId, worker: 'a' })) as Hold;
