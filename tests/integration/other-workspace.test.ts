@@ -209,6 +209,14 @@ describe('changing what belongs to another workspace', () => {
     expect(await archiveMapping(box.db, { ...me, mappingId, archived: true })).toEqual(NOT_FOUND);
   });
 
+  it('is not_found for a bench that mixes an own version with theirs', async () => {
+    const mine = await newBench(box.db, me);
+    const theirKernel = { kernelVersionId: theirs.kernelVersionId, fabricVersionId: mine.fabricVersionId };
+    const theirFabric = { kernelVersionId: mine.kernelVersionId, fabricVersionId: theirs.fabricVersionId };
+    expect(await createMappingDraft(box.db, { ...me, name: 'x', ...theirKernel })).toEqual(NOT_FOUND);
+    expect(await createMappingDraft(box.db, { ...me, name: 'x', ...theirFabric })).toEqual(NOT_FOUND);
+  });
+
   it('is not_found for solves', async () => {
     const { draftId, solveId } = theirs;
     expect(await createSolve(box.db, { ...me, draftId, settings, pins: {}, startPlacement: null })).toEqual(
