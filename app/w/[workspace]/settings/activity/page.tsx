@@ -7,6 +7,7 @@ import { listAudit } from '@/db/queries/audit';
 import { parseId } from '@/lib/ids';
 import { Moment } from '../moment';
 import { SettingsBar } from '../settings-bar';
+import { detailText } from './detail-text';
 
 export const metadata: Metadata = { title: 'Activity' };
 
@@ -83,8 +84,3 @@ export default async function ActivityPage({ params, searchParams }: ActivityPag
     </>
   );
 }
-
-const detailText = (detail: Record<string, string | number | boolean | null>) =>
-  Object.entries(detail)
-    .map(([name, value]) => (name === 'name' ? String(value) : `${name}: ${value ?? 'none'}`))
-    .join('; ');

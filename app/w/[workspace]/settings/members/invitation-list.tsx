@@ -48,8 +48,8 @@ export function InvitationList({ workspaceSlug, invitations }: InvitationListPro
           const input = { workspace: workspaceSlug, invitationId: invitation.id };
           return (
             <li key={invitation.id} className="flex flex-wrap items-center gap-x-4 gap-y-2 px-3 py-2 text-sm">
-              <div className="min-w-0 flex-1">
-                <p className="truncate font-semibold">{invitation.email}</p>
+              <div className="min-w-40 flex-1">
+                <p className="wrap-anywhere font-semibold">{invitation.email}</p>
                 <p className="text-quiet">
                   as {invitation.role}, by {invitation.invitedByName};{' '}
                   {invitation.expired ? (

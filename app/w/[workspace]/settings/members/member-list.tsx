@@ -57,11 +57,11 @@ export function MemberList({ workspaceSlug, members, manages }: MemberListProps)
       <ul className="divide-y divide-rule rounded-md border border-rule bg-surface">
         {members.map((member) => (
           <li key={member.userId} className="flex flex-wrap items-center gap-x-4 gap-y-2 px-3 py-2 text-sm">
-            <div className="min-w-0 flex-1">
+            <div className="min-w-40 flex-1">
               <p className="font-semibold">
                 {member.name} {member.isYou ? <Badge>you</Badge> : null}
               </p>
-              <p className="truncate text-quiet">{member.email}</p>
+              <p className="wrap-anywhere text-quiet">{member.email}</p>
             </div>
             {manages ? (
               <>
