@@ -8,10 +8,12 @@ import pino from 'pino';
 import { closeDatabase, database, databaseUrl } from '../db/client';
 import { beat, forgetWorker, sweepSolves } from '../db/queries/solve-work';
 import { SOLVE_QUEUE, type SolveMessage, sendSolve, startQueue } from '../db/queue';
+import { tidy } from '../db/tidy';
 import { runSolveJob } from './worker/run-solve-job';
 
 const BEAT_MS = 5000;
 const SWEEP_MS = 2000;
+const TIDY_MS = 3_600_000;
 const POLL_SECONDS = 0.5;
 /** How long a stop waits for the running solve to hand in its best. */
 const STOP_WITHIN_MS = 5000;
@@ -46,6 +48,7 @@ async function main(): Promise<void> {
   const boss = await startQueue(databaseUrl(), 'worker', (error) => log.error({ err: error }, 'queue'));
   every(BEAT_MS, 'heartbeat', () => beat(database(), worker));
   every(SWEEP_MS, 'sweep', () => sweep(boss));
+  every(TIDY_MS, 'tidying up', () => tidy(database(), new Date()));
   await boss.work<SolveMessage>(
     SOLVE_QUEUE,
     { pollingIntervalSeconds: POLL_SECONDS, batchSize: 1 },

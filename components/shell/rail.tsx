@@ -21,7 +21,7 @@ const places = [
 export function Rail({ workspace, userName, role }: RailProps) {
   const pathname = usePathname();
   return (
-    <div className="fixed inset-x-0 bottom-0 z-30 flex border-t border-rule bg-surface md:static md:h-dvh md:w-40 md:flex-none md:flex-col md:border-t-0 md:border-r">
+    <header className="fixed inset-x-0 bottom-0 z-30 flex border-t border-rule bg-surface md:static md:h-dvh md:w-40 md:flex-none md:flex-col md:border-t-0 md:border-r">
       <Link
         href={`/w/${workspace.slug}/kernels`}
         className="hidden px-4 pt-4 pb-6 md:block"
@@ -49,11 +49,15 @@ export function Rail({ workspace, userName, role }: RailProps) {
           );
         })}
       </nav>
-      <div className="hidden px-4 py-4 text-sm md:block">
-        <p className="truncate font-semibold">{workspace.name}</p>
-        <p className="truncate text-quiet">{userName}</p>
-        <p className="text-quiet">{role}</p>
-      </div>
-    </div>
+      <Link
+        href={`/w/${workspace.slug}/settings/account`}
+        title="Account, sign-out and other workspaces"
+        className="hidden px-4 py-4 text-sm hover:bg-paper md:block"
+      >
+        <span className="block truncate font-semibold">{workspace.name}</span>
+        <span className="block truncate text-quiet">{userName}</span>
+        <span className="block text-quiet">{role}</span>
+      </Link>
+    </header>
   );
 }

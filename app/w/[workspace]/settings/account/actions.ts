@@ -1,11 +1,14 @@
 'use server';
 
+import { cookies } from 'next/headers';
 import { z } from 'zod';
 import { changePassword } from '@/app/_server/accounts/change-password';
 import { passwordInput, personNameInput } from '@/app/_server/accounts/inputs';
 import { accountContext } from '@/app/_server/accounts/request-context';
 import { defineAction } from '@/app/_server/define-action';
 import { notFound } from '@/app/_server/errors';
+import { secureCookies } from '@/app/_server/settings';
+import { THEME_COOKIE, themes } from '@/components/shell/theme';
 import { database } from '@/db/client';
 import { renameAccount } from '@/db/queries/accounts';
 import { endSessionOf, endSessionsOf } from '@/db/queries/sessions';
@@ -44,5 +47,19 @@ export const endOtherSessionsAction = defineAction({
   input: z.object({}),
   async run({ user, session }) {
     return ok({ ended: await endSessionsOf(database(), { userId: user.id, keepId: session.id }) });
+  },
+});
+
+const YEAR_SECONDS = 31_536_000;
+
+/** Of this browser, not of the account: a bright office and a dark train want different themes. */
+export const chooseThemeAction = defineAction({
+  name: 'account.chooseTheme',
+  access: 'signed in',
+  input: z.object({ theme: z.enum(themes) }),
+  async run({ input }) {
+    const attributes = { path: '/', sameSite: 'lax', httpOnly: true, secure: secureCookies() } as const;
+    (await cookies()).set(THEME_COOKIE, input.theme, { ...attributes, maxAge: YEAR_SECONDS });
+    return ok(null);
   },
 });

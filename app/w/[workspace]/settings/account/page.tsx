@@ -1,8 +1,10 @@
 import type { Metadata } from 'next';
+import { cookies } from 'next/headers';
 import Link from 'next/link';
 import { requireMember } from '@/app/_server/access';
 import { currentSession } from '@/app/_server/session';
 import { SignOutButton } from '@/app/(auth)/sign-out-button';
+import { parseTheme, THEME_COOKIE } from '@/components/shell/theme';
 import { database } from '@/db/client';
 import { listMemberships } from '@/db/queries/members';
 import { listSessions } from '@/db/queries/sessions';
@@ -12,6 +14,7 @@ import { browserName } from './browser-name';
 import { NameForm } from './name-form';
 import { PasswordForm } from './password-form';
 import { SessionList } from './session-list';
+import { ThemeForm } from './theme-form';
 
 export const metadata: Metadata = { title: 'Account' };
 
@@ -20,12 +23,16 @@ export default async function AccountPage({ params }: { params: Promise<{ worksp
   const here = await currentSession();
   const sessions = await listSessions(database(), { userId: user.id, now: new Date() });
   const memberships = await listMemberships(database(), { userId: user.id });
+  const theme = parseTheme((await cookies()).get(THEME_COOKIE)?.value);
   return (
     <>
       <SettingsBar workspaceSlug={workspace.slug} title="Account" actions={<SignOutButton />} />
       <div className="px-4">
         <Section title="You" text={`Signed in as ${user.email}.`}>
           <NameForm name={user.name} />
+        </Section>
+        <Section title="Look" text="For this browser.">
+          <ThemeForm theme={theme} />
         </Section>
         <Section title="Password" text="We send you a letter when it was changed.">
           <PasswordForm email={user.email} />
