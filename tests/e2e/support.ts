@@ -172,3 +172,33 @@ export async function dragBy(page: Page, from: Locator, rightPx: number, downPx:
   await page.mouse.move(start.x + rightPx, start.y + downPx, { steps: 8 });
   await page.mouse.up();
 }
+
+export interface FreshWorkspace {
+  slug: string;
+  email: string;
+}
+
+/** Makes an account with a workspace of its own, letter and all, and leaves the page signed in there. */
+export async function freshWorkspace(page: Page, name: string): Promise<FreshWorkspace> {
+  const email = `${name.toLowerCase().replaceAll(' ', '-')}-${Date.now()}@tarnbrook.example`;
+  await page.goto('/sign-up');
+  await page.getByLabel('E-mail address').fill(email);
+  await page.getByRole('button', { name: 'Send the link' }).click();
+  await expect(page.getByText(`We have sent a letter to ${email}`)).toBeVisible();
+  const link = page.getByRole('listitem').filter({ hasText: email }).getByRole('link');
+  // The letter travels through a mail server and takes a moment.
+  await expect(async () => {
+    await page.goto('/mail');
+    await expect(link.first()).toBeVisible({ timeout: 1000 });
+  }).toPass({ timeout: 20_000 });
+  const address = await link.first().getAttribute('href');
+  await page.goto(new URL(address ?? '/').pathname);
+  await page.getByLabel('Your name').fill(name);
+  await page.getByLabel('Name of the workspace').fill(name);
+  await page.getByLabel('Password', { exact: true }).fill(DEMO_PASSWORD.split(' ').reverse().join(' '));
+  await page.getByRole('button', { name: 'Make the account' }).click();
+  await page.waitForURL(/\/w\/[^/]+/);
+  const slug = new URL(page.url()).pathname.split('/')[2];
+  if (!slug) throw new Error(`No workspace in ${page.url()}`);
+  return { slug, email };
+}
