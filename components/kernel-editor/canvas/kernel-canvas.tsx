@@ -24,6 +24,8 @@ import { useCanvasConnections } from './use-canvas-connections';
 
 const nodeTypes = { op: OpNode };
 const edgeTypes = { thread: ThreadEdge };
+/** Wide kernels open large enough to read; Show all takes in the whole. */
+const FIRST_VIEW = { minZoom: 0.5, maxZoom: 1, padding: 0.08 };
 const SNAP: [number, number] = [GRID_PX, GRID_PX];
 const PAN_BUTTONS = [1, 2];
 const ADD_KEYS = ['Shift', 'Control', 'Meta'];
@@ -114,8 +116,7 @@ export function KernelCanvas() {
       minZoom={0.15}
       maxZoom={2.5}
       fitView
-      fitViewOptions={{ maxZoom: 1, padding: 0.1 }}
-      proOptions={{ hideAttribution: true }}
+      fitViewOptions={FIRST_VIEW}
     >
       <Background variant={BackgroundVariant.Dots} gap={24} size={1.25} color="var(--rule)" />
     </ReactFlow>

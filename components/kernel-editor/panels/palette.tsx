@@ -135,7 +135,7 @@ function PaletteEntry(props: { id: string; kind: OpKind; active: boolean; onAdd:
         active ? 'bg-indigo-wash outline-1 outline-indigo' : ''
       }`}
     >
-      <span className="w-9 flex-none text-center font-mono text-quiet" aria-hidden="true">
+      <span className="w-11 flex-none text-center font-mono text-sm text-quiet" aria-hidden="true">
         {spec.symbol}
       </span>
       <span className="min-w-0 truncate">{spec.label}</span>

@@ -18,6 +18,8 @@ import { tileMarks } from './tile-marks';
 
 export const PICTURE_CAUTION = 'Estimates; sign-off figures come from the implementation flow.';
 const SANS = 'Source Sans 3, sans-serif';
+/** The half-bold face has a family of its own in the shipped files. */
+const BOLD = 'Source Sans 3 SemiBold, Source Sans 3, sans-serif';
 const MONO = 'JetBrains Mono, monospace';
 const HEAD_PX = 74;
 const FOOT_PX = 66;
@@ -68,7 +70,7 @@ function head(mapping: MappingDocument, width: number): string {
     textElement(mapping.name, {
       x: SIDE_PX,
       y: 34,
-      'font-family': SANS,
+      'font-family': BOLD,
       'font-size': 21,
       'font-weight': 600,
       fill: palette.ink,
@@ -101,7 +103,7 @@ function foot(metrics: MappingMetrics, height: number, width: number): string {
     textElement(figures, {
       x: SIDE_PX,
       y: height - 36,
-      'font-family': SANS,
+      'font-family': BOLD,
       'font-size': 14,
       'font-weight': 600,
       fill: palette.ink,
@@ -237,7 +239,7 @@ function plates(
           x: x + TILE_PX / 2,
           y: y + (lines.length > 1 ? 27 : 33) + i * 13,
           'text-anchor': 'middle',
-          'font-family': SANS,
+          'font-family': BOLD,
           'font-size': 12.5,
           'font-weight': 600,
           fill: palette.ink,

@@ -15,6 +15,7 @@ import type { Objective } from '../../mapping/mapping';
 import { type LinkLoads, linkLoads } from './link-loads';
 import type { NetTask } from './net-tasks';
 import { netTree, objectiveHops } from './net-tree';
+import { polish } from './polish';
 
 const GRAIN = 4096;
 /** Of equal trees the one on freer links: far too small to make up for one hop in a tree of under 1000 links. */
@@ -25,7 +26,6 @@ const MOST_PRESSURE = 64;
 const HISTORY_STEP = 0.5;
 /** Rounds without fewer excess nets after which negotiation gives up. */
 const STALE_ROUNDS = 8;
-const POLISH_PASSES = 3;
 
 export interface NetTrees {
   /** Link indices of each task's tree. */
@@ -72,7 +72,7 @@ export function negotiate(
     });
     for (const tree of state.trees) state.loads.add(tree);
   }
-  polish(graph, tasks, options, state);
+  polish(graph, tasks, options.objective, options.order, state);
   return state;
 }
 
@@ -176,38 +176,5 @@ function reroute(
     // Detours are what negotiation is about, so even `path` routes by cost here; polishing shortens again.
     trees[i] = netTree(graph, task, cost, 'wire', false)?.links ?? tree;
     loads.add(trees[i] ?? []);
-  }
-}
-
-/** Nets with more hops than alone try again on the links that have room, without pushing others. */
-function polish(
-  graph: FabricGraph,
-  tasks: readonly NetTask[],
-  options: NegotiateOptions,
-  state: NetTrees,
-): void {
-  const { loads, trees, aloneHops } = state;
-  const cost = new Float64Array(graph.links.length);
-  for (let pass = 0; pass < POLISH_PASSES; pass++) {
-    let improved = false;
-    for (const i of options.order) {
-      const task = tasks[i];
-      const tree = trees[i] ?? [];
-      if (!task) continue;
-      const hops = objectiveHops(graph, task, tree, options.objective);
-      if (hops <= (aloneHops[i] ?? 0)) continue;
-      loads.remove(tree);
-      for (let link = 0; link < cost.length; link++) {
-        const free = (loads.nets[link] ?? 0) < (graph.links[link]?.channels ?? 1);
-        cost[link] = free ? 1 : Number.POSITIVE_INFINITY;
-      }
-      const found = netTree(graph, task, cost, options.objective)?.links;
-      if (found && objectiveHops(graph, task, found, options.objective) < hops) {
-        trees[i] = found;
-        improved = true;
-      }
-      loads.add(trees[i] ?? []);
-    }
-    if (!improved) return;
   }
 }

@@ -52,13 +52,15 @@ export function routePlacement(
 ): RoutingResult {
   const tasks = netTasks(kernel, graph, placement);
   const objective = options.objective ?? 'wire';
+  const start = tasks.map((task) => previousTree(graph, task, options.previous));
   const state = negotiate(graph, tasks, {
     objective,
     maxRounds: options.maxRounds ?? 40,
     order: orderOf(tasks.length, options.seed ?? 0),
-    start: tasks.map((task) => previousTree(graph, task, options.previous)),
+    start,
   });
-  straighten(graph, tasks, state);
+  // Threads that are kept are not touched, not even to make them straighter.
+  straighten(graph, tasks, state, (i) => sameLinks(state.trees[i], start[i]));
   const routes: Routes = {};
   const tooLongEdges: EdgeId[] = [];
   tasks.forEach((task, i) => {
@@ -110,6 +112,10 @@ function previousTree(graph: FabricGraph, task: NetTask, previous: Routes | unde
   const depth = treeDepth(graph, task.sourceTile, task.targets, pruned);
   return depth <= (graph.maxHops ?? Number.MAX_SAFE_INTEGER) ? pruned : undefined;
 }
+
+/** Both lists are ascending. */
+const sameLinks = (one: readonly number[] = [], other: readonly number[] = []): boolean =>
+  one.length === other.length && one.every((link, i) => link === other[i]);
 
 /** The links of a tree from the source outwards: the order in which a thread is drawn. */
 function inWalkingOrder(graph: FabricGraph, task: NetTask, tree: readonly number[]): LinkId[] {

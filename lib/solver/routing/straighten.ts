@@ -23,15 +23,16 @@ interface Stretch {
   after: number[];
 }
 
-/** Straightens the trees in place and keeps the loads right. */
+/** Straightens the trees in place, but those that `isKept`, and keeps the loads right. */
 export function straighten(
   graph: FabricGraph,
   tasks: readonly NetTask[],
   state: { trees: number[][]; loads: LinkLoads },
+  isKept: (task: number) => boolean = () => false,
 ): void {
   tasks.forEach((task, i) => {
     let tree = state.trees[i] ?? [];
-    if (tree.length < 2) return;
+    if (tree.length < 2 || isKept(i)) return;
     state.loads.remove(tree);
     for (const end of [...stretchEnds(graph, task, tree)]) {
       const stretch = stretchTo(graph, task, tree, end);
