@@ -10,7 +10,8 @@ import { KernelGraph } from './panes/kernel-graph';
 import { OpList } from './panes/op-list';
 import { StatusLine } from './panes/status-line';
 import { useOpDrag } from './panes/use-op-drag';
-import { SolvePanel, type SolvePanelProps } from './solve/solve-panel';
+import { SolvePanel } from './solve/solve-panel';
+import type { SolvePanelProps } from './solve/solve-panel-props';
 import { useBenchStore } from './store/bench-context';
 
 interface BenchPanesProps {

@@ -7,26 +7,10 @@
  */
 import type { Fabric, LinkId, TileId, UnitId } from './fabric';
 import { hopDistances } from './hop-distances';
+import type { FabricLink, LinkGraph } from './link-graph';
 import { maxHops } from './max-hops';
 import { linkId, parseLink, parseTile, tileId } from './tiles';
 import { presetNeighbours } from './topology';
-
-export interface FabricLink {
-  id: LinkId;
-  /** Tile indices. */
-  from: number;
-  to: number;
-  channels: number;
-}
-
-/** What a search over routers needs of a fabric. */
-export interface LinkGraph {
-  tileCount: number;
-  links: readonly FabricLink[];
-  /** Link indices by the tile they leave or enter. */
-  outLinks: readonly (readonly number[])[];
-  inLinks: readonly (readonly number[])[];
-}
 
 export interface FabricGraph extends LinkGraph {
   rows: number;

@@ -1,5 +1,5 @@
 /** All-pairs distances between routers in hops. */
-import type { LinkGraph } from './compile';
+import type { LinkGraph } from './link-graph';
 
 /** Stands where no path leads from one router to the other. */
 export const UNREACHABLE = 0xffff;

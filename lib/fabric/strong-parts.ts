@@ -1,5 +1,5 @@
 /** Which tiles of a fabric can reach each other. */
-import type { LinkGraph } from './compile';
+import type { LinkGraph } from './link-graph';
 
 /**
  * The parts of a fabric: in each, every router reaches every other and is reached by it. Parts in the order of

@@ -6,7 +6,7 @@ import type { TileId } from '@/lib/fabric/fabric';
 import type { OpId } from '@/lib/graph/kernel';
 import { useBenchStore } from '../store/bench-context';
 import { BestChart } from './best-chart';
-import type { SolvePanelProps } from './solve-panel';
+import type { SolvePanelProps } from './solve-panel-props';
 import { durationText, gapText, objectiveNames, type Solve, solveResult, stopText } from './solve-state';
 
 /** How the last solve of this bench ended, and its result if the bench does not hold it already. */

@@ -7,21 +7,8 @@ import { PanelTitle } from '../panes/figures';
 import { BestChart } from './best-chart';
 import { MakingStatus } from './making-status';
 import { SolveEnd } from './solve-end';
+import type { SolvePanelProps } from './solve-panel-props';
 import { durationText, isLive, phaseText, type Solve, type SolveSettings } from './solve-state';
-
-export interface SolvePanelProps {
-  solve: Solve | null;
-  /** Asked for, without an answer yet. */
-  starting: boolean;
-  previewing: boolean;
-  readOnly: boolean;
-  onStart: (settings: SolveSettings, fromHere: boolean) => void;
-  onStop: () => void;
-  onPreview: (on: boolean) => void;
-  onTake: () => void;
-  /** The solve's result is what the bench holds. */
-  taken: boolean;
-}
 
 /** Auto-place: settings, progress, and the end. */
 export function SolvePanel(props: SolvePanelProps) {
@@ -40,7 +27,7 @@ export function SolvePanel(props: SolvePanelProps) {
 
 const engines = [
   { value: 'auto', label: 'Automatic' },
-  { value: 'search', label: 'Branch and bound' },
+  { value: 'search', label: 'Local search only' },
   { value: 'highs', label: 'Integer program (HiGHS)' },
   { value: 'simplex', label: 'Integer program (JavaScript)' },
 ];

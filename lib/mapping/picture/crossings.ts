@@ -5,7 +5,9 @@
  * which they lie along the threads, and each goes against what its two threads did last. Cost: every pair of lines.
  */
 import type { Point } from './fabric-geometry';
-import type { Chain } from './threads';
+
+/** A line that is drawn in one go. */
+export type Chain = readonly Point[];
 
 const GAP_PX = 4;
 const SAME_PX = 1e-6;

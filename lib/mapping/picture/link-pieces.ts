@@ -4,8 +4,9 @@
  * Neighbours have one piece. A diagonal or knight-like link has two, along its start's row and then its end's column,
  * without a knot in between. A wrap link of a torus runs out at one side of the grid and in at the other.
  */
-import type { FabricLink } from '../../fabric/compile';
+
 import type { Fabric } from '../../fabric/fabric';
+import type { FabricLink } from '../../fabric/link-graph';
 import { columnChannelX, MARGIN_PX, PITCH_PX, positionOf, rowChannelY } from './fabric-geometry';
 
 export type ChannelAxis = 'row' | 'column';

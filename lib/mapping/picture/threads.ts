@@ -9,13 +9,10 @@ import type { Fabric, LinkId } from '../../fabric/fabric';
 import type { Kernel, OpId } from '../../graph/kernel';
 import { netsOf } from '../../graph/nets';
 import type { Placement, Routes } from '../mapping';
-import { weaveChains } from './crossings';
+import { type Chain, weaveChains } from './crossings';
 import { type Point, positionOf, routerPoint, tileBox } from './fabric-geometry';
 import { laneOffsets, type NetPiece } from './lanes';
 import { type LinkWay, linkWay } from './link-pieces';
-
-/** A line that is drawn in one go. */
-export type Chain = readonly Point[];
 
 export interface Thread {
   source: OpId;

@@ -6,7 +6,7 @@
  * Σ flow ≤ maxHops says that such a way of at most maxHops links exists, and the tree of shortest ways from the
  * source is a legal route (multi-commodity fixed-charge network design: Magnanti and Wong 1984).
  */
-import type { LinkGraph } from '../../fabric/compile';
+import type { LinkGraph } from '../../fabric/link-graph';
 import type { PlacementInstance } from '../instance';
 import { type AssignmentColumns, addAssignment } from './assignment-columns';
 import { type IntegerProgram, type ProgramBuilder, programBuilder } from './integer-program';

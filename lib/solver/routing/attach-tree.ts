@@ -8,7 +8,7 @@
  * Preconditions as in `subset-tree.ts`. Postcondition: a tree, not always a cheapest one; null where a target
  * cannot be reached. Cost: t searches for the start and t for each pass, at most PASSES of them.
  */
-import type { LinkGraph } from '../../fabric/compile';
+import type { LinkGraph } from '../../fabric/link-graph';
 import { linkArrays } from './link-arrays';
 import { pruneToTree } from './link-tree';
 import { type TileHeap, tileHeap } from './tile-heap';

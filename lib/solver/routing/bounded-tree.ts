@@ -9,7 +9,7 @@
  * Precondition, postcondition as there; null where a target lies beyond the limit.
  * Cost: at most d · (3^t · tiles / 2 + 2^t · links); 12 · d · 2^t · tiles bytes.
  */
-import type { LinkGraph } from '../../fabric/compile';
+import type { LinkGraph } from '../../fabric/link-graph';
 import { type LinkArrays, linkArrays } from './link-arrays';
 import { hopsFromTile, pruneToTree } from './link-tree';
 

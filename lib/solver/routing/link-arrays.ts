@@ -1,5 +1,5 @@
 /** A fabric's links as plain integer arrays: what the inner loops of the searches read. */
-import type { LinkGraph } from '../../fabric/compile';
+import type { LinkGraph } from '../../fabric/link-graph';
 
 export interface LinkArrays {
   /** Tile that each link leaves and enters. */

@@ -1,5 +1,5 @@
 /** A net's tree as link indices, and what can be read off it. */
-import type { LinkGraph } from '../../fabric/compile';
+import type { LinkGraph } from '../../fabric/link-graph';
 
 /** Hops from `start` to every tile over the given links only; the link each tile is first entered by. */
 export function walkLinks(

@@ -2,7 +2,7 @@
  * The cheapest tree of links from one router to several: exact where the work allows it, else a good one that
  * says that it may not be the cheapest.
  */
-import type { LinkGraph } from '../../fabric/compile';
+import type { LinkGraph } from '../../fabric/link-graph';
 import { attachTree, costOf } from './attach-tree';
 import { boundedTree } from './bounded-tree';
 import { hopsFromTile, treeDepth } from './link-tree';

@@ -13,7 +13,7 @@
  * Postcondition: the links of a cheapest tree from the source to all targets, or null where none exists.
  * Cost: at most 3^t · tiles / 2 for merging and 2^t searches, t the number of targets; 12 · 2^t · tiles bytes.
  */
-import type { LinkGraph } from '../../fabric/compile';
+import type { LinkGraph } from '../../fabric/link-graph';
 import { costOf, costsFrom, growTree } from './attach-tree';
 import { type LinkArrays, linkArrays } from './link-arrays';
 import { pruneToTree } from './link-tree';

@@ -2,7 +2,7 @@
 import { readdirSync, readFileSync } from 'node:fs';
 import { join } from 'node:path';
 import { z } from 'zod';
-import type { LinkGraph } from '@/lib/fabric/compile';
+import type { LinkGraph } from '@/lib/fabric/link-graph';
 import { linkId, tileId } from '@/lib/fabric/tiles';
 
 const ROOT = join(import.meta.dirname, '../../reference/steiner');
