@@ -24,8 +24,8 @@ import { useCanvasConnections } from './use-canvas-connections';
 
 const nodeTypes = { op: OpNode };
 const edgeTypes = { thread: ThreadEdge };
-/** Wide kernels open large enough to read; Show all takes in the whole. */
-const FIRST_VIEW = { minZoom: 0.5, maxZoom: 1, padding: 0.08 };
+/** The whole kernel, never larger than its own size. */
+const FIRST_VIEW = { maxZoom: 1, padding: 0.06 };
 const SNAP: [number, number] = [GRID_PX, GRID_PX];
 const PAN_BUTTONS = [1, 2];
 const ADD_KEYS = ['Shift', 'Control', 'Meta'];
