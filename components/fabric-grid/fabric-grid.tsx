@@ -106,14 +106,7 @@ function lookOf(unit: FabricGraph['units'][number], library: UnitLibrary) {
 }
 
 function TilePlace({ row, col, unit, library, look }: TilePlaceProps) {
-  return (
-    <TileShape
-      box={boxAt(row, col)}
-      unit={lookOf(unit, library)}
-      look={look}
-      place={`${row + 1},${col + 1}`}
-    />
-  );
+  return <TileShape box={boxAt(row, col)} unit={lookOf(unit, library)} look={look} place={`${row},${col}`} />;
 }
 
 /** "Row 3, column 4, Memory" for a fabric without a mapping. */

@@ -46,8 +46,8 @@ export function linkEnds(link: LinkId): { from: TileId; to: TileId } {
   return ends;
 }
 
-/** How a tile is called in texts for people, who count from 1: "row 3, column 4". */
+/** How a tile is called in texts for people, counted from 0 as in its name: `r2c3` is "row 2, column 3". */
 export function tileLabel(tile: string): string {
   const position = parseTile(tile);
-  return position ? `row ${position.row + 1}, column ${position.col + 1}` : `"${tile}"`;
+  return position ? `row ${position.row}, column ${position.col}` : `"${tile}"`;
 }

@@ -115,12 +115,12 @@ test('a viewer looks at tiles by keyboard and is offered nothing that changes', 
   await expect(page.getByRole('link', { name: 'Export JSON' })).toBeVisible();
   await expect(page.getByRole('link', { name: 'Place a kernel here' })).toHaveCount(0);
   await expect(page.getByRole('button', { name: 'Keep version' })).toHaveCount(0);
-  await page.getByRole('gridcell', { name: /^Row 1, column 1,/ }).focus();
+  await page.getByRole('gridcell', { name: /^Row 0, column 0,/ }).focus();
   await page.keyboard.press('ArrowDown');
   await page.keyboard.press('ArrowRight');
-  await expect(page.getByRole('gridcell', { name: /^Row 2, column 2,/ })).toBeFocused();
+  await expect(page.getByRole('gridcell', { name: /^Row 1, column 1,/ })).toBeFocused();
   const tile = page.getByRole('region', { name: 'Tile' });
-  await expect(tile).toContainText('Row 2, column 2');
+  await expect(tile).toContainText('Row 1, column 1');
   // An inner tile of a mesh has four neighbours.
   await expect(tile.getByText('both ways, 1 channel')).toHaveCount(4);
   await page.keyboard.press('+');
@@ -135,9 +135,9 @@ test('the largest grid, 64 × 64, is drawn, moved through and measured on demand
   await page.getByLabel('Columns').fill('64');
   await page.getByRole('button', { name: 'Create fabric' }).click();
   await page.waitForURL(/fabrics\/fabric_/);
-  await page.getByRole('gridcell', { name: /^Row 1, column 1,/ }).focus();
+  await page.getByRole('gridcell', { name: /^Row 0, column 0,/ }).focus();
   await page.keyboard.press('Control+End');
-  await expect(page.getByRole('region', { name: 'Tile' })).toContainText('Row 64, column 64');
+  await expect(page.getByRole('region', { name: 'Tile' })).toContainText('Row 63, column 63');
   await page.getByRole('button', { name: 'Work out the distances' }).click();
   // From corner to corner: 63 + 63 hops.
   await expect(page.getByRole('region', { name: 'Distances' })).toContainText('126 hops', {

@@ -165,7 +165,7 @@ function tiles(kernel: Kernel, graph: FabricGraph, mapping: MappingDocument, lib
               'stroke-width': 0.9,
               'stroke-dasharray': marks.stitched ? '3 2.5' : undefined,
             }),
-        textElement(`${row + 1},${col + 1}`, {
+        textElement(`${row},${col}`, {
           x: box.x + 5,
           y: box.y + 12,
           'font-family': MONO,

@@ -27,8 +27,8 @@ describe('what is told about a tile', () => {
   it('lists a corner’s two neighbours, and a missing way back as one way', () => {
     const broken = { ...mesh, removedLinks: [linkId(tileId(0, 1), tileId(0, 0))] };
     expect(tileFacts(compileFabric(broken), builtInLibrary, 0).neighbours).toEqual([
-      { tile: 1, place: 'row 1, column 2', channelsTo: 1, channelsFrom: null },
-      { tile: 3, place: 'row 2, column 1', channelsTo: 1, channelsFrom: 1 },
+      { tile: 1, place: 'row 0, column 1', channelsTo: 1, channelsFrom: null },
+      { tile: 3, place: 'row 1, column 0', channelsTo: 1, channelsFrom: 1 },
     ]);
   });
 
@@ -47,13 +47,13 @@ describe('the fabric’s page', () => {
   it('follows the arrow keys through the grid', async () => {
     const user = userEvent.setup();
     show(mesh);
+    expect(within(tile()).getByText('Row 0, column 0')).toBeInTheDocument();
+    await user.click(screen.getByRole('gridcell', { name: /^Row 1, column 1/ }));
     expect(within(tile()).getByText('Row 1, column 1')).toBeInTheDocument();
-    await user.click(screen.getByRole('gridcell', { name: /^Row 2, column 2/ }));
-    expect(within(tile()).getByText('Row 2, column 2')).toBeInTheDocument();
     expect(within(tile()).getAllByText('both ways, 1 channel')).toHaveLength(4);
-    screen.getByRole('gridcell', { name: /^Row 2, column 2/ }).focus();
+    screen.getByRole('gridcell', { name: /^Row 1, column 1/ }).focus();
     await user.keyboard('{ArrowDown}{ArrowRight}');
-    expect(within(tile()).getByText('Row 3, column 3')).toBeInTheDocument();
+    expect(within(tile()).getByText('Row 2, column 2')).toBeInTheDocument();
   });
 
   it('shows the clock’s formula: floor((1,000 − 100) / 200) = 4', () => {
@@ -79,7 +79,7 @@ describe('the fabric’s page', () => {
     expect(level()).toBe('fitted');
     await user.click(screen.getByRole('button', { name: 'Zoom in' }));
     expect(level()).toBe('125 %');
-    screen.getByRole('gridcell', { name: /^Row 1, column 1/ }).focus();
+    screen.getByRole('gridcell', { name: /^Row 0, column 0/ }).focus();
     await user.keyboard('-');
     expect(level()).toBe('100 %');
     await user.keyboard('0');

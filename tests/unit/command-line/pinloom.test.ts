@@ -153,7 +153,7 @@ describe('pinloom verify', { timeout: 60_000 }, () => {
 
   it('exits 3 and names R5 for a route that is gone, R4 for a pin that is not kept', () => {
     const path = mapping((document) => {
-      delete document.routes?.op_raw;
+      delete document.routes.op_raw;
       document.pins = { op_gain: 'r0c0' };
     });
     const { code, stdout } = run('verify', ...chain, '--mapping', path);

@@ -77,7 +77,7 @@ describe('names of tiles and links', () => {
     expect(parseLink(text)).toBeNull();
   });
   it('people count from 1', () => {
-    expect(tileLabel('r2c3')).toBe('row 3, column 4');
+    expect(tileLabel('r2c3')).toBe('row 2, column 3');
   });
   it('refuses a negative row', () => {
     expect(() => tileId(-1, 0)).toThrow(RangeError);

@@ -18,14 +18,14 @@ describe('placing by hand', () => {
     const store = newStore();
     expect(hold(store, ids.product, 0)).toBe(false);
     expect(store.getState().said).toEqual({
-      text: 'R3: the Memory unit at row 1, column 1 cannot do Multiply. It needs Multiplier.',
+      text: 'R3: the Memory unit at row 0, column 0 cannot do Multiply. It needs Multiplier.',
       refused: true,
     });
     expect(store.getState().held).toBe(ids.product);
   });
 
   test('a tile without a PE refuses every op by R1', () => {
-    expect(newStore().getState().refusal(ids.sum, 8)).toBe('R1: row 3, column 3 has a router but no PE.');
+    expect(newStore().getState().refusal(ids.sum, 8)).toBe('R1: row 2, column 2 has a router but no PE.');
   });
 
   test('two placed ops that fit swap', () => {
@@ -47,7 +47,7 @@ describe('placing by hand', () => {
     const store = newStore();
     hold(store, ids.left, 0);
     store.getState().togglePin(ids.left);
-    expect(store.getState().refusal(ids.left, 2)).toMatch(/^R4: left is pinned to row 1, column 1/);
+    expect(store.getState().refusal(ids.left, 2)).toMatch(/^R4: left is pinned to row 0, column 0/);
     expect(store.getState().refusal(ids.right, 0)).toMatch(/^R4: left is pinned/);
     store.getState().unplace(ids.left);
     expect(store.getState().content.placement[ids.left]).toBe(tile(0));

@@ -63,11 +63,11 @@ const broken: [title: string, change: (mapping: Case) => void, expected: [rule: 
       m.placement[opAt(2)] = tileId(3, 1);
     },
     [
-      ['R1', 'sum 2 is placed at row 4, column 2, but the fabric has 3 rows and 3 columns'],
-      ['R5', 'The route of sum 0 has a loose end at row 3, column 2, where no consumer is'],
-      ['R5', 'The route of sum 0 does not reach sum 2 at row 4, column 2'],
-      ['R5', 'The route of sum 1 has a loose end at row 3, column 2, where no consumer is'],
-      ['R5', 'The route of sum 1 does not reach sum 2 at row 4, column 2'],
+      ['R1', 'sum 2 is placed at row 3, column 1, but the fabric has 3 rows and 3 columns'],
+      ['R5', 'The route of sum 0 has a loose end at row 2, column 1, where no consumer is'],
+      ['R5', 'The route of sum 0 does not reach sum 2 at row 3, column 1'],
+      ['R5', 'The route of sum 1 has a loose end at row 2, column 1, where no consumer is'],
+      ['R5', 'The route of sum 1 does not reach sum 2 at row 3, column 1'],
     ],
   ],
   [
@@ -84,14 +84,14 @@ const broken: [title: string, change: (mapping: Case) => void, expected: [rule: 
       m.pins = {};
       m.routes = { [opAt(0)]: way([0, 0], [0, 1], [1, 1], [2, 1]) };
     },
-    [['R2', 'sum 1, sum 2 share the PE at row 3, column 2']],
+    [['R2', 'sum 1, sum 2 share the PE at row 2, column 1']],
   ],
   [
     'an op beside its pin',
     (m) => {
       m.pins = { [opAt(1)]: tileId(1, 2) };
     },
-    [['R4', 'sum 1 is pinned to row 2, column 3 but is at row 1, column 3']],
+    [['R4', 'sum 1 is pinned to row 1, column 2 but is at row 0, column 2']],
   ],
   [
     'a pin of an op that does not exist',
@@ -105,7 +105,7 @@ const broken: [title: string, change: (mapping: Case) => void, expected: [rule: 
     (m) => {
       delete m.routes[opAt(1)];
     },
-    [['R5', 'The route of sum 1 does not reach sum 2 at row 3, column 2']],
+    [['R5', 'The route of sum 1 does not reach sum 2 at row 2, column 1']],
   ],
   [
     'a link that the fabric does not have',
@@ -115,14 +115,14 @@ const broken: [title: string, change: (mapping: Case) => void, expected: [rule: 
     [
       [
         'R5',
-        'The route of sum 1 takes the link row 1, column 3 to row 2, column 2, which the fabric does not have',
+        'The route of sum 1 takes the link row 0, column 2 to row 1, column 1, which the fabric does not have',
       ],
       [
         'R5',
-        'The route of sum 1 has links that its source does not lead to: row 2, column 2 to row 3, column 2',
+        'The route of sum 1 has links that its source does not lead to: row 1, column 1 to row 2, column 1',
       ],
-      ['R5', 'The route of sum 1 does not reach sum 2 at row 3, column 2'],
-      ['R6', 'The link row 2, column 2 to row 3, column 2 has 1 channel but carries 2 nets: sum 0, sum 1'],
+      ['R5', 'The route of sum 1 does not reach sum 2 at row 2, column 1'],
+      ['R6', 'The link row 1, column 1 to row 2, column 1 has 1 channel but carries 2 nets: sum 0, sum 1'],
     ],
   ],
   [
@@ -130,21 +130,21 @@ const broken: [title: string, change: (mapping: Case) => void, expected: [rule: 
     (m) => {
       m.routes[opAt(1)]?.push(...way([1, 2], [1, 1]));
     },
-    [['R5', 'The route of sum 1 has a loose end at row 2, column 2, where no consumer is']],
+    [['R5', 'The route of sum 1 has a loose end at row 1, column 1, where no consumer is']],
   ],
   [
     'a router entered twice',
     (m) => {
       m.routes[opAt(1)]?.push(...way([1, 2], [1, 1], [1, 0], [2, 0], [2, 1]));
     },
-    [['R5', 'The route of sum 1 enters the router at row 3, column 2 2 times']],
+    [['R5', 'The route of sum 1 enters the router at row 2, column 1 2 times']],
   ],
   [
     'a loop back to the source',
     (m) => {
       m.routes[opAt(1)]?.push(...way([1, 2], [0, 2]));
     },
-    [['R5', 'The route of sum 1 comes back to its source at row 1, column 3']],
+    [['R5', 'The route of sum 1 comes back to its source at row 0, column 2']],
   ],
   [
     'a circle apart from the source',
@@ -154,7 +154,7 @@ const broken: [title: string, change: (mapping: Case) => void, expected: [rule: 
     [
       [
         'R5',
-        'The route of sum 1 has links that its source does not lead to: row 2, column 1 to row 3, column 1; row 3, column 1 to row 2, column 1',
+        'The route of sum 1 has links that its source does not lead to: row 1, column 0 to row 2, column 0; row 2, column 0 to row 1, column 0',
       ],
     ],
   ],
@@ -163,7 +163,7 @@ const broken: [title: string, change: (mapping: Case) => void, expected: [rule: 
     (m) => {
       m.routes[opAt(1)]?.push(...way([0, 2], [1, 2]));
     },
-    [['R5', 'The route of sum 1 names the link row 1, column 3 to row 2, column 3 twice']],
+    [['R5', 'The route of sum 1 names the link row 0, column 2 to row 1, column 2 twice']],
   ],
   [
     'a route of an op without consumers',
@@ -198,7 +198,7 @@ describe('the verifier', () => {
     const found = verifyPlacement(good().kernel, cloth, good());
     expect(found.map(({ rule }) => rule)).toEqual(['R3', 'R3']);
     expect(found[0]?.message).toBe(
-      'The PE at row 1, column 1 is a unit Memory: it cannot do sum 0 (Add); Arithmetic can',
+      'The PE at row 0, column 0 is a unit Memory: it cannot do sum 0 (Add); Arithmetic can',
     );
   });
 
@@ -206,7 +206,7 @@ describe('the verifier', () => {
     const cloth = fabric();
     cloth.units[0] = null;
     expect(verifyPlacement(good().kernel, cloth, good()).map(({ message }) => message)).toEqual([
-      'sum 0 is placed at row 1, column 1, which has a router but no PE',
+      'sum 0 is placed at row 0, column 0, which has a router but no PE',
     ]);
   });
 
