@@ -33,8 +33,8 @@ export function BenchPanes({ shown, kernelTitle, fabricTitle, solvePanel, more }
   const { setting } = useBenchStore();
   const draggedOp = dragging ? setting.ops.get(dragging.op) : undefined;
   return (
-    <div className="flex min-h-0 flex-1 flex-col md:grid md:grid-cols-[minmax(15rem,19rem)_minmax(0,1fr)_17rem]">
-      <div className="flex h-[112vw] max-h-[70dvh] min-h-0 flex-col bg-surface md:order-2 md:h-auto md:max-h-none">
+    <div className="flex min-h-0 flex-1 flex-col lg:grid lg:grid-cols-[minmax(15rem,19rem)_minmax(0,1fr)_17rem]">
+      <div className="flex min-h-0 flex-col bg-surface lg:order-2">
         <div className="px-4 pt-3">
           <PanelTitle aside={fabricTitle}>{shown.preview ? 'Fabric, best so far' : 'Fabric'}</PanelTitle>
         </div>
@@ -43,12 +43,12 @@ export function BenchPanes({ shown, kernelTitle, fabricTitle, solvePanel, more }
       </div>
       <SideTabs side={side} onSide={setSide} />
       <div
-        className={`min-h-0 flex-col border-rule bg-paper md:order-1 md:flex md:border-r ${side === 'kernel' ? 'flex h-[70dvh] md:h-auto' : 'hidden'}`}
+        className={`min-h-0 flex-col border-rule bg-paper lg:order-1 lg:flex lg:border-r ${side === 'kernel' ? 'flex h-[70dvh] lg:h-auto' : 'hidden'}`}
       >
         <KernelPane title={kernelTitle} onOpDown={begin} wasDragged={wasDragged} />
       </div>
       <div
-        className={`min-h-0 space-y-5 overflow-y-auto border-rule bg-paper px-4 py-3 md:order-3 md:block md:border-l ${side === 'figures' ? 'block' : 'hidden'}`}
+        className={`min-h-0 space-y-5 overflow-y-auto border-rule bg-paper px-4 py-3 lg:order-3 lg:block lg:border-l ${side === 'figures' ? 'block' : 'hidden'}`}
       >
         <Figures shown={shown} />
         {solvePanel ? <SolvePanel {...solvePanel} /> : null}
@@ -72,7 +72,7 @@ export function BenchPanes({ shown, kernelTitle, fabricTitle, solvePanel, more }
 
 function SideTabs({ side, onSide }: { side: Side; onSide: (side: Side) => void }) {
   return (
-    <fieldset className="flex border-y border-rule bg-surface md:hidden">
+    <fieldset className="flex border-y border-rule bg-surface lg:hidden">
       <legend className="sr-only">Beside the fabric</legend>
       {(['kernel', 'figures'] as const).map((name) => (
         <button

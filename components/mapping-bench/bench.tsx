@@ -124,7 +124,7 @@ function BenchScreen(props: BenchProps) {
     return null;
   };
   return (
-    <section aria-label="Bench" className="flex flex-col md:h-full" onKeyDown={undoKeys(store)}>
+    <section aria-label="Bench" className="flex flex-col lg:h-full" onKeyDown={undoKeys(store)}>
       <TopBar
         path={[{ label: 'Mappings', href: `/w/${workspace}/mappings` }, { label: name }]}
         status={
@@ -166,7 +166,7 @@ function BenchScreen(props: BenchProps) {
       <BenchPanes
         shown={shown}
         kernelTitle={`version ${props.kernel.version} · ${props.kernel.document.ops.length} ops · ${props.kernel.document.edges.length} connections`}
-        fabricTitle={`${props.fabric.name} version ${props.fabric.version} · ${props.fabric.document.rows}×${props.fabric.document.cols} ${props.fabric.document.topology}`}
+        fabricTitle={`${props.fabric.name} · version ${props.fabric.version} · ${props.fabric.document.topology}`}
         solvePanel={{
           solve: solving.solve,
           starting: solving.starting,

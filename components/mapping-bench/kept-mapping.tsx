@@ -87,7 +87,7 @@ function KeptScreen(props: KeptMappingProps) {
     }
   };
   return (
-    <div className="flex flex-col md:h-full">
+    <div className="flex flex-col lg:h-full">
       <TopBar
         path={[{ label: 'Mappings', href: `/w/${workspace}/mappings` }, { label: name }]}
         status={props.archived ? 'kept · archived' : 'kept, unchanging'}
@@ -117,7 +117,7 @@ function KeptScreen(props: KeptMappingProps) {
       <BenchPanes
         shown={{ facts, byTile, preview: false }}
         kernelTitle={`version ${document.kernel.version ?? '–'} · ${props.kernel.ops.length} ops · ${props.kernel.edges.length} connections`}
-        fabricTitle={`${document.fabric.name} version ${document.fabric.version ?? '–'}`}
+        fabricTitle={`${document.fabric.name} · version ${document.fabric.version ?? '–'} · ${props.fabric.topology}`}
         solvePanel={null}
         more={
           <>

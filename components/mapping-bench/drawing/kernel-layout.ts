@@ -1,20 +1,33 @@
 /** The kernel from top to bottom, for the bench's narrow pane. Carried connections are the ones turned back in a cycle. */
 import { graphlib, layout } from '@dagrejs/dagre';
-import type { EdgeId, Kernel, OpId } from '@/lib/graph/kernel';
+import type { EdgeId, Kernel, Op, OpId } from '@/lib/graph/kernel';
 import type { Point } from '@/lib/mapping/picture/fabric-geometry';
+import { labelLines, shortName } from '@/lib/mapping/picture/op-label';
 
-export const OP_WIDTH_PX = 92;
 export const OP_HEIGHT_PX = 36;
+const NARROWEST_OP_PX = 50;
+const LETTER_PX = 6.7;
+
+export interface OpBox extends Point {
+  width: number;
+}
 
 export interface KernelPicture {
   width: number;
   height: number;
-  /** Upper left corners. */
-  ops: ReadonlyMap<OpId, Point>;
+  /** Upper left corners and widths; all are OP_HEIGHT_PX high. */
+  ops: ReadonlyMap<OpId, OpBox>;
   edges: ReadonlyMap<EdgeId, readonly Point[]>;
 }
 
 const EDGE_GAP_PX = 10;
+const LINE_LETTERS = 14;
+
+/** The lines of an op's name in its box. */
+export const boxLines = (op: Pick<Op, 'label' | 'kind'>): string[] => labelLines(shortName(op), LINE_LETTERS);
+
+const boxWidth = (op: Op): number =>
+  Math.max(NARROWEST_OP_PX, ...boxLines(op).map((line) => line.length * LETTER_PX + 16));
 
 export function kernelPicture(kernel: Kernel): KernelPicture {
   const graph = new graphlib.Graph({ multigraph: true });
@@ -28,42 +41,41 @@ export function kernelPicture(kernel: Kernel): KernelPicture {
     acyclicer: 'greedy',
   });
   graph.setDefaultEdgeLabel(() => ({}));
-  for (const op of kernel.ops) graph.setNode(op.id, { width: OP_WIDTH_PX, height: OP_HEIGHT_PX });
+  for (const op of kernel.ops) graph.setNode(op.id, { width: boxWidth(op), height: OP_HEIGHT_PX });
   for (const edge of kernel.edges) {
     if (edge.from !== edge.to) {
       graph.setEdge(edge.from, edge.to, { weight: edge.distance === 0 ? 4 : 1 }, edge.id);
     }
   }
   layout(graph);
-  const ops = new Map<OpId, Point>();
+  const ops = new Map<OpId, OpBox>();
   for (const op of kernel.ops) {
     const node = graph.node(op.id);
-    ops.set(op.id, { x: node.x - OP_WIDTH_PX / 2, y: node.y - OP_HEIGHT_PX / 2 });
+    ops.set(op.id, { x: node.x - node.width / 2, y: node.y - OP_HEIGHT_PX / 2, width: node.width });
   }
   const edges = new Map<EdgeId, readonly Point[]>();
   for (const edge of kernel.edges) {
-    const drawn =
-      edge.distance === 0 && edge.from !== edge.to ? graph.edge(edge.from, edge.to, edge.id) : null;
-    edges.set(edge.id, drawn?.points ?? carriedWay(ops.get(edge.from), ops.get(edge.to)));
+    const own = ops.get(edge.from);
+    const drawn = edge.from === edge.to ? null : graph.edge(edge.from, edge.to, edge.id);
+    edges.set(edge.id, drawn?.points ?? (own ? ownWay(own) : []));
   }
   const size = graph.graph();
   return {
-    width: Math.max(OP_WIDTH_PX + 24, size.width ?? 0),
-    height: Math.max(OP_HEIGHT_PX + 24, size.height ?? 0),
+    width: Math.max(NARROWEST_OP_PX, size.width ?? 0),
+    height: Math.max(OP_HEIGHT_PX, size.height ?? 0),
     ops,
     edges,
   };
 }
 
-/** From the producer's foot round its side to the consumer's head. */
-function carriedWay(from: Point | undefined, to: Point | undefined): Point[] {
-  if (!from || !to) return [];
-  const side = Math.max(from.x, to.x) + OP_WIDTH_PX + 10;
+/** From an op round its side back to itself. */
+function ownWay({ x, y, width }: OpBox): Point[] {
+  const right = x + width;
   return [
-    { x: from.x + OP_WIDTH_PX * 0.75, y: from.y + OP_HEIGHT_PX },
-    { x: side, y: from.y + OP_HEIGHT_PX + 12 },
-    { x: side, y: to.y - 12 },
-    { x: to.x + OP_WIDTH_PX * 0.75, y: to.y },
+    { x: right - 12, y: y + OP_HEIGHT_PX },
+    { x: right + 14, y: y + OP_HEIGHT_PX + 12 },
+    { x: right + 14, y: y - 12 },
+    { x: right - 12, y },
   ];
 }
 

@@ -25,6 +25,8 @@ interface GridPaneProps {
 }
 
 const ROOM_PX = 16;
+/** The panes stand side by side from this window width on (Tailwind's lg). */
+const STACKED_BELOW_PX = 1024;
 const ZOOM_STEPS = [0.4, 0.55, 0.7, 0.85, 1, 1.25, 1.5, 2];
 
 /** The fabric with everything on it, to point at and to place on. */
@@ -81,11 +83,12 @@ export function GridPane({ shown, onOpDown, wasDragged }: GridPaneProps) {
     (size.height - ROOM_PX) / picture.height,
     1.35,
   );
-  const narrow = size.width > 0 && size.width < 480;
-  const scale = zoom ?? (narrow ? (size.width - ROOM_PX) / picture.width : fit);
+  // Stacked, the pane is as high as its drawing; beside others, the drawing fits the pane.
+  const stacked = size.width > 0 && window.innerWidth < STACKED_BELOW_PX;
+  const scale = zoom ?? (stacked ? Math.min(1.2, (size.width - ROOM_PX) / picture.width) : fit);
   return (
-    <div className="relative min-h-0 flex-1">
-      <div ref={frame} className="flex size-full overflow-auto p-2">
+    <div className="relative lg:min-h-0 lg:flex-1">
+      <div ref={frame} className="flex max-h-[75dvh] w-full overflow-auto p-2 lg:size-full lg:max-h-none">
         <div className="m-auto">
           <FabricGrid
             fabric={fabric}
@@ -133,7 +136,7 @@ function ZoomButtons({ scale, onZoom }: { scale: number; onZoom: (zoom: number |
   const smaller = ZOOM_STEPS.findLast((step) => step < scale - 0.01);
   const larger = ZOOM_STEPS.find((step) => step > scale + 0.01);
   return (
-    <div className="absolute right-2 bottom-2 flex rounded border border-rule bg-surface">
+    <div className="mr-2 mb-2 ml-auto flex w-fit rounded border border-rule bg-surface lg:absolute lg:right-2 lg:bottom-2 lg:m-0">
       <IconButton label="Zoom the fabric out" disabled={!smaller} onClick={() => onZoom(smaller ?? null)}>
         −
       </IconButton>

@@ -5,9 +5,9 @@ import { IconButton } from '@/components/ui/button';
 import type { OpId } from '@/lib/graph/kernel';
 import { netsOf } from '@/lib/graph/nets';
 import { opSpec } from '@/lib/graph/op-catalog';
-import { labelLines, shortName } from '@/lib/mapping/picture/op-label';
+import { shortName } from '@/lib/mapping/picture/op-label';
 import { threadStyle } from '@/lib/mapping/picture/thread-style';
-import { kernelPicture, OP_HEIGHT_PX, OP_WIDTH_PX, smoothPath } from '../drawing/kernel-layout';
+import { boxLines, kernelPicture, OP_HEIGHT_PX, smoothPath } from '../drawing/kernel-layout';
 import { useSize } from '../drawing/use-size';
 import { useBench, useBenchStore } from '../store/bench-context';
 import { litBy } from '../store/lit';
@@ -168,11 +168,11 @@ function GraphOps({ picture, lit, onOpDown, wasDragged }: GraphOpsProps) {
   return (
     <g ref={root} {...box}>
       {kernel.ops.map((op) => {
-        const at = picture.ops.get(op.id) ?? { x: 0, y: 0 };
+        const at = picture.ops.get(op.id) ?? { x: 0, y: 0, width: 0 };
         const isPlaced = placement[op.id] !== undefined;
         const part =
           held === op.id ? 'held' : lit?.op === op.id ? 'pointed' : lit?.near.has(op.id) ? 'near' : 'plain';
-        const lines = labelLines(shortName(op), 15);
+        const lines = boxLines(op);
         const option = {
           ...OPTION,
           'aria-selected': held === op.id,
@@ -200,7 +200,7 @@ function GraphOps({ picture, lit, onOpDown, wasDragged }: GraphOpsProps) {
             {...option}
           >
             <rect
-              width={OP_WIDTH_PX}
+              width={at.width}
               height={OP_HEIGHT_PX}
               rx={2}
               fill={part === 'held' ? 'var(--indigo-wash)' : isPlaced ? 'var(--surface)' : 'var(--paper)'}
@@ -211,7 +211,7 @@ function GraphOps({ picture, lit, onOpDown, wasDragged }: GraphOpsProps) {
             {lines.map((line, i) => (
               <text
                 key={i}
-                x={OP_WIDTH_PX / 2}
+                x={at.width / 2}
                 y={OP_HEIGHT_PX / 2 + 4 + (i - (lines.length - 1) / 2) * 13}
                 textAnchor="middle"
                 fontSize={12.5}
@@ -222,7 +222,7 @@ function GraphOps({ picture, lit, onOpDown, wasDragged }: GraphOpsProps) {
               </text>
             ))}
             {pins[op.id] === undefined ? null : (
-              <circle cx={OP_WIDTH_PX - 7} cy={7} r={3.5} fill="var(--indigo)" />
+              <circle cx={at.width - 7} cy={7} r={3.5} fill="var(--indigo)" />
             )}
           </g>
         );
