@@ -88,7 +88,7 @@ interface TilePlaceProps {
 }
 
 const boxes = new Map<string, ReturnType<typeof tileBox>>();
-/** One box object for each place, so that a tile that did not change is not drawn again. */
+/** One and the same box object for each place, so that a tile that did not change is not drawn again. */
 function boxAt(row: number, col: number) {
   const key = `${row},${col}`;
   const known = boxes.get(key) ?? tileBox(row, col);

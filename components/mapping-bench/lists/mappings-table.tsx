@@ -133,7 +133,7 @@ export function MappingsTable({
   };
   const actions: Column<MappingRow> = {
     key: 'actions',
-    header: '',
+    header: 'Actions',
     align: 'right',
     render: (row) => (
       <Menu

@@ -23,7 +23,7 @@ import { type Provenance, provenanceSchema } from '@/lib/mapping/mapping';
 import { measureMapping } from '@/lib/mapping/metrics';
 import { verifyMapping } from '@/lib/mapping/verify';
 import { err, ok } from '@/lib/result';
-import { benchFigures } from './bench-figures';
+import { benchFigures, keptFigures } from './bench-figures';
 import { draftProblem } from './draft-problem';
 import { knownMakings } from './known-makings';
 import { versionsForBench } from './versions-for-bench';
@@ -215,7 +215,7 @@ export const continueFromMapping = defineAction({
         start: {
           document: { placement, pins, routes },
           provenance,
-          figures: { ...mapping, placedOps: mapping.opCount },
+          figures: keptFigures(mapping),
         },
       });
       if (!made.ok) return err(notFound('mapping'));

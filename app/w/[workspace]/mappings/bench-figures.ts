@@ -1,4 +1,5 @@
 import type { BenchFigures } from '@/db/queries/mapping-drafts';
+import type { MappingView } from '@/db/queries/mappings';
 import type { MappingMetrics } from '@/lib/mapping/metrics';
 
 /** The figures that lists show, from a measured document. */
@@ -9,4 +10,21 @@ export const benchFigures = (metrics: MappingMetrics): BenchFigures => ({
   longestPathHops: metrics.longestPathHops,
   linksUsed: metrics.linksUsed,
   fullestLinkNets: metrics.fullestLink?.nets ?? 0,
+});
+
+/** The figures of a bench that begins with a kept mapping: just these, since the rest of its row is not the bench's. */
+export const keptFigures = ({
+  opCount,
+  wireHops,
+  pathHops,
+  longestPathHops,
+  linksUsed,
+  fullestLinkNets,
+}: MappingView): BenchFigures => ({
+  placedOps: opCount,
+  wireHops,
+  pathHops,
+  longestPathHops,
+  linksUsed,
+  fullestLinkNets,
 });
