@@ -11,9 +11,9 @@ import { type SteinerTree, shortestPathsTree, steinerTree } from './steiner-tree
 const SHALLOW_TARGETS = 5;
 
 /**
- * `wire`: a cheapest tree within the clock's limit, and for small nets, unless `shallow` is false, one as shallow as can be. `path`: fewest hops
- * to every consumer, and the cheapest such tree. Where the limit cannot be kept, fewest hops to every consumer
- * too. Null only where barred links (cost Infinity) leave no tree.
+ * `wire`: a cheapest tree within the clock's limit, and for small nets, unless `shallow` is false, one as shallow as
+ * can be. `path`: fewest hops to every consumer, and the cheapest such tree; so too where a consumer lies beyond the
+ * clock's limit. Null only where barred links (cost Infinity) leave no such tree.
  */
 export function netTree(
   graph: FabricGraph,
@@ -33,7 +33,10 @@ export function netTree(
     if (direct !== null) return direct;
   }
   const limited = steinerTree(graph, sourceTile, targets, linkCost, { maxDepthHops: graph.maxHops });
-  if (limited === null) return fewestHops(false) ?? steinerTree(graph, sourceTile, targets, linkCost);
+  if (limited === null) {
+    const beyond = graph.maxHops !== null && farthestHops > graph.maxHops;
+    return beyond ? (fewestHops(false) ?? steinerTree(graph, sourceTile, targets, linkCost)) : null;
+  }
   if (!shallow || !limited.exact || targets.length > SHALLOW_TARGETS) return limited;
   const depth = treeDepth(graph, sourceTile, targets, limited.links);
   if (depth <= farthestHops) return limited;
