@@ -10,18 +10,23 @@ const tile = (page: Page, row: number, col: number) =>
 const figures = (page: Page) => page.getByRole('region', { name: 'Figures' });
 const said = (page: Page) => page.getByRole('status').filter({ hasText: /\S/ }).first();
 
+interface BenchOf {
+  kernel: string;
+  fabric: string;
+}
 /**
- * A bench for the five ops of "scale and clamp" on the 4 × 4 fabric, whose tiles are
- * M S A M / M A X M / M A A M / M X A M (memory, scratchpad, arithmetic, multiplier).
+ * "Scale and clamp" has five ops; the 4 × 4 fabric's tiles are M S A M / M A X M / M A A M / M X A M
+ * (memory, scratchpad, arithmetic, multiplier).
  */
-async function openBench(page: Page, name: string): Promise<void> {
+const small: BenchOf = { kernel: 'Gauge: scale and clamp · 5 ops', fabric: 'Gauge node, 4 × 4 · 4×4' };
+
+async function openBench(page: Page, name: string, of: BenchOf = small): Promise<void> {
   await page.goto(`${base}/new`);
-  await page.getByLabel('Kernel').selectOption({ label: 'Gauge: scale and clamp · 5 ops' });
-  await page.getByLabel('Fabric').selectOption({ label: 'Gauge node, 4 × 4 · 4×4' });
+  await page.getByLabel('Kernel').selectOption({ label: of.kernel });
+  await page.getByLabel('Fabric').selectOption({ label: of.fabric });
   await page.getByLabel('Name').fill(name);
   await page.getByRole('button', { name: 'Open the bench' }).click();
   await expect(page.getByRole('heading', { level: 1, name })).toBeVisible();
-  await expect(figures(page)).toContainText('0 of 5');
 }
 
 async function pickAndPut(page: Page, name: string, row: number, col: number): Promise<void> {
@@ -178,7 +183,7 @@ test('what could not be sent is kept in the browser and saved when the server is
 
 test('on a phone the fabric comes first, the kernel and the figures as tabs under it', async ({ pageOf }) => {
   const page = await pageOf('architect', { viewport: { width: 390, height: 844 }, hasTouch: true });
-  await openBenchNarrow(page, ownName('Phone'));
+  await openBench(page, ownName('Phone'));
   await page.getByRole('button', { name: 'List' }).tap();
   await page.getByRole('button', { name: /^raw/ }).tap();
   await tile(page, 1, 3).tap();
@@ -189,11 +194,43 @@ test('on a phone the fabric comes first, the kernel and the figures as tabs unde
   await checkAccessible(page, 'the bench on a phone');
 });
 
-async function openBenchNarrow(page: Page, name: string): Promise<void> {
-  await page.goto(`${base}/new`);
-  await page.getByLabel('Kernel').selectOption({ label: 'Gauge: scale and clamp · 5 ops' });
-  await page.getByLabel('Fabric').selectOption({ label: 'Gauge node, 4 × 4 · 4×4' });
-  await page.getByLabel('Name').fill(name);
-  await page.getByRole('button', { name: 'Open the bench' }).click();
-  await expect(page.getByRole('heading', { level: 1, name })).toBeVisible();
-}
+test('a solve is found again after a reload, leaves changes by hand alone, and its best is put on the bench as one step', async ({
+  pageOf,
+}) => {
+  const page = await pageOf('architect');
+  await openBench(page, ownName('Long'), {
+    kernel: 'Tiltmeter: size and direction · 30 ops',
+    fabric: 'Slope tiltmeter, 8 × 8 · 8×8',
+  });
+  await page.getByLabel('Time limit').selectOption({ label: '60 s' });
+  await page.getByRole('button', { name: 'Auto-place the rest' }).click();
+  const panel = page.getByRole('region', { name: 'Auto-place' });
+  await expect(panel).toContainText(/Best\s*\d+/, { timeout: 40_000 });
+  await page.reload();
+  await expect(panel.getByRole('button', { name: 'Stop and keep the best' })).toBeVisible();
+  await op(page, 'tilt x').click();
+  await tile(page, 0, 0).click();
+  await expect(figures(page)).toContainText('1 of 30');
+  await panel.getByRole('button', { name: 'Stop and keep the best' }).click();
+  await expect(panel).toContainText(/A solve found \d+ wire hops/, { timeout: 40_000 });
+  await expect(figures(page)).toContainText('1 of 30');
+  await panel.getByRole('button', { name: 'Look at it' }).click();
+  await expect(figures(page)).toContainText('30 of 30');
+  await panel.getByRole('button', { name: 'Put on the bench' }).click();
+  await expect(figures(page)).toContainText('30 of 30');
+  await page.getByRole('button', { name: /^Undo/ }).click();
+  await expect(figures(page)).toContainText('1 of 30');
+});
+
+test('what cannot fit is said with its reason', async ({ pageOf }) => {
+  const page = await pageOf('architect');
+  await openBench(page, ownName('Too large'), {
+    kernel: 'Hive: radix-2 butterfly · 20 ops',
+    fabric: 'Gauge node, 4 × 4 · 4×4',
+  });
+  await page.getByRole('button', { name: 'Auto-place the rest' }).click();
+  const panel = page.getByRole('region', { name: 'Auto-place' });
+  await expect(panel).toContainText('No mapping is possible', { timeout: 40_000 });
+  await panel.getByRole('button', { name: 'Show where' }).click();
+  await expect(figures(page)).toContainText('0 of 20');
+});

@@ -15,17 +15,28 @@ export function StatusLine({ shown }: { shown: BenchView }) {
   const readOnly = useBench((state) => state.readOnly);
   const pointed = usePointedText(shown);
   const refusal = held !== null && tile !== null ? store.getState().refusal(held, tile) : null;
-  const hint = readOnly
-    ? 'Point at an op to see its nets on both sides.'
-    : 'Drag an op to a tile, or pick op and tile. Keys: Enter picks up and puts down, P pins, Delete takes off.';
   return (
     <div className="flex min-h-10 flex-none flex-wrap items-center gap-x-4 border-t border-rule bg-paper px-4 py-1.5 text-sm">
       <p role="status" className={said.refused || refusal ? 'text-madder' : 'text-ink'}>
         {refusal ?? said.text}
       </p>
       {pointed && !refusal ? <p className="text-quiet">{pointed}</p> : null}
-      {!pointed && !refusal && said.text === '' ? <p className="text-quiet">{hint}</p> : null}
+      {!pointed && !refusal && said.text === '' ? <Hint readOnly={readOnly} /> : null}
     </div>
+  );
+}
+
+/** What one can do here; fingers have no keys and drag the page. */
+function Hint({ readOnly }: { readOnly: boolean }) {
+  if (readOnly) return <p className="text-quiet">Point at an op to see its nets on both sides.</p>;
+  return (
+    <>
+      <p className="text-quiet pointer-coarse:hidden">
+        Drag an op to a tile, or pick op and tile. Keys: Enter picks up and puts down, P pins, Delete takes
+        off.
+      </p>
+      <p className="hidden text-quiet pointer-coarse:block">Tap an op, then a tile.</p>
+    </>
   );
 }
 

@@ -150,9 +150,8 @@ export function createBenchStore(of: {
         return held !== null && attempt(place(setting, content, held, tile));
       },
       press: (tile) => {
-        const { held, byTile, putDown, pick, content } = get();
-        if (held !== null && setting.graph.tileIndex(content.placement[held] ?? '') === tile) pick(null);
-        else if (held !== null) putDown(tile);
+        const { held, byTile, putDown, pick } = get();
+        if (held !== null) putDown(tile);
         else {
           const there = byTile.get(tile);
           if (there !== undefined) pick(there);

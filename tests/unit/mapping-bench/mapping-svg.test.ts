@@ -70,6 +70,8 @@ test('a claim of the solver’s work stands only for what a solve has found', ()
     ...solved,
     changedByHand: true,
   });
+  const tighter = { ...solved, bound: 4 };
+  expect(honestProvenance(tighter, placement, [{ provenance: solved, placement }])).toEqual({ by: 'hand' });
   const better = { ...solved, objectiveValue: 3, bound: 3 };
   expect(honestProvenance(better, placement, [{ provenance: solved, placement }])).toEqual({ by: 'hand' });
 });
