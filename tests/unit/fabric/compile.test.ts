@@ -3,6 +3,7 @@ import { compileFabric } from '@/lib/fabric/compile';
 import { UNREACHABLE } from '@/lib/fabric/hop-distances';
 import { maxHops } from '@/lib/fabric/max-hops';
 import { linkEnds, linkId, parseLink, parseTile, tileAt, tileId, tileLabel } from '@/lib/fabric/tiles';
+import { presetNeighbours } from '@/lib/fabric/topology';
 import { plainFabric } from './plain-fabric';
 
 const link = (fromRow: number, fromCol: number, toRow: number, toCol: number) =>
@@ -23,6 +24,10 @@ describe('the links of a fabric', () => {
     const graph = compileFabric(plainFabric(rows, cols, topology));
     expect(graph.links).toHaveLength(count);
     expect(graph.linkIndex.size).toBe(count);
+  });
+
+  it('neighbours on a torus two tiles wide: one across, one up and one down, none twice', () => {
+    expect(presetNeighbours('torus', 3, 2, 0, 0)).toEqual([4, 1, 2]);
   });
 
   it('a removed link is gone one way only, an added one is there, with its own channels', () => {

@@ -45,6 +45,12 @@ const cases: [title: string, change: (fabric: Fabric) => void, code: string, sev
     'warning',
   ],
   [
+    'a corner that can be left but not entered',
+    (f) => f.removedLinks.push(linkId(tileId(0, 1), tileId(0, 0)), linkId(tileId(1, 0), tileId(0, 0))),
+    'disconnected',
+    'warning',
+  ],
+  [
     'a clock without time for a hop',
     (f) => {
       f.clock = { periodPs: 10, entryDelayPs: 5, hopDelayPs: 6 };
