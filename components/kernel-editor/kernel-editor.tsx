@@ -10,6 +10,7 @@ import type { Kernel } from '@/lib/graph';
 import { EditorSurface } from './editor-surface';
 import type { SaveAnswer } from './save/autosave';
 import { SavingNotices } from './save/conflict-notice';
+import { newestDraft, type SavedDraft } from './save/newest-draft';
 import { SaveStatus } from './save/save-status';
 import { type Autosave, useAutosave } from './save/use-autosave';
 import { type EditorCalls, exportApi, type KernelPlaces, versionsApi } from './server-calls';
@@ -28,21 +29,28 @@ export interface KernelEditorProps {
 }
 
 /** The screen on which a kernel is drawn. */
-export function KernelEditor(props: KernelEditorProps) {
+export function KernelEditor({ document, revision, savedAt, ...rest }: KernelEditorProps) {
+  const [draft] = useState(() =>
+    newestDraft(rest.places.kernelId, { kernel: document, revision, savedAtMs: Date.parse(savedAt) }),
+  );
   return (
-    <EditorProvider kernel={props.document} readOnly={props.readOnlyReason !== null}>
-      <EditorScreen {...props} />
+    <EditorProvider kernel={draft.kernel} readOnly={rest.readOnlyReason !== null}>
+      <EditorScreen {...rest} draft={draft} />
     </EditorProvider>
   );
 }
 
-function EditorScreen({ places, revision, savedAt, readOnlyReason, calls }: KernelEditorProps) {
+type EditorScreenProps = Pick<KernelEditorProps, 'places' | 'readOnlyReason' | 'calls'> & {
+  draft: SavedDraft;
+};
+
+function EditorScreen({ places, draft, readOnlyReason, calls }: EditorScreenProps) {
   const name = useKernelState((state) => state.kernel.name);
   const { mutate } = useSWRConfig();
   const autosave = useAutosave({
     kernelId: places.kernelId,
-    revision,
-    savedAtMs: Date.parse(savedAt),
+    revision: draft.revision,
+    savedAtMs: draft.savedAtMs,
     readOnly: readOnlyReason !== null,
     send: (document, baseRevision) =>
       calls.save({ ...places, revision: baseRevision, document }).then(answerOf),

@@ -19,6 +19,7 @@ import { canvasHandle } from './canvas-handle';
 import { createFlowElements, type DragPositions } from './flow-elements';
 import { OP_DRAG_TYPE } from './op-drag';
 import { type OpFlowNode, OpNode } from './op-node';
+import { SteadyView } from './steady-view';
 import { ThreadEdge, type ThreadFlowEdge } from './thread-edge';
 import { useCanvasConnections } from './use-canvas-connections';
 
@@ -50,6 +51,10 @@ export function KernelCanvas() {
   const connections = useCanvasConnections();
   const selecting = useCanvasSelection(setDragged);
 
+  // A finger has no second button to move the view with.
+  useEffect(() => {
+    if (matchMedia('(pointer: coarse)').matches) store.getState().setDragMode('pan');
+  }, [store]);
   useEffect(() => {
     if (flow === null) return;
     canvas.current = canvasHandle(flow, store, root);
@@ -119,6 +124,7 @@ export function KernelCanvas() {
       fitViewOptions={FIRST_VIEW}
     >
       <Background variant={BackgroundVariant.Dots} gap={24} size={1.25} color="var(--rule)" />
+      <SteadyView root={root} />
     </ReactFlow>
   );
 }

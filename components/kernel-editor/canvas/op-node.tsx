@@ -25,17 +25,20 @@ export const OpNode = memo(function OpNode({ data: { op }, selected }: NodeProps
   return (
     <div className="op-node" style={{ width: size.widthPx, height: size.heightPx }}>
       <UnitOutline form={formOf(op.kind)} {...size} selected={selected} />
-      <div className="relative flex h-9 items-center gap-1.5 pr-2 pl-2.5">
+      <div className="op-print relative flex h-9 items-center gap-1.5 pr-2 pl-2.5">
         <span className="flex-none font-mono text-sm text-quiet" aria-hidden="true">
           {spec.symbol}
         </span>
         <span className="min-w-0 flex-1 truncate text-sm font-semibold">{op.label || spec.label}</span>
         <span className="figures flex-none pr-1 text-xs text-quiet">{op.widthBits}</span>
       </div>
+      <div className="op-far-label" aria-hidden="true">
+        <span>{op.label || spec.label}</span>
+      </div>
       {spec.inputs.map((port, row) => (
         <div
           key={port.name}
-          className="relative flex h-5 items-center gap-1 pr-3 pl-3 text-xs leading-none text-quiet"
+          className="op-print relative flex h-5 items-center gap-1 pr-3 pl-3 text-xs leading-none text-quiet"
         >
           <span>{port.label}</span>
           <ConstantText value={op.immediates[port.name]} />
@@ -43,7 +46,7 @@ export const OpNode = memo(function OpNode({ data: { op }, selected }: NodeProps
         </div>
       ))}
       {spec.inputs.length === 0 ? (
-        <div className="relative flex h-5 items-center px-3 font-mono text-xs leading-none text-quiet">
+        <div className="op-print relative flex h-5 items-center px-3 font-mono text-xs leading-none text-quiet">
           {params}
         </div>
       ) : null}

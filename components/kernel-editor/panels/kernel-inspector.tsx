@@ -48,13 +48,13 @@ export function KernelInspector() {
       />
       <dl className="figures grid grid-cols-[1fr_auto] gap-y-1 text-sm">
         <dt className="text-quiet">Ops</dt>
-        <dd className="font-mono">{kernel.ops.length}</dd>
+        <dd className="text-right font-mono">{kernel.ops.length}</dd>
         <dt className="text-quiet">Connections</dt>
-        <dd className="font-mono">{kernel.edges.length}</dd>
+        <dd className="text-right font-mono">{kernel.edges.length}</dd>
         {[...needs].map(([unit, count]) => (
           <div key={unit} className="contents">
             <dt className="text-quiet">{unit} units needed</dt>
-            <dd className="font-mono">{count}</dd>
+            <dd className="text-right font-mono">{count}</dd>
           </div>
         ))}
       </dl>

@@ -1,17 +1,15 @@
 'use client';
 
 import { useKernelState } from '../store/editor-context';
+import { useWide } from './use-wide';
 
 /** The line at the foot: what just happened, or why something was refused. Read out politely. */
 export function StatusLine() {
   const said = useKernelState((state) => state.said);
   const empty = useKernelState((state) => state.kernel.ops.length === 0);
   const readOnly = useKernelState((state) => state.readOnly);
-  const rest = readOnly
-    ? 'Read only: arrows go from op to op'
-    : empty
-      ? 'Add the first op from the palette: click one, drag it here, or press / and type'
-      : 'Arrows go from op to op · C connects · Shift and arrows move · ? lists all keys';
+  const wide = useWide();
+  const rest = restingText({ readOnly, empty, wide });
   return (
     <p
       role="status"
@@ -20,4 +18,24 @@ export function StatusLine() {
       {said || rest}
     </p>
   );
+}
+
+function restingText({
+  readOnly,
+  empty,
+  wide,
+}: {
+  readOnly: boolean;
+  empty: boolean;
+  wide: boolean;
+}): string {
+  if (readOnly) return wide ? 'Read only: arrows go from op to op' : 'Read only';
+  if (empty) {
+    return wide
+      ? 'Add the first op from the palette: click one, drag it here, or press / and type'
+      : 'Add the first op from Operations';
+  }
+  return wide
+    ? 'Arrows go from op to op · C connects · Shift and arrows move · ? lists all keys'
+    : 'Tap a result, then an operand, to connect them';
 }

@@ -40,6 +40,8 @@ export type SaveEvent =
   | { type: 'due' }
   | { type: 'retry' }
   | { type: 'tookTheirs'; kernel: Kernel; revision: number }
+  /** Edits of an earlier visit are about to be taken back; their save may have reached the server unheard. */
+  | { type: 'recovered'; kernel: Kernel }
   | SaveAnswer;
 
 export type SaveEffect =
@@ -95,6 +97,8 @@ export function autosave(state: SaveState, event: SaveEvent): SaveStep {
       return conflict(state, event.theirs);
     case 'tookTheirs':
       return stay({ ...initialSave(event.kernel, event.revision), savedAtMs: state.savedAtMs });
+    case 'recovered':
+      return stay({ ...state, unanswered: event.kernel });
     default:
       return assertNever(event);
   }

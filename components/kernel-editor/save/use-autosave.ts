@@ -7,6 +7,7 @@ import { replaceKernelEdit } from '../store/replace-kernel';
 import { hasUnsavedEdits, initialSave, type SaveAnswer, type SaveState } from './autosave';
 import { backupKey, backupOf, findBackups, removeBackup, writeBackup } from './backup';
 import { holdBackupKey, openBackupKeys } from './backup-locks';
+import { noteSaved } from './newest-draft';
 import { runAutosave, type SaveRunner } from './run-autosave';
 import { sameKernel } from './same-kernel';
 
@@ -38,7 +39,9 @@ export interface Autosave {
 /** Saves every change of the store's kernel, and keeps a copy in the browser of what is not saved yet. */
 export function useAutosave(parts: AutosaveParts): Autosave {
   const { store } = useEditor();
-  const { kernelId, revision, savedAtMs, readOnly } = parts;
+  const { kernelId, readOnly } = parts;
+  // Where saving began. A page that is drawn again later must not start it anew: edits may be on their way.
+  const [{ revision, savedAtMs }] = useState(() => parts);
   const send = useRef(parts.send);
   send.current = parts.send;
   const [state, setState] = useState<SaveState>(() => ({
@@ -56,7 +59,14 @@ export function useAutosave(parts: AutosaveParts): Autosave {
     let backupTimer: ReturnType<typeof setTimeout> | undefined;
     const current = runAutosave({
       initial: { ...initialSave(store.getState().kernel, revision), savedAtMs },
-      send: (kernel, baseRevision) => send.current(kernel, baseRevision),
+      async send(kernel, baseRevision) {
+        const answer = await send.current(kernel, baseRevision);
+        // Noted even when the editor has been left since.
+        if (answer.type === 'saved') {
+          noteSaved(kernelId, { kernel, revision: answer.revision, savedAtMs: answer.atMs });
+        }
+        return answer;
+      },
       after: (delayMs, run) => {
         const timer = setTimeout(run, delayMs);
         return () => clearTimeout(timer);
@@ -97,8 +107,11 @@ export function useAutosave(parts: AutosaveParts): Autosave {
         removeBackup(localStorage, found.key);
         return;
       }
+      const standsOnLoaded = found.baseRevision === current.state().revision;
+      // It may have been sent without the answer being heard; finding it at the server is then no conflict.
+      if (standsOnLoaded) current.dispatch({ type: 'recovered', kernel: found.kernel });
       const applied =
-        found.baseRevision === current.state().revision &&
+        standsOnLoaded &&
         store.getState().edit(replaceKernelEdit(loaded, found.kernel), 'take back unsaved edits');
       setRecovered({ kernel: found.kernel, atMs: found.atMs, applied });
       // From here on this visit's own backup, or the choice on the screen, holds them.
