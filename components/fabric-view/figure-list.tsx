@@ -13,12 +13,10 @@ export function FigureList({ title, figures }: { title: string; figures: readonl
       <h2 className="mb-1 text-xs font-semibold tracking-widest text-quiet uppercase">{title}</h2>
       <dl className="figures space-y-1 text-sm">
         {figures.map((figure) => (
-          <div key={figure.label}>
-            <div className="flex items-baseline justify-between gap-4">
-              <dt className="text-quiet">{figure.label}</dt>
-              <dd className="text-right font-mono">{figure.value}</dd>
-            </div>
-            {figure.note ? <dd className="text-xs text-quiet">{figure.note}</dd> : null}
+          <div key={figure.label} className="grid grid-cols-[auto_1fr] items-baseline gap-x-4">
+            <dt className="text-quiet">{figure.label}</dt>
+            <dd className="text-right font-mono">{figure.value}</dd>
+            {figure.note ? <dd className="col-span-2 text-xs text-quiet">{figure.note}</dd> : null}
           </div>
         ))}
       </dl>
