@@ -37,7 +37,7 @@ export function opSentence(kernel: Kernel, id: OpId): string {
   const result =
     opSpec(op.kind).output === null ? [] : [consumers === 1 ? 'one consumer' : `${consumers} consumers`];
   return [
-    `${op.label}: ${opSpec(op.kind).label}`,
+    op.label ? `${op.label}: ${opSpec(op.kind).label}` : opSpec(op.kind).label,
     `${op.widthBits} bits`,
     paramText(op),
     ...operands,
