@@ -70,9 +70,7 @@ function TargetChoice({ from, onChoose, onClose }: TargetChoiceProps) {
         return { key, to: op.id, port: port.name, text: `${opName(op)}, ${port.label}`, answer };
       }),
     )
-    .filter(
-      ({ text, answer }) => (withRefused || answer.ok) && text.toLowerCase().includes(query.toLowerCase()),
-    );
+    .filter(({ text, answer }) => (withRefused || answer.ok) && begins(wordsOf(text), wordsOf(query)));
   const current = targets[Math.min(active, targets.length - 1)];
   const choose = (target: Target | undefined) => {
     if (target?.answer.ok) onChoose(target);
@@ -136,6 +134,12 @@ function TargetChoice({ from, onChoose, onClose }: TargetChoiceProps) {
     </div>
   );
 }
+
+const wordsOf = (text: string): string[] => text.toLowerCase().match(/[\p{L}\p{N}[\]_]+/gu) ?? [];
+
+/** Whether every word that was asked for is the beginning of one in the text: `add b` finds operand b of the op “add”. */
+const begins = (words: readonly string[], asked: readonly string[]): boolean =>
+  asked.every((part) => words.some((word) => word.startsWith(part)));
 
 function TargetOption(props: { id: string; target: Target; active: boolean; onChoose: () => void }) {
   const { id, target, active, onChoose } = props;

@@ -1,7 +1,7 @@
 'use client';
 
 import { Button } from '@/components/ui/button';
-import { opName } from '@/lib/graph';
+import { opSpec } from '@/lib/graph';
 import { alignCommands, layoutCommand } from '../commands/arrange-commands';
 import { duplicateCommand, removeCommand } from '../commands/edit-commands';
 import { useRun } from '../commands/use-commands';
@@ -19,7 +19,13 @@ export function Inspector() {
   const [first] = selection.opIds;
   const op = first === undefined ? undefined : indexOf(kernel).opById.get(first);
   const many = selection.opIds.size > 1;
-  const title = edge ? 'Connection' : many ? `${selection.opIds.size} ops` : op ? opName(op) : 'Kernel';
+  const title = edge
+    ? 'Connection'
+    : many
+      ? `${selection.opIds.size} ops`
+      : op
+        ? op.label || opSpec(op.kind).label
+        : 'Kernel';
   return (
     <section aria-label="Inspector" className="min-h-0 flex-1 overflow-y-auto p-3">
       <h2 className="mb-2 truncate text-base font-semibold">{title}</h2>
