@@ -37,6 +37,7 @@ export interface MappingDraftListItem extends BenchFigures {
   fabricName: string;
   fabricVersion: number;
   opCount: number;
+  provenance: Provenance;
   keptAs: Id<'mapping'> | null;
   updatedByName: string;
   updatedAt: Date;
@@ -83,6 +84,16 @@ const figureColumns = {
   fullestLinkNets: mappingDrafts.fullestLinkNets,
 };
 
+/** By name: whatever else the caller's object carries stays out of the row. */
+const namedFigures = (figures: BenchFigures): BenchFigures => ({
+  placedOps: figures.placedOps,
+  wireHops: figures.wireHops,
+  pathHops: figures.pathHops,
+  longestPathHops: figures.longestPathHops,
+  linksUsed: figures.linksUsed,
+  fullestLinkNets: figures.fullestLinkNets,
+});
+
 /** A bench for two versions of this workspace; `not_found` when either is not of it. Empty unless told otherwise. */
 export async function createMappingDraft(
   tx: Tx,
@@ -118,7 +129,7 @@ export async function createMappingDraft(
     document: draft.start?.document ?? emptyBenchDocument,
     provenance: draft.start?.provenance ?? { by: 'hand' },
     opCount: kernel.opCount,
-    ...draft.start?.figures,
+    ...(draft.start ? namedFigures(draft.start.figures) : {}),
     createdBy: draft.userId,
     updatedBy: draft.userId,
   });
@@ -142,6 +153,7 @@ export function listMappingDrafts(
       fabricVersion: fabricVersions.number,
       opCount: mappingDrafts.opCount,
       ...figureColumns,
+      provenance: mappingDrafts.provenance,
       keptAs: mappingDrafts.keptAs,
       updatedByName: users.name,
       updatedAt: mappingDrafts.updatedAt,

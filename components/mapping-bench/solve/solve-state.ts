@@ -93,7 +93,7 @@ export function durationText(elapsedMs: number): string {
 export function gapText(value: number, bound: number): string {
   if (value <= bound) return 'no better one is possible';
   if (bound <= 0) return 'no useful bound yet';
-  return `at most ${Math.ceil((100 * (value - bound)) / bound)} % above the bound`;
+  return `gap at most ${Math.ceil((100 * (value - bound)) / value)} %`;
 }
 
 export const objectiveNames: Record<Objective, string> = { wire: 'Wire hops', path: 'Path hops' };

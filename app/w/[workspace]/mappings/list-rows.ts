@@ -1,6 +1,16 @@
 import type { MappingRow, RowStatus } from '@/components/mapping-bench/lists/mapping-rows';
 import type { MappingDraftListItem } from '@/db/queries/mapping-drafts';
 import type { MappingListItem } from '@/db/queries/mappings';
+import type { Provenance } from '@/lib/mapping/mapping';
+
+/** A bench whose content is what was kept of it last says nothing that the kept mapping does not. */
+export function changedSinceKept(draft: MappingDraftListItem, kept: readonly MappingListItem[]): boolean {
+  const mapping = kept.find((item) => item.id === draft.keptAs);
+  return !mapping || draft.updatedAt > mapping.createdAt;
+}
+
+const madeBy = (provenance: Provenance): string =>
+  provenance.by === 'hand' ? 'hand' : `${provenance.engine}${provenance.changedByHand ? ', then hand' : ''}`;
 
 const common = (item: MappingDraftListItem | MappingListItem) => ({
   id: item.id,
@@ -22,7 +32,7 @@ export const draftRow = (item: MappingDraftListItem, base: string): MappingRow =
   href: `${base}/bench/${item.id}`,
   placedOps: item.placedOps,
   status: { kind: 'draft', placedOps: item.placedOps, opCount: item.opCount },
-  madeBy: '–',
+  madeBy: madeBy(item.provenance),
   who: item.updatedByName,
   atMs: item.updatedAt.getTime(),
 });

@@ -10,7 +10,7 @@ import { listMappingDrafts } from '@/db/queries/mapping-drafts';
 import { listMappings } from '@/db/queries/mappings';
 import { roleReaches } from '@/lib/roles';
 import { setArchived } from './actions';
-import { draftRow, mappingRow } from './list-rows';
+import { changedSinceKept, draftRow, mappingRow } from './list-rows';
 
 export const metadata: Metadata = { title: 'Mappings' };
 
@@ -24,7 +24,11 @@ export default async function MappingsPage({ params, searchParams }: PageProps) 
   const archived = (await searchParams).archived !== undefined;
   const { workspace, role } = await requireMember(slug);
   const of = { workspaceId: workspace.id, archived };
-  const [drafts, kept] = await Promise.all([listMappingDrafts(database(), of), listMappings(database(), of)]);
+  const [benches, kept] = await Promise.all([
+    listMappingDrafts(database(), of),
+    listMappings(database(), of),
+  ]);
+  const drafts = benches.filter((bench) => changedSinceKept(bench, kept));
   const base = `/w/${slug}/mappings`;
   const rows = [...kept.map((item) => mappingRow(item, base)), ...drafts.map((item) => draftRow(item, base))];
   const mayEdit = roleReaches(role, 'editor');
