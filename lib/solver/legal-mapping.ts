@@ -13,11 +13,18 @@ export type LegalAnswer =
   /** Ends of the links that carry too much, or of paths that are too long. */
   | { ok: false; crowdedTiles: number[] };
 
-export function legalMapping(problem: CheckedProblem, tiling: ArrayLike<number>, seed: number): LegalAnswer {
+/** `shouldStop` ends the routing; what is not routed by then is not legal. */
+export function legalMapping(
+  problem: CheckedProblem,
+  tiling: ArrayLike<number>,
+  seed: number,
+  shouldStop: () => boolean,
+): LegalAnswer {
   const placement = placementOf(problem.kernel, problem.graph, tiling);
   const routed = routePlacement(problem.kernel, problem.graph, placement, {
     objective: problem.objective,
     seed,
+    shouldStop,
   });
   const mapping = verifiedMapping(problem, placement, routed.routes);
   if (mapping) return { ok: true, mapping };

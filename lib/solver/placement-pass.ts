@@ -25,8 +25,8 @@ export type PassResult =
   | { kind: 'unfinished'; stop: StopReason }
   | { kind: 'infeasible'; explanation: InfeasibleReason };
 
-/** Entries above which a model is not built: about 200 MB in the engine. */
-export const MODEL_ENTRIES_LIMIT = 3_000_000;
+/** Entries above which a model is not built: HiGHS was seen not to get past its presolve there within a minute. */
+export const MODEL_ENTRIES_LIMIT = 150_000;
 
 export function placementPass(input: PassInput & { star: Float64Array | null }): PassResult {
   const { problem, instance, star, state } = input;
@@ -39,7 +39,7 @@ export function placementPass(input: PassInput & { star: Float64Array | null }):
     onPoint: (values) => {
       const found = built.decode(values);
       if (!found) return;
-      const legal = legalMapping(problem, found, 0);
+      const legal = legalMapping(problem, found, 0, state.shouldStop);
       if (legal.ok) state.offer(legal.mapping);
     },
     infeasible: () => provedBySearch(problem),
@@ -97,10 +97,10 @@ function take(outcome: EngineOutcome, state: SolveState, handling: PointHandling
 
 function provedBySearch(problem: CheckedProblem): InfeasibleReason {
   const { maxHops } = problem.graph;
-  const limit = maxHops === null ? 'the links' : `the clock's ${maxHops} hops`;
+  const limit = maxHops === null ? 'joined by links' : `within the clock's ${maxHops} hops`;
   return {
     code: 'proved by search',
-    message: `Proved by exhaustive search: no placement puts every op on a PE of its own that can hold it with all connections within ${limit}. Lengthen the clock period, add units, or remove pins.`,
+    message: `Proved by exhaustive search: no placement puts every op on a PE of its own that can hold it with all connections ${limit}. ${maxHops === null ? 'Add links' : 'Lengthen the clock period'}, add units, or remove pins.`,
     opIds: [],
     tileIds: [],
     edgeIds: [],

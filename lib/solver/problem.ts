@@ -31,7 +31,7 @@ export interface CheckedProblem extends PlacementProblem {
 }
 
 /** Sizes that the solver takes on. Above them it says so instead of running out of memory. */
-export const PROBLEM_LIMITS = { ops: 2000, tiles: 4096, candidates: 4_000_000 } as const;
+export const PROBLEM_LIMITS = { ops: 2000, tiles: 4096, candidates: 8_200_000 } as const;
 
 /** What is wrong with the input, in sentences that say what to change. */
 export interface BadInput {

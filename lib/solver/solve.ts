@@ -4,15 +4,16 @@
  */
 
 import { ok, type Result } from '../result';
-import { starBound, trivialBound } from './bounds/star-bound';
+import { starBound, starWork, trivialBound } from './bounds/star-bound';
 import type { Engine } from './engines/engine';
 import { explainInfeasible } from './explain/explain-infeasible';
 import { explainStars } from './explain/explain-stars';
 import { buildInstance, type PlacementInstance } from './instance';
+import { estimateEntries } from './integer-program/placement-program';
 import { legalMapping, startTiles } from './legal-mapping';
 import type { SolveOptions } from './options';
 import type { SolveOutcome, SolveProgress, StopReason } from './outcome';
-import { placementPass } from './placement-pass';
+import { MODEL_ENTRIES_LIMIT, placementPass } from './placement-pass';
 import { type BadInput, type CheckedProblem, checkProblem, type PlacementProblem } from './problem';
 import { routedPass } from './routed-pass';
 import { searchPlacements } from './search/search';
@@ -24,10 +25,11 @@ export interface SolveHooks extends SolveClock {
   engines: readonly Engine[];
 }
 
-/** Work of the star bound (ops × candidates × tiles × neighbours) above which it is left out. */
-const STAR_WORK_LIMIT = 4e8;
-/** The part of the time that the search may take before an engine takes over. */
+/** Work of the star bound above which it is left out: it comes before the first mapping, so within about half a second. */
+const STAR_WORK_LIMIT = 2e7;
+/** The part of the time that the search may take before an engine takes over; more as long as nothing is found. */
 const SEARCH_SHARE = 0.25;
+const FIRST_MAPPING_SHARE = 0.6;
 
 /**
  * Blocks until done: run it in a thread (see worker/). Same problem, options and seed give the same answer as long
@@ -90,11 +92,8 @@ const stopOf = (result: { kind: string; stop?: StopReason }): StopReason => resu
 const enginesFor = (options: SolveOptions, engines: readonly Engine[]): readonly Engine[] =>
   options.engine === 'auto' ? engines : engines.filter((engine) => engine.name === options.engine);
 
-function starsWithinWork(instance: PlacementInstance): ReturnType<typeof starBound> | null {
-  const binaries = instance.candidates.reduce((sum, list) => sum + list.length, 0);
-  const degree = instance.nets.reduce((most, net) => Math.max(most, net.consumers.length + 1), 4);
-  return binaries * instance.tileCount * degree > STAR_WORK_LIMIT ? null : starBound(instance);
-}
+const starsWithinWork = (instance: PlacementInstance): ReturnType<typeof starBound> | null =>
+  starWork(instance) > STAR_WORK_LIMIT ? null : starBound(instance);
 
 /** Legal mappings from the search, each better one reported at once. */
 function searchPass(
@@ -105,8 +104,11 @@ function searchPass(
 ): void {
   state.setPhase('search');
   state.noteEngine('search');
-  const alone = options.engine === 'search';
-  const untilMs = options.timeLimitMs * (alone ? 1 : SEARCH_SHARE);
+  // Where no engine can follow, the search has all the time.
+  const alone = options.engine === 'search' || estimateEntries(instance) > MODEL_ENTRIES_LIMIT;
+  const startMs = state.elapsedMs();
+  const spentRatio = () => (state.elapsedMs() - startMs) / (options.timeLimitMs - startMs);
+  const isOver = () => !alone && spentRatio() >= (state.best() ? SEARCH_SHARE : FIRST_MAPPING_SHARE);
   searchPlacements(
     instance,
     startTiles(problem, instance),
@@ -117,9 +119,9 @@ function searchPass(
       bound: state.bound(),
     },
     {
-      shouldStop: () => state.shouldStop() || state.elapsedMs() >= untilMs,
+      shouldStop: () => state.shouldStop() || isOver(),
       settle: (tiling, round) => {
-        const legal = legalMapping(problem, tiling, round);
+        const legal = legalMapping(problem, tiling, round, state.shouldStop);
         if (!legal.ok) return legal;
         state.offer(legal.mapping);
         return { ok: true, objectiveValue: legal.mapping.objectiveValue };

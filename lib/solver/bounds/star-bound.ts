@@ -7,15 +7,9 @@
  * Wire: every pair of a net's terminals is separated by a tree link at most ⌊t/2⌋·⌈t/2⌉ times in all, so
  * wireHops ≥ Σ undirected pair hops / (⌊t/2⌋·⌈t/2⌉); it is also at least the number of consumers.
  */
-import { type PlacementInstance, UNREACHABLE_HOPS, withinReach } from '../instance';
+import type { PlacementInstance } from '../instance';
 import { leastAssignment } from './assignment';
-
-export interface WeightedPair {
-  a: number;
-  b: number;
-  /** Cost of the pair with a on tile p and b on tile q; Infinity where that is impossible. */
-  cost: (p: number, q: number) => number;
-}
+import { pairCosts, type TileTable, transposed, type WeightedPair } from './pair-costs';
 
 export interface StarBound {
   /** No legal mapping has a smaller objective; Infinity where no placement exists. */
@@ -24,7 +18,7 @@ export interface StarBound {
   star: Float64Array;
 }
 
-/** Cost: ops × tiles small assignments, and one of ops to tiles. */
+/** Cost: `starWork` steps, and one assignment of ops to tiles. */
 export function starBound(instance: PlacementInstance, pairs = pairCosts(instance)): StarBound {
   const star = starCosts(instance, pairs);
   const { opCount, tileCount } = instance;
@@ -45,108 +39,100 @@ export function trivialBound(instance: PlacementInstance): number {
     : instance.nets.reduce((sum, net) => sum + net.weight * net.consumers.length, 0);
 }
 
-/** The objective's pairwise under-estimate. */
-export function pairCosts(instance: PlacementInstance): WeightedPair[] {
-  const { tileCount, distance } = instance;
-  const limit = reachPairs(instance);
-  if (instance.objective === 'path') {
-    return instance.pairs.map(({ from, to, weight }) => ({
-      a: from,
-      b: to,
-      cost: (p, q) => {
-        const hops = distance[p * tileCount + q] as number;
-        return withinReach(instance, hops) ? weight * hops : Number.POSITIVE_INFINITY;
-      },
-    }));
-  }
-  const undirected = undirectedDistance(instance);
-  const wire = instance.nets.flatMap(({ source, consumers, weight }) => {
-    const ops = [source, ...consumers];
-    const share = weight / (Math.floor(ops.length / 2) * Math.ceil(ops.length / 2));
-    return ops.flatMap((a, i) =>
-      ops.slice(i + 1).map((b) => ({
-        a,
-        b,
-        cost: (p: number, q: number) => share * (undirected[p * tileCount + q] as number),
-      })),
-    );
-  });
-  return [...wire, ...limit];
+interface Neighbour {
+  candidates: readonly number[];
+  costs: { weight: number; table: TileTable }[];
 }
 
-/** Pairs that cost nothing but forbid paths beyond the limit. */
-function reachPairs(instance: PlacementInstance): WeightedPair[] {
-  const { tileCount, distance } = instance;
-  return instance.pairs.map(({ from, to }) => ({
-    a: from,
-    b: to,
-    cost: (p, q) =>
-      withinReach(instance, distance[p * tileCount + q] as number) ? 0 : Number.POSITIVE_INFINITY,
-  }));
+/** Each op's neighbours with the costs of all pairs to them, the op's own tile first. */
+function neighbourCosts(instance: PlacementInstance, pairs: readonly WeightedPair[]): Neighbour[][] {
+  const flipped = new Map<TileTable, TileTable>();
+  const flip = (table: TileTable): TileTable => {
+    const known = flipped.get(table) ?? transposed(table, instance.tileCount);
+    flipped.set(table, known);
+    return known;
+  };
+  const groups: Map<number, Neighbour>[] = Array.from({ length: instance.opCount }, () => new Map());
+  const add = (op: number, other: number, cost: Neighbour['costs'][number]) => {
+    const known = groups[op]?.get(other);
+    if (known) known.costs.push(cost);
+    else groups[op]?.set(other, { candidates: instance.candidates[other] ?? [], costs: [cost] });
+  };
+  for (const { a, b, weight, table } of pairs) {
+    add(a, b, { weight, table });
+    add(b, a, { weight, table: flip(table) });
+  }
+  return groups.map((group) => [...group.values()]);
 }
 
-/**
- * Hops where links may be walked both ways, no more than the hops of any tree between two of its tiles.
- * Where all distances are symmetric they are these; otherwise Floyd and Warshall's method, or the one-hop floor on
- * fabrics too large for it.
- */
-export function undirectedDistance(instance: PlacementInstance): Float64Array {
-  const { tileCount, distance } = instance;
-  const both = new Float64Array(tileCount * tileCount);
-  let symmetric = true;
-  for (let p = 0; p < tileCount; p++) {
-    for (let q = 0; q < tileCount; q++) {
-      const there = distance[p * tileCount + q] as number;
-      const back = distance[q * tileCount + p] as number;
-      if (there !== back) symmetric = false;
-      both[p * tileCount + q] = Math.min(there, back);
-    }
-  }
-  if (symmetric) {
-    return both.map((hops) => (hops === UNREACHABLE_HOPS ? Number.POSITIVE_INFINITY : hops));
-  }
-  if (tileCount > 400) return both.map((hops) => Math.min(hops, 1));
-  for (let m = 0; m < tileCount; m++) {
-    for (let p = 0; p < tileCount; p++) {
-      const toMiddle = both[p * tileCount + m] as number;
-      if (toMiddle >= UNREACHABLE_HOPS) continue;
-      for (let q = 0; q < tileCount; q++) {
-        const through = toMiddle + (both[m * tileCount + q] as number);
-        if (through < (both[p * tileCount + q] as number)) both[p * tileCount + q] = through;
-      }
-    }
-  }
-  return both.map((hops) => (hops >= UNREACHABLE_HOPS ? Number.POSITIVE_INFINITY : hops));
+/** Steps that the stars take, about 5 ns each: costs looked up, and the small assignments. */
+export function starWork(instance: PlacementInstance): number {
+  const neighbours = Array.from({ length: instance.opCount }, () => new Set<number>());
+  const terms =
+    instance.objective === 'path' ? instance.pairs.map(({ from, to }) => [from, to]) : netOps(instance);
+  for (const ops of terms) for (const a of ops) for (const b of ops) if (a !== b) neighbours[a]?.add(b);
+  return neighbours.reduce((sum, others, op) => {
+    const lookups = [...others].reduce((all, other) => all + (instance.candidates[other]?.length ?? 0), 0);
+    const assignment = others.size ** 2 * Math.min(others.size ** 2, instance.tileCount);
+    return sum + (instance.candidates[op]?.length ?? 0) * (lookups + assignment);
+  }, 0);
 }
+
+const netOps = (instance: PlacementInstance): number[][] =>
+  instance.nets.map(({ source, consumers }) => [source, ...consumers]);
 
 function starCosts(instance: PlacementInstance, pairs: readonly WeightedPair[]): Float64Array {
   const { opCount, tileCount, candidates } = instance;
   const star = new Float64Array(opCount * tileCount).fill(Number.POSITIVE_INFINITY);
-  const costsTo: Map<number, WeightedPair[]>[] = Array.from({ length: opCount }, () => new Map());
-  for (const pair of pairs) {
-    const flipped = { a: pair.b, b: pair.a, cost: (p: number, q: number) => pair.cost(q, p) };
-    for (const one of [pair, flipped]) {
-      const group = costsTo[one.a] as Map<number, WeightedPair[]>;
-      group.set(one.b, [...(group.get(one.b) ?? []), one]);
-    }
-  }
-  const allowed = candidates.map((list) => {
-    const flags = new Uint8Array(tileCount);
-    for (const tile of list) flags[tile] = 1;
-    return flags;
+  neighbourCosts(instance, pairs).forEach((neighbours, op) => {
+    for (const p of candidates[op] ?? []) star[op * tileCount + p] = starAt(neighbours, p, tileCount);
   });
-  for (let op = 0; op < opCount; op++) {
-    const neighbours = [...(costsTo[op] as Map<number, WeightedPair[]>)];
-    for (const p of candidates[op] ?? []) {
-      const table = neighbours.map(([other, costs]) =>
-        Float64Array.from({ length: tileCount }, (_, q) => {
-          if (q === p || !allowed[other]?.[q]) return Number.POSITIVE_INFINITY;
-          return costs.reduce((sum, one) => sum + one.cost(p, q), 0);
-        }),
-      );
-      const least = leastAssignment(table.length, tileCount, (row, q) => table[row]?.[q] as number);
-      star[op * tileCount + p] = least === null ? Number.POSITIVE_INFINITY : least.cost;
-    }
-  }
   return star;
+}
+
+/**
+ * The least assignment of d neighbours to tiles. Each needs only its d cheapest tiles: were it on another one, some
+ * of these would be free, as the other neighbours hold d − 1 tiles at most.
+ */
+function starAt(neighbours: readonly Neighbour[], p: number, tileCount: number): number {
+  const cheapest = neighbours.map((neighbour) =>
+    cheapestTiles(neighbour, p * tileCount, p, neighbours.length),
+  );
+  if (cheapest.length <= 1)
+    return cheapest[0]?.values[0] ?? (cheapest.length === 0 ? 0 : Number.POSITIVE_INFINITY);
+  const column = new Map<number, number>();
+  for (const { tiles } of cheapest) for (const q of tiles) if (!column.has(q)) column.set(q, column.size);
+  const table = new Float64Array(cheapest.length * column.size).fill(Number.POSITIVE_INFINITY);
+  cheapest.forEach(({ tiles, values }, row) => {
+    tiles.forEach((q, i) => {
+      table[row * column.size + (column.get(q) as number)] = values[i] as number;
+    });
+  });
+  const least = leastAssignment(
+    cheapest.length,
+    column.size,
+    (row, j) => table[row * column.size + j] as number,
+  );
+  return least === null ? Number.POSITIVE_INFINITY : least.cost;
+}
+
+/** The `count` tiles with the least finite costs, ascending; fewer where there are no more. */
+function cheapestTiles({ candidates, costs }: Neighbour, row: number, p: number, count: number) {
+  const tiles: number[] = [];
+  const values: number[] = [];
+  for (const q of candidates) {
+    if (q === p) continue;
+    let value = 0;
+    for (const { weight, table } of costs) value += weight * (table[row + q] as number);
+    if (value === Number.POSITIVE_INFINITY) continue;
+    if (values.length === count && value >= (values[count - 1] as number)) continue;
+    let at = values.length === count ? count - 1 : values.length;
+    for (; at > 0 && (values[at - 1] as number) > value; at--) {
+      values[at] = values[at - 1] as number;
+      tiles[at] = tiles[at - 1] as number;
+    }
+    values[at] = value;
+    tiles[at] = q;
+  }
+  return { tiles, values };
 }

@@ -10,6 +10,7 @@ import type { InfeasibleReason } from '../outcome';
 import type { CheckedProblem } from '../problem';
 import { opLabel } from '../problem';
 import { explainCrowding } from './explain-crowding';
+import { explainParts } from './explain-parts';
 
 /** Cost: one matching, and for each connection its pairs of candidate tiles. */
 export function explainInfeasible(
@@ -17,7 +18,10 @@ export function explainInfeasible(
   instance: PlacementInstance,
 ): InfeasibleReason | null {
   return (
-    pinConflict(problem) ?? explainCrowding(problem, instance) ?? unreachableConnection(problem, instance)
+    pinConflict(problem) ??
+    explainCrowding(problem, instance) ??
+    unreachableConnection(problem, instance) ??
+    explainParts(problem, instance)
   );
 }
 

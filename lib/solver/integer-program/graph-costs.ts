@@ -5,7 +5,7 @@
  * f = hops(r, ·), capped at the largest finite entry: Σ f · x[to] − Σ f · x[from] bounds the pair's hops, and is
  * equal to them for r = p. Such f are the 1-Lipschitz functions of Kantorovich's dual of transport (1942).
  */
-import { undirectedDistance } from '../bounds/star-bound';
+import { undirectedDistance } from '../bounds/pair-costs';
 import { type PlacementInstance, UNREACHABLE_HOPS } from '../instance';
 import type { AssignmentColumns } from './assignment-columns';
 import type { FillColumns, ProgramBuilder } from './integer-program';

@@ -44,6 +44,8 @@ export interface NegotiateOptions {
   order: readonly number[];
   /** Trees to start from where they are as good as the net alone could have. */
   start: readonly (readonly number[] | undefined)[];
+  /** Looked at before every net; true ends with the trees so far, of which some may be empty. */
+  shouldStop(): boolean;
 }
 
 export function negotiate(
@@ -60,6 +62,7 @@ export function negotiate(
     let pressure = FIRST_PRESSURE;
     let stale = 0;
     for (let round = 0; round < options.maxRounds && best.excess > least && stale < STALE_ROUNDS; round++) {
+      if (options.shouldStop()) break;
       reroute(graph, tasks, options, state, history, pressure);
       const now = snapshot();
       stale = now.excess < best.excess ? 0 : stale + 1;
@@ -72,7 +75,7 @@ export function negotiate(
     });
     for (const tree of state.trees) state.loads.add(tree);
   }
-  polish(graph, tasks, options.objective, options.order, state);
+  polish(graph, tasks, options, state);
   return state;
 }
 
@@ -120,6 +123,7 @@ function routeAlone(graph: FabricGraph, tasks: readonly NetTask[], options: Nego
   for (const i of options.order) {
     const task = tasks[i];
     if (!task) continue;
+    if (options.shouldStop()) return state;
     for (let link = 0; link < cost.length; link++) cost[link] = 1 + tieCost(graph, loads, link);
     const found = netTree(graph, task, cost, options.objective);
     const start = options.start[i];
@@ -167,6 +171,7 @@ function reroute(
     const task = tasks[i];
     const tree = trees[i] ?? [];
     if (!task || !tree.some((link) => loads.excess(link) > 0)) continue;
+    if (options.shouldStop()) return;
     loads.remove(tree);
     for (let link = 0; link < cost.length; link++) {
       const over = (loads.nets[link] ?? 0) + 1 - (graph.links[link]?.channels ?? 1);

@@ -30,21 +30,21 @@ interface Polishing {
 export function polish(
   graph: FabricGraph,
   tasks: readonly NetTask[],
-  objective: Objective,
-  order: readonly number[],
+  options: { objective: Objective; order: readonly number[]; shouldStop(): boolean },
   state: { trees: number[][]; aloneHops: readonly number[]; loads: LinkLoads },
 ): void {
   const work: Polishing = {
     graph,
     tasks,
-    objective,
+    objective: options.objective,
     trees: state.trees,
     loads: state.loads,
     cost: new Float64Array(graph.links.length),
   };
   for (let pass = 0; pass < PASSES; pass++) {
     let improved = false;
-    for (const i of order) {
+    for (const i of options.order) {
+      if (options.shouldStop()) return;
       if (hopsOf(work, i) <= (state.aloneHops[i] ?? 0)) continue;
       if (intoFreeRoom(work, i) || byExchange(work, i)) improved = true;
     }

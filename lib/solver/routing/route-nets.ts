@@ -17,6 +17,8 @@ export interface RouteOptions {
   previous?: Routes;
   /** `wire` (the default) shares links; `path` gives every consumer its shortest path first. */
   objective?: Objective;
+  /** Looked at before every net; true ends at once, and then routes may be missing or overfull. */
+  shouldStop?: () => boolean;
 }
 
 export interface NetRoute {
@@ -52,12 +54,14 @@ export function routePlacement(
 ): RoutingResult {
   const tasks = netTasks(kernel, graph, placement);
   const objective = options.objective ?? 'wire';
+  const shouldStop = options.shouldStop ?? (() => false);
   const start = tasks.map((task) => previousTree(graph, task, options.previous));
   const state = negotiate(graph, tasks, {
     objective,
     maxRounds: options.maxRounds ?? 40,
     order: orderOf(tasks.length, options.seed ?? 0),
     start,
+    shouldStop,
   });
   // Threads that are kept are not touched, not even to make them straighter.
   straighten(graph, tasks, state, (i) => sameLinks(state.trees[i], start[i]));
