@@ -6,7 +6,7 @@ import type { Edge, EdgeId, Kernel, Op, OpId } from '@/lib/graph';
 import { nodeSizePx } from '@/lib/graph';
 import type { Selection } from '../store/selection';
 import type { OpFlowNode } from './op-node';
-import { opSentence } from './op-text';
+import { sentencesOf } from './op-text';
 import type { ThreadFlowEdge } from './thread-edge';
 import { threadNumbers } from './thread-style';
 
@@ -58,9 +58,10 @@ export function createFlowElements(): FlowElements {
   return {
     nodes(kernel, { opIds }, dragged) {
       const next = new Map<OpId, NodeEntry>();
+      const sentences = sentencesOf(kernel);
       const nodes = kernel.ops.map((op) => {
         const at = dragged?.get(op.id) ?? op.positionPx;
-        const entry = nodeFor(op, opSentence(kernel, op.id), opIds.has(op.id), at);
+        const entry = nodeFor(op, sentences.get(op.id) ?? '', opIds.has(op.id), at);
         next.set(op.id, entry);
         return entry.node;
       });

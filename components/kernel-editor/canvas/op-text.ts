@@ -1,6 +1,6 @@
 /** The short texts of an op: on its node, and read out. */
 import { type Kernel, type Op, type OpId, opName, opSpec, portsOf } from '@/lib/graph';
-import { indexOf } from '../store/kernel-facts';
+import { indexOf, oncePerKernel } from '../store/kernel-facts';
 
 /** The parameters in small space, such as `x[2 +4]` or `saturate`; empty where all are as usual. */
 export function paramText(op: Op): string {
@@ -16,8 +16,12 @@ export function paramText(op: Op): string {
 const strideText = (stride: string | number | undefined): string =>
   stride === undefined || stride === 1 ? '' : `${Number(stride) < 0 ? '−' : '+'}${Math.abs(Number(stride))}`;
 
-/** Everything that the node shows, as one sentence. */
-export function opSentence(kernel: Kernel, id: OpId): string {
+/** Everything that each node shows, as one sentence. */
+export const sentencesOf: (kernel: Kernel) => ReadonlyMap<OpId, string> = oncePerKernel(
+  (kernel) => new Map(kernel.ops.map((op) => [op.id, opSentence(kernel, op.id)])),
+);
+
+function opSentence(kernel: Kernel, id: OpId): string {
   const index = indexOf(kernel);
   const op = index.opById.get(id);
   if (op === undefined) return '';

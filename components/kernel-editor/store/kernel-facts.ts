@@ -11,7 +11,7 @@ import {
   validateKernel,
 } from '@/lib/graph';
 
-function oncePerKernel<T>(reckon: (kernel: Kernel) => T): (kernel: Kernel) => T {
+export function oncePerKernel<T>(reckon: (kernel: Kernel) => T): (kernel: Kernel) => T {
   const known = new WeakMap<Kernel, { value: T }>();
   return (kernel) => {
     const found = known.get(kernel) ?? { value: reckon(kernel) };
