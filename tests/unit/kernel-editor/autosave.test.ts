@@ -152,17 +152,26 @@ describe('the runner', () => {
     ring(1000);
     ring(ANSWER_DEADLINE_MS);
     expect(runner.state()).toMatchObject({ phase: 'retrying', failures: 2 });
+    ring(2000);
+    // The third request is under way now; the second one's answer says nothing of it.
     sent[1]?.answer({ type: 'saved', revision: 5, atMs: 1 });
     await settle();
-    expect(runner.state().phase).toBe('retrying');
+    expect(runner.state().phase).toBe('saving');
+    sent[2]?.answer({ type: 'saved', revision: 6, atMs: 1 });
+    await settle();
+    expect(runner.state()).toMatchObject({ phase: 'clean', revision: 6 });
   });
 
   test('after stop nothing is heard or sent any more', async () => {
     const { runner, sent, ring } = harness();
     runner.dispatch(edited(one));
-    runner.stop();
     ring(800);
+    runner.stop();
+    sent[0]?.answer({ type: 'saved', revision: 5, atMs: 1 });
     await settle();
-    expect(sent).toEqual([]);
+    runner.dispatch(edited(two));
+    ring(800);
+    expect(runner.state().revision).toBe(4);
+    expect(sent).toHaveLength(1);
   });
 });
