@@ -65,7 +65,10 @@ function Entry({
       error={state.errorOf(field)}
       autoComplete="off"
       onChange={(event) => state.set(field, event.target.value)}
-      onBlur={() => state.leave(field)}
+      // On the way to the button, a new error line would push the button from under the pointer.
+      onBlur={(event) => {
+        if (!isSubmit(event.relatedTarget)) state.leave(field);
+      }}
       {...rest}
     />
   );
@@ -134,3 +137,6 @@ function Clock({ state }: { state: FabricFormState }) {
     </Group>
   );
 }
+
+const isSubmit = (target: EventTarget | null): boolean =>
+  target instanceof HTMLButtonElement && target.type === 'submit';
