@@ -15,10 +15,13 @@ export interface Member {
   role: Role;
 }
 
+/** What a slug can look like at all (db/schema/workspaces.ts); anything else is not worth a question. */
+const slugPattern = /^[a-z0-9-]{1,60}$/;
+
 /** The signed-in person as a member of the workspace, or null. Asked once per request. */
 export const currentMember = cache(async (workspaceSlug: string): Promise<Member | null> => {
   const signedIn = await currentSession();
-  if (!signedIn) return null;
+  if (!signedIn || !slugPattern.test(workspaceSlug)) return null;
   const membership = await findMembership(database(), { slug: workspaceSlug, userId: signedIn.user.id });
   return membership && { user: signedIn.user, ...membership };
 });

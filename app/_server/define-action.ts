@@ -1,6 +1,6 @@
 /**
- * The maker of every server action. Next compares Origin and Host before an action runs; this parses the input,
- * bounds its size, checks access and turns exceptions into results.
+ * The maker of every server action. Next compares Origin and Host before an action runs; this bounds the input's
+ * size, checks access, parses the input and turns exceptions into results.
  */
 import 'server-only';
 import type { z } from 'zod';
@@ -33,10 +33,11 @@ export function defineAction<const A extends Access, S extends InputFor<A>, T>(
           appError('too_large', 'This is more than one request may carry. Make it smaller and try again.'),
         );
       }
+      // Before the input is parsed: a stranger is not told what is wrong with it, and costs no more than this.
+      const caller = await admit(spec.access, slugIn(raw));
+      if (!caller.ok) return caller;
       const input = spec.input.safeParse(raw);
       if (!input.success) return err(invalidInput(input.error));
-      const caller = await admit(spec.access, slugIn(input.data));
-      if (!caller.ok) return caller;
       // S is a schema under a condition, which hides its output from the compiler.
       return await spec.run({ ...caller.value, input: input.data as z.output<S> });
     } catch (thrown) {

@@ -108,6 +108,21 @@ describe('an action for editors', () => {
     expect(code(await call())).toBe('not_signed_in');
   });
 
+  it('says nothing about the input to somebody who may not call it', async () => {
+    expect(code(await action({ workspace: of.slug, size: 0 }))).toBe('not_signed_in');
+    await signInRole('viewer');
+    expect(code(await action({ workspace: of.slug, size: 0 }))).toBe('forbidden');
+  });
+
+  it.each([
+    ['a zero byte', '\0'],
+    ['a long text', 'a'.repeat(900)],
+    ['no text', null as unknown as string],
+  ])('finds no workspace for %s', async (_, workspace) => {
+    await signInRole('owner');
+    expect(code(await action({ workspace, size: 1 }))).toBe('not_found');
+  });
+
   it('names the field that was refused', async () => {
     await signInRole('editor');
     expect(await action({ workspace: of.slug, size: 0 })).toMatchObject({
