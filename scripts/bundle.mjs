@@ -12,6 +12,7 @@ const programs = {
   seed: 'scripts/seed.ts',
   'mail-sink': 'scripts/mail-sink.ts',
   pinloom: 'scripts/pinloom.ts',
+  bench: 'scripts/bench.ts',
   'bench-solve': 'scripts/bench-solve.ts',
   'demo-mappings': 'scripts/demo-mappings.ts',
   'threads/solver': 'lib/solver/worker/thread.ts',
