@@ -1,10 +1,17 @@
 'use client';
 
+import dynamic from 'next/dynamic';
 import { useState } from 'react';
 import type { EditorCalls } from '@/components/kernel-editor/server-calls';
 import { Button } from '@/components/ui/button';
 import { Dialog } from '@/components/ui/dialog';
-import { ImportForm } from './import-form';
+import { LoadingForm } from '@/components/ui/loading-form';
+
+// The readers of both formats come when somebody imports.
+const ImportForm = dynamic(() => import('./import-form').then((module) => module.ImportForm), {
+  ssr: false,
+  loading: LoadingForm,
+});
 
 interface ImportKernelProps {
   workspace: string;

@@ -2,7 +2,8 @@ import { fireEvent, render, screen } from '@testing-library/react';
 import userEvent from '@testing-library/user-event';
 import { beforeAll, describe, expect, it, vi } from 'vitest';
 import type { FabricCommands } from '@/components/fabric-list/fabric-commands';
-import { ImportFabric, readFabricText } from '@/components/fabric-list/import-fabric';
+import { ImportFabric } from '@/components/fabric-list/import-fabric';
+import { readFabricText } from '@/components/fabric-list/import-fabric-form';
 import { newFabric, unitMixPatterns } from '@/lib/fabric/presets';
 import { linkId, tileId } from '@/lib/fabric/tiles';
 import { writeFabricJson } from '@/lib/formats/fabric-json';
@@ -43,6 +44,8 @@ async function openDialog() {
   render(<ImportFabric workspace="tarnbrook" importFabric={importFabric} />);
   const user = userEvent.setup();
   await user.click(screen.getByRole('button', { name: 'Import JSON' }));
+  // The form is loaded when it is first asked for.
+  await screen.findByRole('textbox', { name: 'or its text' });
   const paste = (value: string) =>
     fireEvent.change(screen.getByRole('textbox', { name: 'or its text' }), { target: { value } });
   return { user, importFabric, paste };
