@@ -1,5 +1,5 @@
 /** Numbered states of fabrics. They are only added. */
-import { and, asc, desc, eq, isNull, sql } from 'drizzle-orm';
+import { and, desc, eq, sql } from 'drizzle-orm';
 import type { Fabric, Topology } from '../../lib/fabric/fabric';
 import type { Id } from '../../lib/ids';
 import { err, ok, type Result } from '../../lib/result';
@@ -108,18 +108,6 @@ export function listFabricVersions(
     .orderBy(desc(fabricVersions.number));
 }
 
-export async function getFabricVersion(
-  tx: Tx,
-  of: { workspaceId: Id<'workspace'>; fabricVersionId: Id<'fabricversion'> },
-): Promise<FabricVersionView | null> {
-  const rows = await tx
-    .select(viewColumns)
-    .from(fabricVersions)
-    .innerJoin(users, eq(users.id, fabricVersions.createdBy))
-    .where(and(eq(fabricVersions.workspaceId, of.workspaceId), eq(fabricVersions.id, of.fabricVersionId)));
-  return rows[0] ?? null;
-}
-
 export async function getFabricVersionByNumber(
   tx: Tx,
   of: { workspaceId: Id<'workspace'>; fabricId: Id<'fabric'>; number: number },
@@ -136,37 +124,4 @@ export async function getFabricVersionByNumber(
       ),
     );
   return rows[0] ?? null;
-}
-
-export interface FabricVersionChoice {
-  id: Id<'fabricversion'>;
-  fabricId: Id<'fabric'>;
-  fabricName: string;
-  number: number;
-  label: string;
-  rows: number;
-  cols: number;
-  peCount: number;
-}
-
-/** All versions of fabrics in use, by fabric and then newest first: what a new bench can choose from. */
-export function listFabricVersionChoices(
-  tx: Tx,
-  of: { workspaceId: Id<'workspace'> },
-): Promise<FabricVersionChoice[]> {
-  return tx
-    .select({
-      id: fabricVersions.id,
-      fabricId: fabrics.id,
-      fabricName: fabrics.name,
-      number: fabricVersions.number,
-      label: fabricVersions.label,
-      rows: fabricVersions.rows,
-      cols: fabricVersions.cols,
-      peCount: fabricVersions.peCount,
-    })
-    .from(fabricVersions)
-    .innerJoin(fabrics, eq(fabrics.id, fabricVersions.fabricId))
-    .where(and(eq(fabricVersions.workspaceId, of.workspaceId), isNull(fabrics.archivedAt)))
-    .orderBy(asc(fabrics.name), asc(fabrics.id), desc(fabricVersions.number));
 }

@@ -157,25 +157,6 @@ export async function renameFabric(
   return rows[0] ? ok(rows[0]) : err('not_found');
 }
 
-/** A new fabric with the same draft under another name; without the versions. */
-export async function duplicateFabric(
-  tx: Tx,
-  copy: OneFabric & { userId: Id<'user'>; name: string },
-): Promise<Result<{ id: Id<'fabric'> }, 'not_found'>> {
-  const [source] = await tx
-    .select({ draft: fabrics.draft, errorCount: fabrics.errorCount })
-    .from(fabrics)
-    .where(one(copy));
-  if (!source) return err('not_found');
-  const { id } = await createFabric(tx, {
-    workspaceId: copy.workspaceId,
-    userId: copy.userId,
-    document: { ...source.draft, name: copy.name },
-    errorCount: source.errorCount,
-  });
-  return ok({ id });
-}
-
 /** Puts a fabric away, or takes it back. Its versions and mappings stay as they are. */
 export async function archiveFabric(
   tx: Tx,

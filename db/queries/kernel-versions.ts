@@ -1,5 +1,5 @@
 /** Numbered states of kernels. They are only added. */
-import { and, asc, desc, eq, isNull, sql } from 'drizzle-orm';
+import { and, desc, eq, sql } from 'drizzle-orm';
 import type { Kernel } from '../../lib/graph/kernel';
 import type { Id } from '../../lib/ids';
 import { err, ok, type Result } from '../../lib/result';
@@ -102,18 +102,6 @@ export function listKernelVersions(
     .orderBy(desc(kernelVersions.number));
 }
 
-export async function getKernelVersion(
-  tx: Tx,
-  of: { workspaceId: Id<'workspace'>; kernelVersionId: Id<'kernelversion'> },
-): Promise<KernelVersionView | null> {
-  const rows = await tx
-    .select(viewColumns)
-    .from(kernelVersions)
-    .innerJoin(users, eq(users.id, kernelVersions.createdBy))
-    .where(and(eq(kernelVersions.workspaceId, of.workspaceId), eq(kernelVersions.id, of.kernelVersionId)));
-  return rows[0] ?? null;
-}
-
 export async function getKernelVersionByNumber(
   tx: Tx,
   of: { workspaceId: Id<'workspace'>; kernelId: Id<'kernel'>; number: number },
@@ -130,33 +118,4 @@ export async function getKernelVersionByNumber(
       ),
     );
   return rows[0] ?? null;
-}
-
-export interface KernelVersionChoice {
-  id: Id<'kernelversion'>;
-  kernelId: Id<'kernel'>;
-  kernelName: string;
-  number: number;
-  label: string;
-  opCount: number;
-}
-
-/** All versions of kernels in use, by kernel and then newest first: what a new bench can choose from. */
-export function listKernelVersionChoices(
-  tx: Tx,
-  of: { workspaceId: Id<'workspace'> },
-): Promise<KernelVersionChoice[]> {
-  return tx
-    .select({
-      id: kernelVersions.id,
-      kernelId: kernels.id,
-      kernelName: kernels.name,
-      number: kernelVersions.number,
-      label: kernelVersions.label,
-      opCount: kernelVersions.opCount,
-    })
-    .from(kernelVersions)
-    .innerJoin(kernels, eq(kernels.id, kernelVersions.kernelId))
-    .where(and(eq(kernelVersions.workspaceId, of.workspaceId), isNull(kernels.archivedAt)))
-    .orderBy(asc(kernels.name), asc(kernels.id), desc(kernelVersions.number));
 }

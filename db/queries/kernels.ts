@@ -131,44 +131,6 @@ export async function saveKernelDraft(
   return err(whyNotSaved((await getKernelDraft(tx, save)) ?? undefined));
 }
 
-/** Renames the kernel and its draft; an editor that is open learns of it by the revision. */
-export async function renameKernel(
-  tx: Tx,
-  change: OneKernel & { userId: Id<'user'>; name: string },
-): Promise<Result<{ revision: number }, 'not_found'>> {
-  const rows = await tx
-    .update(kernels)
-    .set({
-      name: change.name,
-      draft: sql`jsonb_set(${kernels.draft}, '{name}', to_jsonb(${change.name}::text))`,
-      revision: sql`${kernels.revision} + 1`,
-      updatedBy: change.userId,
-      updatedAt: sql`now()`,
-    })
-    .where(and(one(change), isNull(kernels.archivedAt)))
-    .returning({ revision: kernels.revision });
-  return rows[0] ? ok(rows[0]) : err('not_found');
-}
-
-/** A new kernel with the same draft under another name; without the versions. */
-export async function duplicateKernel(
-  tx: Tx,
-  copy: OneKernel & { userId: Id<'user'>; name: string },
-): Promise<Result<{ id: Id<'kernel'> }, 'not_found'>> {
-  const [source] = await tx
-    .select({ draft: kernels.draft, errorCount: kernels.errorCount })
-    .from(kernels)
-    .where(one(copy));
-  if (!source) return err('not_found');
-  const { id } = await createKernel(tx, {
-    workspaceId: copy.workspaceId,
-    userId: copy.userId,
-    document: { ...source.draft, name: copy.name },
-    errorCount: source.errorCount,
-  });
-  return ok({ id });
-}
-
 /** Puts a kernel away, or takes it back. Its versions and mappings stay as they are. */
 export async function archiveKernel(
   tx: Tx,
