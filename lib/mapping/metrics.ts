@@ -91,10 +91,6 @@ export const objectiveValue = (
   objective: Objective,
 ): number => (objective === 'wire' ? metrics.totalWireHops : metrics.totalPathHops);
 
-/** Smaller than 0 where `a` is the better mapping: by the objective, ties by the shorter longest path. */
-export const compareMetrics = (a: MappingMetrics, b: MappingMetrics, objective: Objective): number =>
-  objectiveValue(a, objective) - objectiveValue(b, objective) || a.longestPathHops - b.longestPathHops;
-
 const sum = (values: Iterable<number>): number => {
   let total = 0;
   for (const value of values) total += value;

@@ -5,7 +5,6 @@ import {
   indexKernel,
   type Kernel,
   type KernelIndex,
-  netsOf,
   type OpId,
   type Problem,
   validateKernel,
@@ -38,9 +37,4 @@ export const severityByOp: (kernel: Kernel) => ReadonlyMap<OpId, Severity> = onc
 
 export const edgeById: (kernel: Kernel) => ReadonlyMap<EdgeId, Edge> = oncePerKernel(
   (kernel) => new Map(kernel.edges.map((edge) => [edge.id, edge])),
-);
-
-/** A number for each net, by its source: threads are told apart by it. Ops without consumers have none. */
-export const netNumberBySource: (kernel: Kernel) => ReadonlyMap<OpId, number> = oncePerKernel(
-  (kernel) => new Map(netsOf(kernel).map((net, number) => [net.source, number])),
 );

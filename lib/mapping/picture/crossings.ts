@@ -42,11 +42,6 @@ export function weaveChains(threads: readonly (readonly Chain[])[]): Chain[][] {
   );
 }
 
-/** How often lines of different threads cross. For tests and for judging a drawing. */
-export const countCrossings = (threads: readonly (readonly Chain[])[]): number =>
-  findCrossings(threads.flatMap((chains, thread) => chains.flatMap((chain, i) => linesOf(chain, thread, i))))
-    .length;
-
 const lineKey = (thread: number, chain: number, at: number) => `${thread}:${chain}:${at}`;
 
 function linesOf(chain: Chain, thread: number, index: number): Line[] {

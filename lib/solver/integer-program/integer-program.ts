@@ -92,9 +92,6 @@ export function programBuilder(): ProgramBuilder {
 /** Fills the values of a family's own columns from a tiling. */
 export type FillColumns = (tiling: ArrayLike<number>, values: Float64Array) => void;
 
-export const integerCount = (program: IntegerProgram): number =>
-  program.isInteger.reduce((sum, flag) => sum + flag, 0);
-
 export function objectiveAt(program: IntegerProgram, values: ArrayLike<number>): number {
   let sum = program.offset;
   program.cost.forEach((c, column) => {

@@ -39,9 +39,6 @@ export const threadPath = (): string =>
 
 /** A fresh cell to stop a solve with. */
 export const newStopFlag = (): SharedArrayBuffer => new SharedArrayBuffer(4);
-export const raiseStopFlag = (flag: SharedArrayBuffer): void => {
-  Atomics.store(new Int32Array(flag), 0, STOP_BY_PERSON);
-};
 
 /** Rejects for bad input only (`isBadInputError`) and for a thread that cannot start. */
 export function runSolve(
