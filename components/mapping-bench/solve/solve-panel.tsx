@@ -20,7 +20,7 @@ export function SolvePanel(props: SolvePanelProps) {
       <MakingStatus />
       {live ? <Progress {...props} solve={solve} /> : null}
       {solve && !live ? <SolveEnd {...props} solve={solve} /> : null}
-      {!live && !readOnly ? <SettingsForm {...props} /> : null}
+      {!live && !readOnly ? <SettingsForm key={solve?.id} {...props} /> : null}
     </section>
   );
 }
@@ -43,12 +43,18 @@ const times = [
 ];
 const LONGEST_S = 600;
 
+const firstSettings: SolveSettings = { objective: 'wire', engine: 'auto', timeLimitMs: 20_000, seed: 1 };
+
+/** Opens with the settings of the last solve: the form is away while one runs, and after a reload. */
 function SettingsForm({ starting, onStart, solve }: SolvePanelProps) {
-  const [objective, setObjective] = useState<SolveSettings['objective']>('wire');
-  const [engine, setEngine] = useState<SolveSettings['engine']>('auto');
-  const [time, setTime] = useState('20');
-  const [ownSeconds, setOwnSeconds] = useState('120');
-  const [seed, setSeed] = useState('1');
+  const last = solve?.settings ?? firstSettings;
+  const lastSeconds = String(last.timeLimitMs / 1000);
+  const isListed = times.some(({ value }) => value === lastSeconds);
+  const [objective, setObjective] = useState(last.objective);
+  const [engine, setEngine] = useState(last.engine);
+  const [time, setTime] = useState(isListed ? lastSeconds : 'own');
+  const [ownSeconds, setOwnSeconds] = useState(isListed ? '120' : lastSeconds);
+  const [seed, setSeed] = useState(String(last.seed));
   const [fromHere, setFromHere] = useState(true);
   const seconds = Number(time === 'own' ? ownSeconds : time);
   const timeError =
