@@ -1,0 +1,296 @@
+/**
+ * Exact placement and routing by depth-first branch and bound, level by level: each level asks whether any legal
+ * mapping costs at most its cutoff, so the proven bound rises while the search runs, and a low cutoff strikes out most
+ * tiles early (iterative deepening on cost: Korf 1985). At a node the dual ascent raises the relaxation's bound; nets
+ * whose terminals all stand are routed together exactly, and what that costs more is part of the bound.
+ */
+import type { PlacementInstance } from '../instance';
+import { type AscentScratch, ascentScratch, gatherOp, raiseConstant, strikeTile } from './dual-ascent';
+import { type JointRouter, jointRouter, type RoutingFabric } from './joint-routing';
+import { type NetTightening, netTightening } from './net-tightening';
+import { augment, reassignAll } from './reassign';
+import { NOBODY, type PairTable, placeOp, type Relaxation } from './relaxation';
+import { rootRelaxation, tableEntries } from './root-relaxation';
+import { costStep, type StandingNets, standingNets } from './standing-nets';
+import { fabricSymmetries, kernelSymmetries } from './symmetry';
+
+export interface ExactHooks {
+  /** Objective of the best legal mapping so far; Infinity while there is none. Read again and again. */
+  incumbent(): number;
+  shouldStop(): boolean;
+  /** No legal mapping is cheaper than this. Rises. */
+  onBound(bound: number): void;
+  /** A placement with the links of each net; null where nothing is routed (plain quadratic assignment). */
+  onMapping(tiling: Int32Array, netLinks: readonly (readonly number[])[] | null): void;
+  onNodes?(nodes: number): void;
+}
+
+export interface ExactResult {
+  /**
+   * `proved`: the incumbent is optimal. `infeasible`: no legal mapping exists. `unresolved`: some placement's routing was
+   * too hard to settle. `too large`: not tried.
+   */
+  kind: 'proved' | 'infeasible' | 'stopped' | 'unresolved' | 'too large';
+  /** No legal mapping is cheaper. */
+  bound: number;
+  nodes: number;
+}
+
+/** Entries of all pair tables above which the search is left out: a node keeps its own. */
+export const TABLE_ENTRIES_LIMIT = 2_500_000;
+const SYMMETRY_LIMIT = 256;
+const ROOT_SWEEPS = 40;
+const NODE_SWEEPS = 2;
+const LEAST_GAIN = 0.02;
+/** Conflicts looked at for the nets that stand at an inner node, and for a whole placement. */
+const INNER_ROUTE_NODES = 40;
+const LEAF_ROUTE_NODES = 20_000;
+const EPSILON = 1e-6;
+
+interface Search {
+  instance: PlacementInstance;
+  hooks: ExactHooks;
+  scratch: AscentScratch;
+  router: JointRouter | null;
+  nets: StandingNets;
+  tightening: NetTightening;
+  fabricImages: readonly Int32Array[];
+  kernelImages: readonly Int32Array[];
+  /** Tile of each placed op, −1 for free ones. */
+  tileOf: Int32Array;
+  /** All objectives are multiples of it. */
+  step: number;
+  nodes: number;
+  stopped: boolean;
+  /** The least cutoff at which a placement was met that could be neither routed nor refused. */
+  openAt: number;
+}
+
+/** `fabric` null: nothing is routed. Deterministic, except where `shouldStop` ends it. */
+export function exactSearch(
+  instance: PlacementInstance,
+  fabric: RoutingFabric | null,
+  hooks: ExactHooks,
+): ExactResult {
+  if (tableEntries(instance) > TABLE_ENTRIES_LIMIT) return { kind: 'too large', bound: 0, nodes: 0 };
+  const root = rootRelaxation(instance);
+  if (!root) return { kind: 'infeasible', bound: Number.POSITIVE_INFINITY, nodes: 0 };
+  const router = fabric && jointRouter(fabric, instance.objective);
+  const search: Search = {
+    instance,
+    hooks,
+    scratch: ascentScratch(instance.opCount, instance.tileCount),
+    router,
+    nets: standingNets(instance),
+    tightening: netTightening(instance, router),
+    fabricImages: fabricSymmetries(instance, fabric?.links ?? [], SYMMETRY_LIMIT),
+    kernelImages: kernelSymmetries(instance, SYMMETRY_LIMIT),
+    tileOf: new Int32Array(instance.opCount).fill(-1),
+    step: costStep(instance),
+    nodes: 0,
+    stopped: false,
+    openAt: Number.POSITIVE_INFINITY,
+  };
+  return deepen(search, root);
+}
+
+/** Raises the cutoff until nothing below the incumbent is left to try. */
+function deepen(search: Search, root: Relaxation): ExactResult {
+  const { hooks, instance, step } = search;
+  const most = dearestCost(instance);
+  const result = (kind: ExactResult['kind'], bound: number): ExactResult => ({
+    kind,
+    bound,
+    nodes: search.nodes,
+  });
+  const limits = { cutoff: Math.min(most, hooks.incumbent()), sweeps: ROOT_SWEEPS, leastGain: LEAST_GAIN };
+  if (!raiseConstant(root, limits, search.scratch)) {
+    const known = hooks.incumbent();
+    return Number.isFinite(known) ? result('proved', known) : result('infeasible', Number.POSITIVE_INFINITY);
+  }
+  let bound = roundUp(root.constant, step);
+  hooks.onBound(bound);
+  let stride = step;
+  for (;;) {
+    const known = hooks.incumbent();
+    if (bound >= known - EPSILON) return result('proved', known);
+    if (bound > most) return result('infeasible', Number.POSITIVE_INFINITY);
+    const cutoff = Math.min(bound + stride - step, known - step, most);
+    const nodesBefore = search.nodes;
+    visit(search, copyOf(root), cutoff, search.fabricImages);
+    if (search.stopped) return result('stopped', bound);
+    if (search.openAt <= cutoff + EPSILON)
+      return result('unresolved', Math.min(search.openAt, hooks.incumbent()));
+    bound = Math.min(cutoff + step, hooks.incumbent());
+    hooks.onBound(bound);
+    // A level that cost little was too low to be worth a pass of its own.
+    stride =
+      search.nodes - nodesBefore < 200 ? 2 * stride : step * Math.max(1, Math.floor(stride / step / 2));
+  }
+}
+
+const roundUp = (value: number, step: number): number => step * Math.ceil((value - EPSILON) / step);
+
+/** Above any mapping's cost: every pair or tree at the number of tiles. */
+function dearestCost({ objective, pairs, nets, tileCount }: PlacementInstance): number {
+  const weights =
+    objective === 'path'
+      ? pairs.map((pair) => pair.weight)
+      : nets.map((net) => net.weight * net.consumers.length);
+  const longest = 65_535;
+  return weights.reduce((sum, weight) => sum + weight, 0) * Math.max(tileCount, longest);
+}
+
+const copyOf = (root: Relaxation): Relaxation => ({
+  ...root,
+  residual: root.residual.slice(),
+  tables: root.tables.slice(),
+  emptyCost: root.emptyCost.slice(),
+  tileOf: root.tileOf.slice(),
+  holderOf: root.holderOf.slice(),
+});
+
+/** Searches below one node; `images` are the fabric's symmetries that keep all placed ops where they are. */
+function visit(search: Search, node: Relaxation, levelCutoff: number, images: readonly Int32Array[]): void {
+  search.nodes++;
+  if (search.nodes % 16 === 0) {
+    search.hooks.onNodes?.(search.nodes);
+    if (search.hooks.shouldStop()) search.stopped = true;
+  }
+  if (search.stopped) return;
+  const cutoff = Math.min(levelCutoff, search.hooks.incumbent() - search.step);
+  if (node.ops.length === 0) {
+    settleLeaf(search, cutoff);
+    return;
+  }
+  const extra = standingExtra(search, node.constant, cutoff);
+  if (extra === null) return;
+  const limits = { cutoff: cutoff - extra, sweeps: NODE_SWEEPS, leastGain: LEAST_GAIN };
+  if (!reassignAll(node, search.scratch) || !raiseConstant(node, limits, search.scratch)) return;
+  const op = branchingOp(node);
+  if (op < 0 || !gatherOp(node, op, limits.cutoff, search.scratch)) return;
+  branch(search, node, op, levelCutoff, images);
+}
+
+/** What routing the standing nets together costs above their own trees; null where that exceeds the cutoff. */
+function standingExtra(search: Search, constant: number, cutoff: number): number | null {
+  const slack = cutoff + EPSILON - constant;
+  if (slack < 0) return null;
+  if (!search.router) return 0;
+  const standing = search.nets.standing(search.tileOf);
+  if (standing.length < 2) return 0;
+  const routed = search.router.route(standing, slack, INNER_ROUTE_NODES);
+  if (routed.kind === 'over') return null;
+  return routed.kind === 'routed' && routed.exact ? routed.extra : 0;
+}
+
+/** The op with the fewest tiles for its number of pairs: its choice decides most. */
+function branchingOp({ ops, domains, residual, tileCount, pairsOf }: Relaxation): number {
+  let chosen = -1;
+  let least = Number.POSITIVE_INFINITY;
+  for (let op = 0; op < ops.length; op++) {
+    let count = 0;
+    for (const tile of domains[op] as Int32Array) {
+      if (residual[op * tileCount + tile] !== Number.POSITIVE_INFINITY) count++;
+    }
+    if (count === 0) return -1;
+    const score = count / (1 + 0.5 * (pairsOf[op] as PairTable[]).length);
+    if (score < least) {
+      least = score;
+      chosen = op;
+    }
+  }
+  return chosen;
+}
+
+function branch(
+  search: Search,
+  node: Relaxation,
+  op: number,
+  cutoff: number,
+  images: readonly Int32Array[],
+): void {
+  const { tileCount, residual } = node;
+  const instanceOp = node.ops[op] as number;
+  const costAt = (tile: number) => residual[op * tileCount + tile] as number;
+  const tiles = [...(node.domains[op] as Int32Array)]
+    .filter((tile) => costAt(tile) !== Number.POSITIVE_INFINITY)
+    .sort((a, b) => costAt(a) - costAt(b) || a - b);
+  for (const tile of tiles) {
+    if (costAt(tile) === Number.POSITIVE_INFINITY) continue;
+    const child = childOf(node, op, tile, search);
+    if (child) {
+      search.tileOf[instanceOp] = tile;
+      search.tightening.tighten(child, instanceOp, search.tileOf);
+      visit(
+        search,
+        child,
+        cutoff,
+        images.filter((image) => image[tile] === tile),
+      );
+      search.tileOf[instanceOp] = -1;
+      if (search.stopped) return;
+    }
+    strikeImages(search, node, instanceOp, tile, images);
+  }
+}
+
+function childOf(node: Relaxation, op: number, tile: number, { scratch }: Search): Relaxation | null {
+  const holder = node.holderOf[tile] as number;
+  const left = node.tileOf[op] as number;
+  const child = placeOp(node, op, tile);
+  if (!child || left === tile) return child;
+  // The op leaves a tile that it held; whoever held the new one, an op or nobody, goes where it is cheapest.
+  const mover = holder === NOBODY ? NOBODY : holder > op ? holder - 1 : holder;
+  child.holderOf[left] = NOBODY;
+  return augment(child, mover, left, scratch) ? child : null;
+}
+
+/** The op on this tile is searched through, and so is every symmetric choice: none of them need be tried below. */
+function strikeImages(
+  search: Search,
+  node: Relaxation,
+  instanceOp: number,
+  tile: number,
+  images: readonly Int32Array[],
+): void {
+  const tiles = new Set(images.map((image) => image[tile] as number));
+  const ops = new Set([instanceOp]);
+  for (const image of search.kernelImages) {
+    if (keepsPlaced(image, search.tileOf)) ops.add(image[instanceOp] as number);
+  }
+  for (const other of ops) {
+    const position = node.ops.indexOf(other);
+    if (position < 0) continue;
+    (node.domains[position] as Int32Array).forEach((at, p) => {
+      if (tiles.has(at)) strikeTile(node, position, p);
+    });
+  }
+}
+
+const keepsPlaced = (image: Int32Array, tileOf: Int32Array): boolean =>
+  image.every((to, op) => to === op || (tileOf[op] as number) < 0);
+
+/** All ops stand: routed at its true cost, it is a mapping, or out of the question, or too hard to say. */
+function settleLeaf(search: Search, cutoff: number): void {
+  const { router, hooks, nets, tileOf } = search;
+  if (!router) {
+    if (nets.pairCost(tileOf) <= cutoff + EPSILON) hooks.onMapping(tileOf.slice(), null);
+    return;
+  }
+  const standing = nets.standing(tileOf);
+  let cost = 0;
+  let exact = true;
+  for (const net of standing) {
+    const tree = router.tree(net);
+    if (!tree) return;
+    cost += tree.cost;
+    exact &&= tree.exact;
+  }
+  const budget = cutoff + EPSILON - cost;
+  if (budget < 0 && exact) return;
+  const routed = router.route(standing, Math.max(0, budget), LEAF_ROUTE_NODES);
+  if (routed.kind === 'routed') hooks.onMapping(tileOf.slice(), routed.links);
+  else if (routed.kind === 'over' && exact) return;
+  if (routed.kind !== 'routed' || !routed.exact) search.openAt = Math.min(search.openAt, cutoff);
+}

@@ -1,0 +1,231 @@
+/**
+ * Routes placed nets together at least cost, exactly: each net takes its own least tree; where a link then carries too
+ * much, one of the nets on it has to do without it, and each choice is tried (branch and bound on the conflicts, as in
+ * conflict-based search for paths: Sharon, Stern, Felner and Sturtevant 2015). Trees are the exact ones of
+ * lib/solver/routing where the net's size allows.
+ */
+import type { LinkGraph } from '../../fabric/link-graph';
+import type { Objective } from '../../mapping/mapping';
+import { shortestPathsTree, steinerTree } from '../routing/steiner-tree';
+
+export interface RoutingFabric extends LinkGraph {
+  maxHops: number | null;
+}
+
+/** A net whose terminals all stand. */
+export interface StandingNet {
+  /** The source's tile, then the consumers'. */
+  tiles: readonly number[];
+  weight: number;
+  /** Weight of each consumer's path, for the objective `path`. */
+  pathWeights: readonly number[];
+}
+
+export interface LeastTree {
+  /** Cost of the links; never above the least cost where `exact`. */
+  cost: number;
+  links: readonly number[];
+  exact: boolean;
+}
+
+export type JointRoute =
+  /** The least cost above the sum of each net's own, and the links of each net. */
+  | { kind: 'routed'; extra: number; links: (readonly number[])[]; exact: boolean }
+  /** No joint routing within the budget. */
+  | { kind: 'over' }
+  /** Too many conflicts for the work allowed. */
+  | { kind: 'unknown' };
+
+export interface JointRouter {
+  /** The net's own least tree; null where it cannot be routed at all. */
+  tree(net: StandingNet): LeastTree | null;
+  /** Routes the nets so that they cost at most `budget` more than their own least trees. */
+  route(nets: readonly StandingNet[], budget: number, maxNodes: number): JointRoute;
+}
+
+const CACHE_LIMIT = 200_000;
+
+export function jointRouter(fabric: RoutingFabric, objective: Objective): JointRouter {
+  const channels = Int32Array.from(fabric.links, (link) => link.channels);
+  const cache = new Map<string, LeastTree | null>();
+  const plain = new Float64Array(fabric.links.length).fill(1);
+
+  const leastTree = (net: StandingNet, barred: readonly number[]): LeastTree | null => {
+    const key = `${net.tiles.join()}|${barred.join()}|${net.weight}|${net.pathWeights.join()}`;
+    const known = cache.get(key);
+    if (known !== undefined) return known;
+    const cost = barred.length === 0 ? plain : plain.slice();
+    for (const link of barred) cost[link] = Number.POSITIVE_INFINITY;
+    const made = objective === 'wire' ? wireTree(fabric, net, cost) : pathTree(fabric, net, cost);
+    if (cache.size >= CACHE_LIMIT) cache.clear();
+    cache.set(key, made);
+    return made;
+  };
+  return {
+    tree: (net) => leastTree(net, []),
+    route: (nets, budget, maxNodes) => routeTogether({ nets, budget, maxNodes, channels, leastTree }),
+  };
+}
+
+function wireTree(
+  fabric: RoutingFabric,
+  { tiles, weight }: StandingNet,
+  cost: Float64Array,
+): LeastTree | null {
+  const [source, ...targets] = tiles;
+  const found = steinerTree(fabric, source as number, targets, cost, { maxDepthHops: fabric.maxHops });
+  if (!found || !Number.isFinite(found.cost)) return null;
+  return { cost: weight * found.links.length, links: found.links, exact: found.exact };
+}
+
+/** Every path is a shortest one, so the sum of their hops cannot be less. */
+function pathTree(fabric: RoutingFabric, net: StandingNet, cost: Float64Array): LeastTree | null {
+  const [source, ...targets] = net.tiles as readonly [number, ...number[]];
+  const links = shortestPathsTree(barredGraph(fabric, cost), source, targets, cost);
+  if (!links) return null;
+  const hops = hopsInTree(fabric, source, links);
+  let total = 0;
+  for (const [i, target] of targets.entries()) {
+    const path = hops.get(target);
+    if (path === undefined || (fabric.maxHops !== null && path > fabric.maxHops)) return null;
+    total += (net.pathWeights[i] ?? 1) * path;
+  }
+  return { cost: total, links, exact: true };
+}
+
+/** The graph without the links that cost Infinity: hops must not count them. */
+function barredGraph(fabric: RoutingFabric, cost: Float64Array): LinkGraph {
+  if (cost.every(Number.isFinite)) return fabric;
+  const open = (lists: LinkGraph['outLinks']) =>
+    lists.map((links) => links.filter((link) => Number.isFinite(cost[link])));
+  return { ...fabric, outLinks: open(fabric.outLinks), inLinks: open(fabric.inLinks) };
+}
+
+function hopsInTree(fabric: RoutingFabric, source: number, links: readonly number[]): Map<number, number> {
+  const hops = new Map([[source, 0]]);
+  const open = new Set(links);
+  for (let grew = true; grew; ) {
+    grew = false;
+    for (const link of open) {
+      const { from, to } = fabric.links[link] as RoutingFabric['links'][number];
+      const before = hops.get(from);
+      if (before === undefined) continue;
+      hops.set(to, before + 1);
+      open.delete(link);
+      grew = true;
+    }
+  }
+  return hops;
+}
+
+interface Task {
+  nets: readonly StandingNet[];
+  budget: number;
+  maxNodes: number;
+  channels: Int32Array;
+  leastTree(net: StandingNet, barred: readonly number[]): LeastTree | null;
+}
+
+interface Branch {
+  trees: readonly LeastTree[];
+  barred: readonly (readonly number[])[];
+  extra: number;
+}
+
+/** A way out of a conflict: the net does without the link. */
+interface Detour {
+  net: number;
+  tree: LeastTree;
+  increase: number;
+}
+
+function routeTogether(task: Task): JointRoute {
+  const { nets, budget, maxNodes } = task;
+  const trees: LeastTree[] = [];
+  for (const net of nets) {
+    const tree = task.leastTree(net, []);
+    if (!tree) return { kind: 'over' };
+    trees.push(tree);
+  }
+  let best: Branch | null = null;
+  let limit = budget;
+  let nodes = 0;
+  const open: Branch[] = [{ trees, barred: nets.map(() => []), extra: 0 }];
+  for (let branch = open.pop(); branch; branch = open.pop()) {
+    if (best ? branch.extra >= best.extra : branch.extra > limit) continue;
+    if (++nodes > maxNodes) return { kind: 'unknown' };
+    const conflict = dearestConflict(task, branch);
+    if (!conflict) {
+      best = branch;
+      limit = branch.extra;
+      if (best.extra === 0) break;
+      continue;
+    }
+    for (const { net, tree, increase } of conflict.detours) {
+      const extra: number = branch.extra + increase;
+      if (best ? extra >= best.extra : extra > limit) continue;
+      open.push({
+        trees: branch.trees.with(net, tree),
+        barred: branch.barred.with(
+          net,
+          [...(branch.barred[net] as number[]), conflict.link].sort((x, y) => x - y),
+        ),
+        extra,
+      });
+    }
+  }
+  if (!best) return { kind: 'over' };
+  return {
+    kind: 'routed',
+    extra: best.extra,
+    links: best.trees.map((tree) => tree.links),
+    exact: best.trees.every((tree) => tree.exact),
+  };
+}
+
+/**
+ * The overfull link whose cheapest way out is dearest; its detours with the cheapest last, so that it is tried first.
+ * One of any channels + 1 nets on the link has to leave it.
+ */
+function dearestConflict(
+  { nets, channels, leastTree }: Task,
+  { trees, barred }: Branch,
+): { link: number; detours: Detour[] } | null {
+  const users = new Map<number, number[]>();
+  trees.forEach((tree, net) => {
+    for (const link of tree.links) {
+      const list = users.get(link);
+      if (list) list.push(net);
+      else users.set(link, [net]);
+    }
+  });
+  let worst: { link: number; detours: Detour[]; least: number } | null = null;
+  for (const [link, on] of users) {
+    const room = channels[link] as number;
+    if (on.length <= room) continue;
+    const ways = on
+      .map((net) => ({
+        net,
+        tree: leastTree(
+          nets[net] as StandingNet,
+          [...(barred[net] as number[]), link].sort((x, y) => x - y),
+        ),
+      }))
+      .map(({ net, tree }) => ({
+        net,
+        tree,
+        increase: tree ? increaseOf(tree, trees[net] as LeastTree) : Number.POSITIVE_INFINITY,
+      }))
+      .sort((x, y) => y.increase - x.increase)
+      .slice(0, room + 1);
+    const least = Math.min(...ways.map((way) => way.increase));
+    if (worst && worst.least >= least) continue;
+    const detours = ways.flatMap(({ net, tree, increase }) => (tree ? [{ net, tree, increase }] : []));
+    worst = { link, detours, least };
+  }
+  return worst;
+}
+
+/** What is surely lost: between trees that may not be least ones, nothing is. */
+const increaseOf = (after: LeastTree, before: LeastTree): number =>
+  after.exact && before.exact ? after.cost - before.cost : 0;

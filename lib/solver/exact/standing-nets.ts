@@ -1,0 +1,50 @@
+/** The nets of an instance as the joint router takes them, and the granularity of its costs. */
+import type { PlacementInstance } from '../instance';
+import type { StandingNet } from './joint-routing';
+
+export interface StandingNets {
+  /** Nets of more than one terminal whose terminals all stand, in the instance's order. */
+  standing(tileOf: Int32Array): StandingNet[];
+  /** The pairs' cost when all ops stand (objective `path`, nothing routed). */
+  pairCost(tileOf: Int32Array): number;
+}
+
+export function standingNets(instance: PlacementInstance): StandingNets {
+  const { pairs, distance, tileCount } = instance;
+  const weightOf = new Map(pairs.map(({ from, to, weight }) => [`${from}>${to}`, weight]));
+  const nets = instance.nets.map(({ source, consumers, weight }) => ({
+    ops: [source, ...consumers],
+    weight,
+    pathWeights: consumers.map((to) => weightOf.get(`${source}>${to}`) ?? 0),
+  }));
+  return {
+    standing(tileOf) {
+      const found: StandingNet[] = [];
+      for (const { ops, weight, pathWeights } of nets) {
+        if (ops.some((op) => (tileOf[op] as number) < 0)) continue;
+        found.push({ tiles: ops.map((op) => tileOf[op] as number), weight, pathWeights });
+      }
+      return found;
+    },
+    pairCost: (tileOf) =>
+      pairs.reduce(
+        (sum, { from, to, weight }) =>
+          sum + weight * (distance[(tileOf[from] as number) * tileCount + (tileOf[to] as number)] as number),
+        0,
+      ),
+  };
+}
+
+/** All objectives are multiples of this: the weights' greatest common divisor, or next to nothing where they are not whole. */
+export function costStep({ objective, pairs, nets }: PlacementInstance): number {
+  const weights = objective === 'path' ? pairs.map((pair) => pair.weight) : nets.map((net) => net.weight);
+  if (weights.length === 0) return 1;
+  if (!weights.every(Number.isInteger)) return 1e-6 * Math.max(...weights);
+  return weights.reduce(greatestCommonDivisor, 0) || 1;
+}
+
+function greatestCommonDivisor(a: number, b: number): number {
+  let [x, y] = [Math.abs(a), Math.abs(b)];
+  while (y > 0) [x, y] = [y, x % y];
+  return x;
+}
