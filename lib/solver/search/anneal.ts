@@ -18,6 +18,7 @@ export interface AnnealSchedule {
 export interface AnnealMoves {
   instance: PlacementInstance;
   cost: PlacementCost;
+  isCandidate(op: number, tile: number): boolean;
   /** For each op and tile, the op's candidates nearest to the tile. */
   nearCandidates: (op: number, tile: number) => readonly number[];
   /** What an op pays to stand on a tile; raised where routes were crowded. */
@@ -41,6 +42,7 @@ export function annealMoves(instance: PlacementInstance, cost: PlacementCost): A
   return {
     instance,
     cost,
+    isCandidate: candidateTest(instance),
     tileCost: new Float64Array(tileCount),
     temperatureUnit: temperatureUnit(instance),
     nearCandidates: (op, tile) => {
@@ -70,46 +72,22 @@ function temperatureUnit(instance: PlacementInstance): number {
   return meanWeight * Math.max(1, Math.sqrt(perOp / 4));
 }
 
-/** Anneals `start` in place of nothing: returns the best tiling met and its cost, tile costs included. */
+/** Anneals `start`, which stays as it is: returns the best tiling met and its cost, tile costs included. */
 export function anneal(
   moves: AnnealMoves,
   start: Int32Array,
   schedule: AnnealSchedule,
   random: Random,
 ): { tiling: Int32Array; cost: number } {
-  const { instance, cost, tileCost } = moves;
+  const { instance, tileCost, isCandidate } = moves;
   const movable = instance.candidates.flatMap((list, op) => (list.length > 1 ? [op] : []));
-  const tiling = start.slice();
-  const opAt = new Int32Array(instance.tileCount).fill(-1);
-  tiling.forEach((tile, op) => {
-    opAt[tile] = op;
-  });
-  let current = cost.total(tiling) + tiling.reduce((sum, tile) => sum + (tileCost[tile] as number), 0);
-  let best = current;
-  let bestTiling = tiling.slice();
+  const walk = startWalk(moves, start);
+  const { tiling, opAt } = walk;
+  let best = walk.current;
+  const bestTiling = tiling.slice();
   if (movable.length === 0) return { tiling: bestTiling, cost: best };
-  const isCandidate = candidateTest(instance);
-  const stamp = new Int32Array(cost.termCount);
-  let tick = 0;
   const cooling = (schedule.endTemperature / schedule.startTemperature) ** (1 / Math.max(1, schedule.moves));
   let temperature = schedule.startTemperature;
-
-  /** Sum of the terms of one or two ops, each term once. */
-  const local = (a: number, b: number): number => {
-    tick++;
-    let sum = tileCost[tiling[a] as number] as number;
-    for (const term of cost.termsOf[a] as readonly number[]) {
-      stamp[term] = tick;
-      sum += cost.term(term, tiling);
-    }
-    if (b < 0) return sum;
-    sum += tileCost[tiling[b] as number] as number;
-    for (const term of cost.termsOf[b] as readonly number[]) {
-      if (stamp[term] !== tick) sum += cost.term(term, tiling);
-    }
-    return sum;
-  };
-
   for (let move = 0; move < schedule.moves; move++, temperature *= cooling) {
     if ((move & 1023) === 1023 && schedule.shouldStop?.()) break;
     const op = movable[random.below(movable.length)] as number;
@@ -118,17 +96,18 @@ export function anneal(
     if (to === from) continue;
     const other = opAt[to] as number;
     if (other >= 0 && !isCandidate(other, from)) continue;
-    const before = local(op, other);
     tiling[op] = to;
     if (other >= 0) tiling[other] = from;
-    const delta = local(op, other) - before;
+    // Of two ops that change places the tiles' prices cancel out.
+    const priced = other >= 0 ? 0 : (tileCost[to] as number) - (tileCost[from] as number);
+    const delta = priced + changedTerms(walk, op, other);
     if (delta <= 0 || random.unit() < Math.exp(-delta / temperature)) {
       opAt[from] = other;
       opAt[to] = op;
-      current += delta;
-      if (current < best - 1e-9) {
-        best = current;
-        bestTiling = tiling.slice();
+      accept(walk, delta);
+      if (walk.current < best - 1e-9) {
+        best = walk.current;
+        bestTiling.set(tiling);
       }
     } else {
       tiling[op] = from;
@@ -138,8 +117,77 @@ export function anneal(
   return { tiling: bestTiling, cost: best };
 }
 
+/** A tiling on its way, with what each term costs on it. */
+interface Walk {
+  cost: PlacementCost;
+  tiling: Int32Array;
+  opAt: Int32Array;
+  current: number;
+  termValue: Float64Array;
+  /** The terms of the move at hand and what they would cost. */
+  changed: Int32Array;
+  changedValue: Float64Array;
+  changedCount: number;
+  stamp: Int32Array;
+  tick: number;
+}
+
+function startWalk({ instance, cost, tileCost }: AnnealMoves, start: Int32Array): Walk {
+  const tiling = start.slice();
+  const termValue = Float64Array.from({ length: cost.termCount }, (_, term) => cost.term(term, tiling));
+  const opAt = new Int32Array(instance.tileCount).fill(-1);
+  tiling.forEach((tile, op) => {
+    opAt[tile] = op;
+  });
+  return {
+    cost,
+    tiling,
+    opAt,
+    current:
+      termValue.reduce((sum, value) => sum + value, 0) +
+      tiling.reduce((sum, tile) => sum + (tileCost[tile] as number), 0),
+    termValue,
+    changed: new Int32Array(cost.termCount),
+    changedValue: new Float64Array(cost.termCount),
+    changedCount: 0,
+    stamp: new Int32Array(cost.termCount),
+    tick: 0,
+  };
+}
+
+/** By how much the terms of one or two ops differ on the tiling as it is now; each term counts once. */
+function changedTerms(walk: Walk, op: number, other: number): number {
+  const { cost, tiling, termValue, changed, changedValue, stamp } = walk;
+  const tick = ++walk.tick;
+  let count = 0;
+  let delta = 0;
+  let terms = cost.termsOf[op] as readonly number[];
+  for (let which = 0; which < 2; which++) {
+    for (let k = 0; k < terms.length; k++) {
+      const term = terms[k] as number;
+      if (stamp[term] === tick) continue;
+      stamp[term] = tick;
+      const value = cost.term(term, tiling);
+      changed[count] = term;
+      changedValue[count++] = value;
+      delta += value - (termValue[term] as number);
+    }
+    if (other < 0) break;
+    terms = cost.termsOf[other] as readonly number[];
+  }
+  walk.changedCount = count;
+  return delta;
+}
+
+function accept(walk: Walk, delta: number): void {
+  walk.current += delta;
+  for (let k = 0; k < walk.changedCount; k++) {
+    walk.termValue[walk.changed[k] as number] = walk.changedValue[k] as number;
+  }
+}
+
 /** Mostly a tile near one of the op's neighbours, otherwise any candidate. */
-function pickTile(moves: AnnealMoves, tiling: Int32Array, op: number, random: Random): number {
+export function pickTile(moves: AnnealMoves, tiling: Int32Array, op: number, random: Random): number {
   const neighbours = moves.cost.neighboursOf[op] as readonly number[];
   if (neighbours.length > 0 && random.unit() < 0.8) {
     const neighbour = neighbours[random.below(neighbours.length)] as number;
