@@ -1,5 +1,6 @@
 /** From a tiling to a legal mapping: routed, verified, measured. Nothing else becomes an answer. */
 
+import { netsOf } from '../graph/nets';
 import type { Placement, Routes } from '../mapping/mapping';
 import { measureMapping, objectiveValue } from '../mapping/metrics';
 import { verifyMapping } from '../mapping/verify';
@@ -13,18 +14,23 @@ export type LegalAnswer =
   /** Ends of the links that carry too much, or of paths that are too long. */
   | { ok: false; crowdedTiles: number[] };
 
-/** `shouldStop` ends the routing; what is not routed by then is not legal. */
+/**
+ * `shouldStop` ends the routing; what is not routed by then is not legal. `trees` are link indices for each of the
+ * kernel's nets, in the order of `netsOf`, to start from.
+ */
 export function legalMapping(
   problem: CheckedProblem,
   tiling: ArrayLike<number>,
   seed: number,
   shouldStop: () => boolean,
+  trees?: readonly (readonly number[])[],
 ): LegalAnswer {
   const placement = placementOf(problem.kernel, problem.graph, tiling);
   const routed = routePlacement(problem.kernel, problem.graph, placement, {
     objective: problem.objective,
     seed,
     shouldStop,
+    ...(trees && { previous: routesOf(problem, trees), keepPrevious: true }),
   });
   const mapping = verifiedMapping(problem, placement, routed.routes);
   if (mapping) return { ok: true, mapping };
@@ -34,6 +40,14 @@ export function legalMapping(
     if (link) for (const tile of [link.from, link.to]) crowded.add(tile);
   }
   return { ok: false, crowdedTiles: [...crowded] };
+}
+
+function routesOf({ kernel, graph }: CheckedProblem, trees: readonly (readonly number[])[]): Routes {
+  const routes: Routes = {};
+  netsOf(kernel).forEach(({ source }, net) => {
+    routes[source] = (trees[net] ?? []).flatMap((link) => graph.links[link]?.id ?? []);
+  });
+  return routes;
 }
 
 /** Null where any rule of R1 to R7 is broken. */

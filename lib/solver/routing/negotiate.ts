@@ -44,6 +44,8 @@ export interface NegotiateOptions {
   order: readonly number[];
   /** Trees to start from where they are as good as the net alone could have. */
   start: readonly (readonly number[] | undefined)[];
+  /** Starts from `start` in any case. */
+  keepStart?: boolean;
   /** Looked at before every net; true ends with the trees so far, of which some may be empty. */
   shouldStop(): boolean;
 }
@@ -129,10 +131,11 @@ function routeAlone(graph: FabricGraph, tasks: readonly NetTask[], options: Nego
     const start = options.start[i];
     const links = found?.links ?? [];
     const alone = objectiveHops(graph, task, links, options.objective);
-    const tree =
-      start && objectiveHops(graph, task, start, options.objective) === alone && fits(loads, start)
-        ? [...start]
-        : links;
+    const isKept =
+      start &&
+      (options.keepStart ||
+        (objectiveHops(graph, task, start, options.objective) === alone && fits(loads, start)));
+    const tree = isKept ? [...start] : links;
     state.trees[i] = tree;
     state.aloneHops[i] = alone;
     state.exact[i] = found?.exact ?? false;

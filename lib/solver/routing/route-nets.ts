@@ -15,6 +15,8 @@ export interface RouteOptions {
   maxRounds?: number;
   /** Routes to keep where they are still as short as can be, so that threads stay put while an op is dragged. */
   previous?: Routes;
+  /** Takes `previous` as it is, however long, where it joins the nets; it is only shortened. */
+  keepPrevious?: boolean;
   /** `wire` (the default) shares links; `path` gives every consumer its shortest path first. */
   objective?: Objective;
   /** Looked at before every net; true ends at once, and then routes may be missing or overfull. */
@@ -61,10 +63,11 @@ export function routePlacement(
     maxRounds: options.maxRounds ?? 40,
     order: orderOf(tasks.length, options.seed ?? 0),
     start,
+    keepStart: options.keepPrevious ?? false,
     shouldStop,
   });
   // Threads that are kept are not touched, not even to make them straighter.
-  straighten(graph, tasks, state, (i) => sameLinks(state.trees[i], start[i]));
+  straighten(graph, tasks, state, (i) => !options.keepPrevious && sameLinks(state.trees[i], start[i]));
   const routes: Routes = {};
   const tooLongEdges: EdgeId[] = [];
   tasks.forEach((task, i) => {

@@ -115,7 +115,7 @@ const withExcess =
   };
 
 /** The hop table itself where every path is within the limit; else paths beyond it at their price. */
-function hopTable(instance: PlacementInstance, inReach: (hops: number) => number): Uint16Array {
+export function hopTable(instance: PlacementInstance, inReach: (hops: number) => number): Uint16Array {
   if (instance.distance.every((hops) => withinReach(instance, hops))) return instance.distance;
   const limit = instance.maxHops ?? 0;
   return instance.distance.map((hops) => {

@@ -1,20 +1,28 @@
 /**
- * Multi-start search: anneals from a matched or given start, then from the best again and again, in slices that
- * grow. Each slice's tiling is made a legal mapping by `settle`; tiles where routes were crowded become dearer.
+ * Multi-start search in slices that grow: annealing without congestion for a first answer at once, then annealing of
+ * ops and routes together, or tabu search where only pairs count. Each slice's tiling is made a legal mapping by
+ * `settle`; tiles where routes were crowded become dearer.
  * Deterministic for a seed as far as time allows: slices are counted in moves, time only ends them.
  */
 import type { PlacementInstance } from '../instance';
 import { type AnnealMoves, anneal, annealMoves } from './anneal';
 import { matchOps } from './matching';
-import { placementCost } from './placement-cost';
+import { LIMIT_PENALTY, placementCost } from './placement-cost';
 import { type Random, seededRandom } from './random';
+import { annealRouted, type RoutedTiling } from './routed-anneal';
+import { type RoutedNets, routedNets, type SearchLink } from './routed-nets';
+import { type TabuSearch, tabuSearch } from './tabu';
 
 export interface SearchHooks {
   shouldStop(): boolean;
-  /** Tries to make the tiling legal. `crowdedTiles` of a failed try become dearer. */
+  /**
+   * Tries to make the tiling legal. `crowdedTiles` of a failed try become dearer. `trees`, where given, are the link
+   * indices of every net's tree, in the order of the instance's nets, and need no more room than there is.
+   */
   settle(
     tiling: Int32Array,
     round: number,
+    trees?: readonly (readonly number[])[],
   ): { ok: true; objectiveValue: number } | { ok: false; crowdedTiles: number[] };
 }
 
@@ -26,69 +34,167 @@ export interface SearchLimits {
   staleRounds: number;
   /** The search ends when a mapping reaches it. */
   bound: number;
+  /** The fabric's links, in the fabric's order. Without them congestion is seen through `settle` only. */
+  links?: readonly SearchLink[];
 }
 
 /** Moves of the first slice, for an answer at once; later slices grow to the last entry times the ops. */
 const MOVES_PER_OP = [60, 400, 800, 1500] as const;
+const ROUTED_MOVES_PER_OP = [400, 800, 1500, 3000, 5000] as const;
+/** Ops counted at most, so that a slice stays short. */
+const MOST_OPS = 120;
 const CROWD_COST = 0.5;
+/** Nets × tiles that may have a tree each. */
+const ROUTED_LIMIT = 2_000_000;
+const TABU_TILES = 128;
+/** Table entries that a slice of tabu search goes through. */
+const TABU_WORK = 2_000_000;
+
+export interface SearchEnd {
+  rounds: number;
+  endedBy: 'stopped' | 'rounds' | 'stale' | 'bound';
+}
 
 export function searchPlacements(
   instance: PlacementInstance,
   start: Int32Array | null,
   limits: SearchLimits,
   hooks: SearchHooks,
-): { rounds: number; endedBy: 'stopped' | 'rounds' | 'stale' | 'bound' } {
+): SearchEnd {
   const first = firstTiling(instance, start);
   if (!first) return { rounds: 0, endedBy: 'rounds' };
-  const moves = annealMoves(instance, placementCost(instance));
-  const random = seededRandom(limits.seed);
-  const tried = new Set<string>();
-  let best = { tiling: first, objectiveValue: Number.POSITIVE_INFINITY };
-  let stale = 0;
-  const settle = (tiling: Int32Array, round: number): void => {
-    const key = tiling.join();
-    if (tried.has(key)) return;
-    tried.add(key);
-    const settled = hooks.settle(tiling, round);
-    if (!settled.ok) {
-      for (const tile of settled.crowdedTiles) {
-        moves.tileCost[tile] = (moves.tileCost[tile] as number) + CROWD_COST;
-      }
-      return;
-    }
-    if (settled.objectiveValue >= best.objectiveValue) return;
-    best = { tiling: tiling.slice(), objectiveValue: settled.objectiveValue };
-    stale = 0;
-  };
-  if (start) settle(first, 0);
+  const search = newSearch(instance, first, limits, hooks);
+  if (start) settle(search, { tiling: first }, 0);
   for (let round = 0; round < limits.rounds; round++) {
-    if (best.objectiveValue <= limits.bound) return { rounds: round, endedBy: 'bound' };
+    if (search.best.objectiveValue <= limits.bound) return { rounds: round, endedBy: 'bound' };
     if (hooks.shouldStop()) return { rounds: round, endedBy: 'stopped' };
-    if (stale >= limits.staleRounds) return { rounds: round, endedBy: 'stale' };
-    stale++;
-    settle(nextTiling(moves, best.tiling, round, random, hooks.shouldStop), round);
+    if (search.stale >= limits.staleRounds) return { rounds: round, endedBy: 'stale' };
+    search.stale++;
+    settle(search, slice(search, round), round);
   }
   return { rounds: limits.rounds, endedBy: 'rounds' };
 }
 
+interface Search {
+  instance: PlacementInstance;
+  moves: AnnealMoves;
+  random: Random;
+  hooks: SearchHooks;
+  routed: RoutedNets | null;
+  tabu: TabuSearch | null;
+  tried: Set<string>;
+  best: { tiling: Int32Array; objectiveValue: number };
+  stale: number;
+}
+
+function newSearch(
+  instance: PlacementInstance,
+  first: Int32Array,
+  limits: SearchLimits,
+  hooks: SearchHooks,
+): Search {
+  const hasTrees = limits.links !== undefined && instance.nets.length * instance.tileCount <= ROUTED_LIMIT;
+  const isForTabu = instance.objective === 'path' && instance.tileCount <= TABU_TILES;
+  return {
+    instance,
+    moves: annealMoves(instance, placementCost(instance)),
+    random: seededRandom(limits.seed),
+    hooks,
+    routed: hasTrees && limits.links ? routedNets(instance, limits.links) : null,
+    tabu: isForTabu ? tabuSearch(instance) : null,
+    tried: new Set(),
+    best: { tiling: first, objectiveValue: Number.POSITIVE_INFINITY },
+    stale: 0,
+  };
+}
+
+type Candidate = { tiling: Int32Array } | RoutedTiling;
+
+function settle(search: Search, found: Candidate, round: number): void {
+  const { tried, moves, best, hooks } = search;
+  const trees = 'trees' in found && found.overfull === 0 ? found.trees : undefined;
+  const key = `${trees && 'cost' in found ? found.cost : ''}:${found.tiling.join()}`;
+  if (tried.has(key)) return;
+  tried.add(key);
+  const settled = hooks.settle(found.tiling, round, trees);
+  if (!settled.ok) {
+    for (const tile of settled.crowdedTiles) {
+      moves.tileCost[tile] = (moves.tileCost[tile] as number) + CROWD_COST;
+    }
+    return;
+  }
+  if (settled.objectiveValue >= best.objectiveValue) return;
+  search.best = { tiling: found.tiling.slice(), objectiveValue: settled.objectiveValue };
+  search.stale = 0;
+}
+
+/** Two quick annealings first; then every method that the problem allows in turn. */
+function slice(search: Search, round: number): Candidate {
+  const { routed, tabu } = search;
+  if (round < 2 || (!routed && !tabu)) return annealSlice(search, round);
+  if (!routed)
+    return round % 8 === 7 ? annealSlice(search, round) : tabuSlice(search, tabu as TabuSearch, round);
+  return routedSlice(search, routed, round);
+}
+
 /** Even rounds start hot, odd ones warm from the best, so that they keep most of it. */
-function nextTiling(
-  moves: AnnealMoves,
-  best: Int32Array,
+function annealSlice(
+  { moves, best, random, hooks }: Search,
   round: number,
-  random: Random,
-  shouldStop: () => boolean,
-): Int32Array {
-  const perOp = MOVES_PER_OP[Math.min(round, MOVES_PER_OP.length - 1)] as number;
-  const scale = Math.max(8, Math.min(best.length, 120));
+): { tiling: Int32Array; cost: number } {
   const unit = moves.temperatureUnit;
-  const hot = round % 2 === 0 ? 4 : 1.2;
   return anneal(
     moves,
-    best,
-    { moves: perOp * scale, startTemperature: hot * unit, endTemperature: 0.15 * unit, shouldStop },
+    best.tiling,
+    {
+      moves: movesOf(MOVES_PER_OP, round, best.tiling.length),
+      startTemperature: (round % 2 === 0 ? 4 : 1.2) * unit,
+      endTemperature: 0.15 * unit,
+      shouldStop: hooks.shouldStop,
+    },
     random,
-  ).tiling;
+  );
+}
+
+const movesOf = (perOp: readonly number[], round: number, opCount: number): number =>
+  (perOp[Math.min(round, perOp.length - 1)] as number) * Math.max(8, Math.min(opCount, MOST_OPS));
+
+/** The table is kept from slice to slice, so that it goes on where it was. */
+function tabuSlice({ instance, best, random, hooks }: Search, tabu: TabuSearch, round: number): Candidate {
+  if (round === 2) tabu.restart(best.tiling);
+  const steps = Math.max(100, Math.min(4000, Math.ceil(TABU_WORK / instance.tileCount ** 2)));
+  return tabu.run(steps, random, hooks.shouldStop);
+}
+
+/**
+ * Even rounds start from a tiling of their own, odd ones from the best. Temperatures stay where the cost still falls,
+ * for hops come whole: much above 1 nothing holds together, below a half nothing moves any more.
+ */
+function routedSlice(search: Search, routed: RoutedNets, round: number): Candidate {
+  const { moves, best, random, hooks } = search;
+  const isFresh = round % 2 === 0;
+  let start = best.tiling;
+  if (isFresh) {
+    const placed =
+      search.tabu && round % 4 === 2 ? tabuSlice(search, search.tabu, round) : annealSlice(search, round);
+    if ('cost' in placed && placed.cost >= LIMIT_PENALTY) return { tiling: placed.tiling };
+    start = placed.tiling;
+  }
+  const unit = moves.temperatureUnit;
+  return annealRouted(
+    moves,
+    routed,
+    start,
+    {
+      moves: movesOf(ROUTED_MOVES_PER_OP, round - 2, start.length),
+      startTemperature: (isFresh ? 1 : 0.7) * unit,
+      endTemperature: 0.5 * unit,
+      startOverfull: 0.7,
+      endOverfull: 2.5,
+      shouldStop: hooks.shouldStop,
+    },
+    random,
+  );
 }
 
 /** The given start where it is whole, else one matched around it, else around none. */

@@ -61,9 +61,7 @@ function boxOfThree(rows: number, cols: number, [a, b, c]: readonly [number, num
 }
 
 function span(a: number, b: number, c: number): number {
-  const low = a < b ? a : b;
-  const high = a < b ? b : a;
-  return (c > high ? c : high) - (c < low ? c : low);
+  return Math.max(a, b, c) - Math.min(a, b, c);
 }
 
 /**
