@@ -7,7 +7,7 @@ export type EngineChoice = (typeof engineChoices)[number];
 export const SOLVE_LIMITS = { timeLimitMs: 3_600_000, seed: 2 ** 31 - 1, memoryLimitMb: 4096 } as const;
 
 export const solveOptionsSchema = z.strictObject({
-  /** `auto` picks the integer-program engine by the model's size; `search` uses none. */
+  /** `auto`: search, then the exact search. `search` proves nothing; the others name an integer-program engine. */
   engine: z.enum(engineChoices),
   timeLimitMs: z.number().int().min(1).max(SOLVE_LIMITS.timeLimitMs),
   seed: z.number().int().min(0).max(SOLVE_LIMITS.seed),

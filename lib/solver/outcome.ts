@@ -35,6 +35,8 @@ interface OutcomeBase {
   objective: Objective;
   elapsedMs: number;
   seed: number;
+  /** Nodes that the exact search looked at. */
+  nodes: number;
 }
 
 export interface OptimalOutcome extends OutcomeBase {
@@ -107,6 +109,8 @@ export interface SolveProgress {
   bound: number;
   gapRatio: number | null;
   elapsedMs: number;
+  /** Nodes that the exact search has looked at. */
+  nodes: number;
 }
 
 /** (objective − bound) / objective, and 0 where both are 0; null without an objective. */

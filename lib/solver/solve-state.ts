@@ -36,6 +36,8 @@ export interface SolveState {
   /** Out of time, stopped by hand, or proved. */
   shouldStop(): boolean;
   noteEngine(name: string): void;
+  /** Nodes that the exact search has looked at. */
+  noteNodes(nodes: number): void;
   finish(fallback: StopReason): SolveOutcome;
   infeasible(explanation: InfeasibleReason): SolveOutcome;
 }
@@ -53,6 +55,7 @@ export function solveState(
   let phase: SolvePhase = 'presolve';
   let best: BestMapping | null = null;
   let bound = 0;
+  let nodes = 0;
   const report = () =>
     onProgress({
       phase,
@@ -60,6 +63,7 @@ export function solveState(
       bound,
       gapRatio: gapRatioOf(best?.objectiveValue ?? null, bound),
       elapsedMs: elapsedMs(),
+      nodes,
     });
   const isProved = () => best !== null && best.objectiveValue <= bound;
   const common = () => ({
@@ -67,6 +71,7 @@ export function solveState(
     objective: problem.objective,
     elapsedMs: Math.round(elapsedMs()),
     seed: options.seed,
+    nodes,
   });
   const cause = (fallback: StopReason): StopReason => {
     if (clock.shouldStop()) return clock.stopCause?.() ?? 'stopped';
@@ -100,6 +105,9 @@ export function solveState(
     noteEngine: (name) => {
       if (!engines.includes(name)) engines.push(name);
     },
+    noteNodes: (looked) => {
+      nodes = looked;
+    },
     finish: (fallback) =>
       best ? found(best, bound, cause(fallback), common()) : nothing(bound, cause(fallback), common()),
     infeasible: (explanation) => ({
@@ -117,7 +125,7 @@ export function solveState(
   };
 }
 
-type Common = Pick<SolveOutcome, 'engine' | 'objective' | 'elapsedMs' | 'seed'>;
+type Common = Pick<SolveOutcome, 'engine' | 'objective' | 'elapsedMs' | 'seed' | 'nodes'>;
 
 function found(best: BestMapping, bound: number, stopReason: StopReason, common: Common): SolveOutcome {
   const { objectiveValue, placement, routes } = best;
@@ -164,7 +172,13 @@ export function interruptedOutcome(
   elapsedMs: number,
   stopReason: StopReason,
 ): SolveOutcome {
-  const common = { engine: options.engine, objective, elapsedMs: Math.round(elapsedMs), seed: options.seed };
+  const common = {
+    engine: options.engine,
+    objective,
+    elapsedMs: Math.round(elapsedMs),
+    seed: options.seed,
+    nodes: last?.nodes ?? 0,
+  };
   const bound = last?.bound ?? 0;
   return last?.best ? found(last.best, bound, stopReason, common) : nothing(bound, stopReason, common);
 }

@@ -6,6 +6,7 @@
 import { ok, type Result } from '../result';
 import { starBound, starWork, trivialBound } from './bounds/star-bound';
 import type { Engine } from './engines/engine';
+import { exactPass } from './exact-pass';
 import { explainInfeasible } from './explain/explain-infeasible';
 import { explainStars } from './explain/explain-stars';
 import { buildInstance, type PlacementInstance } from './instance';
@@ -28,7 +29,7 @@ export interface SolveHooks extends SolveClock {
 /** Work of the star bound above which it is left out: it comes before the first mapping, so within about half a second. */
 const STAR_WORK_LIMIT = 2e7;
 /** The part of the time that the search may take before an engine takes over; more as long as nothing is found. */
-const SEARCH_SHARE = 0.25;
+const SEARCH_SHARE = 0.1;
 const FIRST_MAPPING_SHARE = 0.6;
 
 /**
@@ -70,6 +71,11 @@ function runPasses(
   }
   searchPass(problem, instance, options, state);
   if (options.engine === 'search' || state.shouldStop()) return state.finish('search complete');
+  if (options.engine === 'auto') {
+    const exact = exactPass(problem, instance, state);
+    if (exact.kind === 'infeasible') return state.infeasible(exact.explanation);
+    return state.finish(exact.kind === 'unfinished' ? exact.stop : 'search complete');
+  }
   const engines = enginesFor(options, hooks.engines);
   const placed = placementPass({
     problem,

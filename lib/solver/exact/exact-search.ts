@@ -9,7 +9,7 @@ import { type AscentScratch, ascentScratch, gatherOp, raiseConstant, strikeTile 
 import { type JointRouter, jointRouter, type RoutingFabric } from './joint-routing';
 import { type NetTightening, netTightening } from './net-tightening';
 import { augment, reassignAll } from './reassign';
-import { NOBODY, type PairTable, placeOp, type Relaxation } from './relaxation';
+import { NOBODY, placeOp, type Relaxation } from './relaxation';
 import { rootRelaxation, tableEntries } from './root-relaxation';
 import { costStep, type StandingNets, standingNets } from './standing-nets';
 import { fabricSymmetries, kernelSymmetries } from './symmetry';
@@ -34,6 +34,8 @@ export interface ExactResult {
   /** No legal mapping is cheaper. */
   bound: number;
   nodes: number;
+  /** Some placement was refused because its nets cannot be routed together. */
+  isCongested: boolean;
 }
 
 /** Entries of all pair tables above which the search is left out: a node keeps its own. */
@@ -45,6 +47,7 @@ const LEAST_GAIN = 0.02;
 /** Conflicts looked at for the nets that stand at an inner node, and for a whole placement. */
 const INNER_ROUTE_NODES = 40;
 const LEAF_ROUTE_NODES = 20_000;
+const CHEAP_LEVEL_NODES = 200;
 const EPSILON = 1e-6;
 
 interface Search {
@@ -58,12 +61,15 @@ interface Search {
   kernelImages: readonly Int32Array[];
   /** Tile of each placed op, −1 for free ones. */
   tileOf: Int32Array;
+  /** Pairs of each instance op, before anything is placed. */
+  pairCountOf: Int32Array;
   /** All objectives are multiples of it. */
   step: number;
   nodes: number;
   stopped: boolean;
   /** The least cutoff at which a placement was met that could be neither routed nor refused. */
   openAt: number;
+  isCongested: boolean;
 }
 
 /** `fabric` null: nothing is routed. Deterministic, except where `shouldStop` ends it. */
@@ -72,9 +78,10 @@ export function exactSearch(
   fabric: RoutingFabric | null,
   hooks: ExactHooks,
 ): ExactResult {
-  if (tableEntries(instance) > TABLE_ENTRIES_LIMIT) return { kind: 'too large', bound: 0, nodes: 0 };
+  if (tableEntries(instance) > TABLE_ENTRIES_LIMIT)
+    return { kind: 'too large', bound: 0, nodes: 0, isCongested: false };
   const root = rootRelaxation(instance);
-  if (!root) return { kind: 'infeasible', bound: Number.POSITIVE_INFINITY, nodes: 0 };
+  if (!root) return { kind: 'infeasible', bound: Number.POSITIVE_INFINITY, nodes: 0, isCongested: false };
   const router = fabric && jointRouter(fabric, instance.objective);
   const search: Search = {
     instance,
@@ -86,22 +93,24 @@ export function exactSearch(
     fabricImages: fabricSymmetries(instance, fabric?.links ?? [], SYMMETRY_LIMIT),
     kernelImages: kernelSymmetries(instance, SYMMETRY_LIMIT),
     tileOf: new Int32Array(instance.opCount).fill(-1),
+    pairCountOf: Int32Array.from(root.pairsOf, (pairs) => pairs.length),
     step: costStep(instance),
     nodes: 0,
     stopped: false,
     openAt: Number.POSITIVE_INFINITY,
+    isCongested: false,
   };
-  return deepen(search, root);
+  return deepen(search, root, dearestCost(instance, fabric));
 }
 
 /** Raises the cutoff until nothing below the incumbent is left to try. */
-function deepen(search: Search, root: Relaxation): ExactResult {
-  const { hooks, instance, step } = search;
-  const most = dearestCost(instance);
+function deepen(search: Search, root: Relaxation, most: number): ExactResult {
+  const { hooks, step } = search;
   const result = (kind: ExactResult['kind'], bound: number): ExactResult => ({
     kind,
     bound,
     nodes: search.nodes,
+    isCongested: search.isCongested,
   });
   const limits = { cutoff: Math.min(most, hooks.incumbent()), sweeps: ROOT_SWEEPS, leastGain: LEAST_GAIN };
   if (!raiseConstant(root, limits, search.scratch)) {
@@ -111,34 +120,39 @@ function deepen(search: Search, root: Relaxation): ExactResult {
   let bound = roundUp(root.constant, step);
   hooks.onBound(bound);
   let stride = step;
+  let before = 0;
   for (;;) {
     const known = hooks.incumbent();
     if (bound >= known - EPSILON) return result('proved', known);
     if (bound > most) return result('infeasible', Number.POSITIVE_INFINITY);
     const cutoff = Math.min(bound + stride - step, known - step, most);
-    const nodesBefore = search.nodes;
+    const startNodes = search.nodes;
     visit(search, copyOf(root), cutoff, search.fabricImages);
     if (search.stopped) return result('stopped', bound);
-    if (search.openAt <= cutoff + EPSILON)
-      return result('unresolved', Math.min(search.openAt, hooks.incumbent()));
+    if (search.openAt <= cutoff + EPSILON) return result('unresolved', Math.min(bound, hooks.incumbent()));
     bound = Math.min(cutoff + step, hooks.incumbent());
     hooks.onBound(bound);
-    // A level that cost little was too low to be worth a pass of its own.
-    stride =
-      search.nodes - nodesBefore < 200 ? 2 * stride : step * Math.max(1, Math.floor(stride / step / 2));
+    // A level that cost little, or hardly more than the one before, was too low to be worth a pass of its own.
+    const visited = search.nodes - startNodes;
+    const isCheap = visited < CHEAP_LEVEL_NODES || visited < 3 * before;
+    stride = isCheap ? 2 * stride : step * Math.max(1, Math.floor(stride / step / 2));
+    before = visited;
   }
 }
 
 const roundUp = (value: number, step: number): number => step * Math.ceil((value - EPSILON) / step);
 
-/** Above any mapping's cost: every pair or tree at the number of tiles. */
-function dearestCost({ objective, pairs, nets, tileCount }: PlacementInstance): number {
-  const weights =
-    objective === 'path'
-      ? pairs.map((pair) => pair.weight)
-      : nets.map((net) => net.weight * net.consumers.length);
-  const longest = 65_535;
-  return weights.reduce((sum, weight) => sum + weight, 0) * Math.max(tileCount, longest);
+/** No legal mapping costs more: nets share the fabric's channels, and a path visits no tile twice. */
+function dearestCost(
+  { objective, pairs, nets, tileCount, distance }: PlacementInstance,
+  fabric: RoutingFabric | null,
+): number {
+  const total = (weights: readonly number[]) => weights.reduce((sum, weight) => sum + weight, 0);
+  if (!fabric)
+    return total(pairs.map((pair) => pair.weight)) * distance.reduce((most, hops) => Math.max(most, hops), 0);
+  if (objective === 'path') return total(pairs.map((pair) => pair.weight)) * Math.max(1, tileCount - 1);
+  const channels = total(fabric.links.map((link) => link.channels));
+  return Math.max(1, ...nets.map((net) => net.weight)) * channels;
 }
 
 const copyOf = (root: Relaxation): Relaxation => ({
@@ -167,7 +181,7 @@ function visit(search: Search, node: Relaxation, levelCutoff: number, images: re
   if (extra === null) return;
   const limits = { cutoff: cutoff - extra, sweeps: NODE_SWEEPS, leastGain: LEAST_GAIN };
   if (!reassignAll(node, search.scratch) || !raiseConstant(node, limits, search.scratch)) return;
-  const op = branchingOp(node);
+  const op = branchingOp(node, search.pairCountOf);
   if (op < 0 || !gatherOp(node, op, limits.cutoff, search.scratch)) return;
   branch(search, node, op, levelCutoff, images);
 }
@@ -180,12 +194,15 @@ function standingExtra(search: Search, constant: number, cutoff: number): number
   const standing = search.nets.standing(search.tileOf);
   if (standing.length < 2) return 0;
   const routed = search.router.route(standing, slack, INNER_ROUTE_NODES);
-  if (routed.kind === 'over') return null;
+  if (routed.kind === 'over') {
+    search.isCongested = true;
+    return null;
+  }
   return routed.kind === 'routed' && routed.exact ? routed.extra : 0;
 }
 
-/** The op with the fewest tiles for its number of pairs: its choice decides most. */
-function branchingOp({ ops, domains, residual, tileCount, pairsOf }: Relaxation): number {
+/** The op whose choice decides most: few tiles left for the number of its pairs, placed neighbours included. */
+function branchingOp({ ops, domains, residual, tileCount }: Relaxation, pairCountOf: Int32Array): number {
   let chosen = -1;
   let least = Number.POSITIVE_INFINITY;
   for (let op = 0; op < ops.length; op++) {
@@ -194,7 +211,7 @@ function branchingOp({ ops, domains, residual, tileCount, pairsOf }: Relaxation)
       if (residual[op * tileCount + tile] !== Number.POSITIVE_INFINITY) count++;
     }
     if (count === 0) return -1;
-    const score = count / (1 + 0.5 * (pairsOf[op] as PairTable[]).length);
+    const score = Math.log(count + 0.5) / (1 + (pairCountOf[ops[op] as number] as number));
     if (score < least) {
       least = score;
       chosen = op;
@@ -291,6 +308,9 @@ function settleLeaf(search: Search, cutoff: number): void {
   if (budget < 0 && exact) return;
   const routed = router.route(standing, Math.max(0, budget), LEAF_ROUTE_NODES);
   if (routed.kind === 'routed') hooks.onMapping(tileOf.slice(), routed.links);
-  else if (routed.kind === 'over' && exact) return;
+  else if (routed.kind === 'over' && exact) {
+    search.isCongested = true;
+    return;
+  }
   if (routed.kind !== 'routed' || !routed.exact) search.openAt = Math.min(search.openAt, cutoff);
 }
