@@ -14,6 +14,7 @@ const packages = {
   chromium: () => existsSync('/usr/bin/chromium'),
   graphviz: () => existsSync('/usr/bin/dot'),
   'glpk-utils': () => existsSync('/usr/bin/glpsol'),
+  'coinor-cbc': () => existsSync('/usr/bin/cbc'),
 };
 
 /**

@@ -105,7 +105,7 @@ function summary() {
 }
 
 async function main() {
-  ensureDebianPackages(['postgresql', 'chromium', 'graphviz', 'glpk-utils']);
+  ensureDebianPackages(['postgresql', 'chromium', 'graphviz', 'glpk-utils', 'coinor-cbc']);
   ensureNpmPackages();
   rmSync(OUT, { recursive: true, force: true });
   mkdirSync(OUT, { recursive: true });
