@@ -188,3 +188,88 @@ export function shortestTree(
   }
   return [...tree];
 }
+
+type NamePart = 'op' | 'net' | 'pair' | 'tile' | 'link';
+
+export interface NameFamily {
+  /** What the name begins with in exported text. */
+  title: string;
+  parts: readonly NamePart[];
+  meaning: string;
+}
+
+/** The columns' and rows' names, by what they begin with in the program: short there, spelt out in exported text. */
+export const routedNameFamilies: Record<'columns' | 'rows', Readonly<Record<string, NameFamily>>> = {
+  columns: {
+    x: { title: 'place', parts: ['op', 'tile'], meaning: '1 if the op stands on the tile (R3, R4)' },
+    y: { title: 'use', parts: ['net', 'link'], meaning: "1 if the net's tree uses the link" },
+    f: {
+      title: 'flow',
+      parts: ['net', 'op', 'link'],
+      meaning: 'what runs over the link on its way to the op',
+    },
+  },
+  rows: {
+    place: { title: 'one_tile', parts: ['op'], meaning: 'R1: the op stands on one tile' },
+    tile: { title: 'one_op', parts: ['tile'], meaning: 'R2: at most one op stands on the tile' },
+    reach: { title: 'reach', parts: ['pair', 'tile'], meaning: 'R7: from the tile the consumer is in reach' },
+    channels: { title: 'channels', parts: ['link'], meaning: 'R6: at most as many nets as channels' },
+    on: { title: 'on', parts: ['net', 'op', 'link'], meaning: 'R5: flow only over links that the net uses' },
+    flow: {
+      title: 'balance',
+      parts: ['net', 'op', 'tile'],
+      meaning: 'R5: 1 leaves the source, reaches the op',
+    },
+    hops: {
+      title: 'hops',
+      parts: ['net', 'op'],
+      meaning: 'R7: links of the way, 1 at least, within the clock',
+    },
+    least: { title: 'least', parts: ['net'], meaning: 'implied: as many links as consumers at least' },
+    bound: { title: 'known_bound', parts: [], meaning: 'implied: a proven bound of the objective' },
+  },
+};
+
+const OP_NAME_LENGTH = 32;
+
+/** An op's id; a longer one is cut off and made unique by a mark that ids cannot have, and the op's index. */
+export const exportedOpName = (id: string, index: number): string =>
+  id.length <= OP_NAME_LENGTH ? id : `${id.slice(0, OP_NAME_LENGTH - 5)}~${index}`;
+
+/**
+ * The program of `routedProgram` with names that say which op, net, tile and link they are about: unique, below 100
+ * characters (CBC's limit for LP text), of letters, digits, `_`, `.` and `~`, which LP and MPS both allow.
+ * `opIds` are those of the instance's ops, in its order. Throws on a name of no known family.
+ */
+export function nameRoutedProgram(
+  program: IntegerProgram,
+  instance: PlacementInstance,
+  graph: LinkGraph,
+  opIds: readonly string[],
+): IntegerProgram {
+  const tile = (i: number) => `r${Math.floor(i / instance.cols)}c${i % instance.cols}`;
+  const op = (i: number) => exportedOpName(opIds[i] ?? '', i);
+  const words: Record<NamePart, (index: number) => string> = {
+    op,
+    net: (n) => `net_${op(instance.nets[n]?.source ?? -1)}`,
+    pair: (p) => `${op(instance.pairs[p]?.from ?? -1)}.${op(instance.pairs[p]?.to ?? -1)}`,
+    tile: (i) => `tile_${tile(i)}`,
+    link: (l) => `link_${tile(graph.links[l]?.from ?? -1)}_${tile(graph.links[l]?.to ?? -1)}`,
+  };
+  const rename = (families: Readonly<Record<string, NameFamily>>) => (name: string) => {
+    const [head = '', ...parts] = name.split('_');
+    const family = families[head];
+    if (!family || family.parts.length !== parts.length)
+      throw new RangeError(`No family of names has ${name}`);
+    // x names its tile as it is; all other parts are indices.
+    const spelt = parts.map((part, i) =>
+      part.startsWith('r') ? `tile_${part}` : words[family.parts[i] as NamePart](Number(part)),
+    );
+    return [family.title, ...spelt].join('.');
+  };
+  return {
+    ...program,
+    columnNames: program.columnNames.map(rename(routedNameFamilies.columns)),
+    rowNames: program.rowNames.map(rename(routedNameFamilies.rows)),
+  };
+}
