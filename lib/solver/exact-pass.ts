@@ -30,6 +30,7 @@ export function exactPass(
       const placement = placementOf(problem.kernel, problem.graph, tiling);
       const mapping = netLinks && verifiedMapping(problem, placement, routesOf(problem, instance, netLinks));
       if (mapping) state.offer(mapping);
+      return mapping !== null;
     },
   });
   state.noteNodes(result.nodes);

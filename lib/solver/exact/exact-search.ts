@@ -11,7 +11,7 @@ import { type NetTightening, netTightening } from './net-tightening';
 import { augment, reassignAll } from './reassign';
 import { NOBODY, placeOp, type Relaxation } from './relaxation';
 import { rootRelaxation, tableEntries } from './root-relaxation';
-import { costStep, type StandingNets, standingNets } from './standing-nets';
+import { costStep, type NumberedNet, type StandingNets, standingNets } from './standing-nets';
 import { fabricSymmetries, kernelSymmetries } from './symmetry';
 
 export interface ExactHooks {
@@ -20,8 +20,11 @@ export interface ExactHooks {
   shouldStop(): boolean;
   /** No legal mapping is cheaper than this. Rises. */
   onBound(bound: number): void;
-  /** A placement with the links of each net; null where nothing is routed (plain quadratic assignment). */
-  onMapping(tiling: Int32Array, netLinks: readonly (readonly number[])[] | null): void;
+  /**
+   * A placement with the links of each net; null where nothing is routed (plain quadratic assignment). False when it is
+   * refused after all: then nothing is claimed about it.
+   */
+  onMapping(tiling: Int32Array, netLinks: readonly (readonly number[])[] | null): boolean;
   onNodes?(nodes: number): void;
 }
 
@@ -50,6 +53,13 @@ const LEAF_ROUTE_NODES = 20_000;
 const CHEAP_LEVEL_NODES = 200;
 const EPSILON = 1e-6;
 
+/** What the ops placed so far decide: nets that stand, and the symmetries that leave those ops where they are. */
+interface Decided {
+  nets: readonly NumberedNet[];
+  fabric: readonly Int32Array[];
+  kernel: readonly Int32Array[];
+}
+
 interface Search {
   instance: PlacementInstance;
   hooks: ExactHooks;
@@ -57,8 +67,6 @@ interface Search {
   router: JointRouter | null;
   nets: StandingNets;
   tightening: NetTightening;
-  fabricImages: readonly Int32Array[];
-  kernelImages: readonly Int32Array[];
   /** Tile of each placed op, −1 for free ones. */
   tileOf: Int32Array;
   /** Pairs of each instance op, before anything is placed. */
@@ -90,8 +98,6 @@ export function exactSearch(
     router,
     nets: standingNets(instance),
     tightening: netTightening(instance, router),
-    fabricImages: fabricSymmetries(instance, fabric?.links ?? [], SYMMETRY_LIMIT),
-    kernelImages: kernelSymmetries(instance, SYMMETRY_LIMIT),
     tileOf: new Int32Array(instance.opCount).fill(-1),
     pairCountOf: Int32Array.from(root.pairsOf, (pairs) => pairs.length),
     step: costStep(instance),
@@ -100,11 +106,16 @@ export function exactSearch(
     openAt: Number.POSITIVE_INFINITY,
     isCongested: false,
   };
-  return deepen(search, root, dearestCost(instance, fabric));
+  const decided: Decided = {
+    nets: [],
+    fabric: fabricSymmetries(instance, fabric?.links ?? [], SYMMETRY_LIMIT),
+    kernel: closure(kernelSymmetries(instance, SYMMETRY_LIMIT), SYMMETRY_LIMIT),
+  };
+  return deepen(search, root, decided, dearestCost(instance, fabric));
 }
 
 /** Raises the cutoff until nothing below the incumbent is left to try. */
-function deepen(search: Search, root: Relaxation, most: number): ExactResult {
+function deepen(search: Search, root: Relaxation, decided: Decided, most: number): ExactResult {
   const { hooks, step } = search;
   const result = (kind: ExactResult['kind'], bound: number): ExactResult => ({
     kind,
@@ -127,7 +138,7 @@ function deepen(search: Search, root: Relaxation, most: number): ExactResult {
     if (bound > most) return result('infeasible', Number.POSITIVE_INFINITY);
     const cutoff = Math.min(bound + stride - step, known - step, most);
     const startNodes = search.nodes;
-    visit(search, copyOf(root), cutoff, search.fabricImages);
+    visit(search, copyOf(root), cutoff, decided);
     if (search.stopped) return result('stopped', bound);
     if (search.openAt <= cutoff + EPSILON) return result('unresolved', Math.min(bound, hooks.incumbent()));
     bound = Math.min(cutoff + step, hooks.incumbent());
@@ -164,8 +175,7 @@ const copyOf = (root: Relaxation): Relaxation => ({
   holderOf: root.holderOf.slice(),
 });
 
-/** Searches below one node; `images` are the fabric's symmetries that keep all placed ops where they are. */
-function visit(search: Search, node: Relaxation, levelCutoff: number, images: readonly Int32Array[]): void {
+function visit(search: Search, node: Relaxation, levelCutoff: number, decided: Decided): void {
   search.nodes++;
   if (search.nodes % 16 === 0) {
     search.hooks.onNodes?.(search.nodes);
@@ -174,24 +184,28 @@ function visit(search: Search, node: Relaxation, levelCutoff: number, images: re
   if (search.stopped) return;
   const cutoff = Math.min(levelCutoff, search.hooks.incumbent() - search.step);
   if (node.ops.length === 0) {
-    settleLeaf(search, cutoff);
+    settleLeaf(search, decided.nets, cutoff);
     return;
   }
-  const extra = standingExtra(search, node.constant, cutoff);
+  const extra = standingExtra(search, decided.nets, node.constant, cutoff);
   if (extra === null) return;
   const limits = { cutoff: cutoff - extra, sweeps: NODE_SWEEPS, leastGain: LEAST_GAIN };
   if (!reassignAll(node, search.scratch) || !raiseConstant(node, limits, search.scratch)) return;
   const op = branchingOp(node, search.pairCountOf);
   if (op < 0 || !gatherOp(node, op, limits.cutoff, search.scratch)) return;
-  branch(search, node, op, levelCutoff, images);
+  branch(search, node, op, levelCutoff, decided);
 }
 
 /** What routing the standing nets together costs above their own trees; null where that exceeds the cutoff. */
-function standingExtra(search: Search, constant: number, cutoff: number): number | null {
+function standingExtra(
+  search: Search,
+  standing: readonly NumberedNet[],
+  constant: number,
+  cutoff: number,
+): number | null {
   const slack = cutoff + EPSILON - constant;
   if (slack < 0) return null;
   if (!search.router) return 0;
-  const standing = search.nets.standing(search.tileOf);
   if (standing.length < 2) return 0;
   const routed = search.router.route(standing, slack, INNER_ROUTE_NODES);
   if (routed.kind === 'over') {
@@ -220,13 +234,7 @@ function branchingOp({ ops, domains, residual, tileCount }: Relaxation, pairCoun
   return chosen;
 }
 
-function branch(
-  search: Search,
-  node: Relaxation,
-  op: number,
-  cutoff: number,
-  images: readonly Int32Array[],
-): void {
+function branch(search: Search, node: Relaxation, op: number, cutoff: number, decided: Decided): void {
   const { tileCount, residual } = node;
   const instanceOp = node.ops[op] as number;
   const costAt = (tile: number) => residual[op * tileCount + tile] as number;
@@ -239,16 +247,15 @@ function branch(
     if (child) {
       search.tileOf[instanceOp] = tile;
       search.tightening.tighten(child, instanceOp, search.tileOf);
-      visit(
-        search,
-        child,
-        cutoff,
-        images.filter((image) => image[tile] === tile),
-      );
+      visit(search, child, cutoff, {
+        nets: [...decided.nets, ...search.nets.completedBy(instanceOp, search.tileOf)],
+        fabric: decided.fabric.filter((image) => image[tile] === tile),
+        kernel: decided.kernel.filter((image) => image[instanceOp] === instanceOp),
+      });
       search.tileOf[instanceOp] = -1;
       if (search.stopped) return;
     }
-    strikeImages(search, node, instanceOp, tile, images);
+    strikeImages(node, instanceOp, tile, decided);
   }
 }
 
@@ -264,18 +271,9 @@ function childOf(node: Relaxation, op: number, tile: number, { scratch }: Search
 }
 
 /** The op on this tile is searched through, and so is every symmetric choice: none of them need be tried below. */
-function strikeImages(
-  search: Search,
-  node: Relaxation,
-  instanceOp: number,
-  tile: number,
-  images: readonly Int32Array[],
-): void {
-  const tiles = new Set(images.map((image) => image[tile] as number));
-  const ops = new Set([instanceOp]);
-  for (const image of search.kernelImages) {
-    if (keepsPlaced(image, search.tileOf)) ops.add(image[instanceOp] as number);
-  }
+function strikeImages(node: Relaxation, instanceOp: number, tile: number, { fabric, kernel }: Decided): void {
+  const tiles = new Set(fabric.map((image) => image[tile] as number));
+  const ops = new Set([instanceOp, ...kernel.map((image) => image[instanceOp] as number)]);
   for (const other of ops) {
     const position = node.ops.indexOf(other);
     if (position < 0) continue;
@@ -285,17 +283,28 @@ function strikeImages(
   }
 }
 
-const keepsPlaced = (image: Int32Array, tileOf: Int32Array): boolean =>
-  image.every((to, op) => to === op || (tileOf[op] as number) < 0);
+/** Products of the permutations, breadth first, until there are no more or `limit` of them. */
+function closure(images: readonly Int32Array[], limit: number): Int32Array[] {
+  const known = new Map(images.map((image) => [image.join(), image]));
+  for (const image of known.values()) {
+    for (const next of images) {
+      if (known.size >= limit) return [...known.values()];
+      const product = image.map((to) => next[to] as number);
+      const key = product.join();
+      if (!known.has(key)) known.set(key, product);
+    }
+  }
+  return [...known.values()];
+}
 
 /** All ops stand: routed at its true cost, it is a mapping, or out of the question, or too hard to say. */
-function settleLeaf(search: Search, cutoff: number): void {
-  const { router, hooks, nets, tileOf } = search;
+function settleLeaf(search: Search, standing: readonly NumberedNet[], cutoff: number): void {
+  const { router, hooks, nets, tileOf, instance } = search;
   if (!router) {
-    if (nets.pairCost(tileOf) <= cutoff + EPSILON) hooks.onMapping(tileOf.slice(), null);
+    if (nets.pairCost(tileOf) <= cutoff + EPSILON && !hooks.onMapping(tileOf.slice(), null))
+      leaveOpen(search, cutoff);
     return;
   }
-  const standing = nets.standing(tileOf);
   let cost = 0;
   let exact = true;
   for (const net of standing) {
@@ -307,10 +316,17 @@ function settleLeaf(search: Search, cutoff: number): void {
   const budget = cutoff + EPSILON - cost;
   if (budget < 0 && exact) return;
   const routed = router.route(standing, Math.max(0, budget), LEAF_ROUTE_NODES);
-  if (routed.kind === 'routed') hooks.onMapping(tileOf.slice(), routed.links);
-  else if (routed.kind === 'over' && exact) {
-    search.isCongested = true;
+  if (routed.kind !== 'routed') {
+    if (routed.kind === 'over' && exact) search.isCongested = true;
+    else leaveOpen(search, cutoff);
     return;
   }
-  if (routed.kind !== 'routed' || !routed.exact) search.openAt = Math.min(search.openAt, cutoff);
+  const links: (readonly number[])[] = instance.nets.map(() => []);
+  for (const [i, net] of standing.entries()) links[net.index] = routed.links[i] ?? [];
+  const isTaken = hooks.onMapping(tileOf.slice(), links);
+  if (!isTaken || !routed.exact) leaveOpen(search, cutoff);
 }
+
+const leaveOpen = (search: Search, cutoff: number): void => {
+  search.openAt = Math.min(search.openAt, cutoff);
+};

@@ -19,6 +19,8 @@ export interface StandingNet {
   weight: number;
   /** Weight of each consumer's path, for the objective `path`. */
   pathWeights: readonly number[];
+  /** Its own least tree, once it was asked for. */
+  own?: LeastTree | null;
 }
 
 export interface LeastTree {
@@ -47,10 +49,16 @@ const CACHE_LIMIT = 200_000;
 
 export function jointRouter(fabric: RoutingFabric, objective: Objective): JointRouter {
   const channels = Int32Array.from(fabric.links, (link) => link.channels);
+  const load = new Int32Array(fabric.links.length);
   const cache = new Map<string, LeastTree | null>();
   const plain = new Float64Array(fabric.links.length).fill(1);
 
   const leastTree = (net: StandingNet, barred: readonly number[]): LeastTree | null => {
+    if (barred.length > 0) return treeWithout(net, barred);
+    if (net.own === undefined) net.own = treeWithout(net, barred);
+    return net.own;
+  };
+  const treeWithout = (net: StandingNet, barred: readonly number[]): LeastTree | null => {
     const key = `${net.tiles.join()}|${barred.join()}|${net.weight}|${net.pathWeights.join()}`;
     const known = cache.get(key);
     if (known !== undefined) return known;
@@ -63,7 +71,7 @@ export function jointRouter(fabric: RoutingFabric, objective: Objective): JointR
   };
   return {
     tree: (net) => leastTree(net, []),
-    route: (nets, budget, maxNodes) => routeTogether({ nets, budget, maxNodes, channels, leastTree }),
+    route: (nets, budget, maxNodes) => routeTogether({ nets, budget, maxNodes, channels, load, leastTree }),
   };
 }
 
@@ -123,6 +131,7 @@ interface Task {
   budget: number;
   maxNodes: number;
   channels: Int32Array;
+  load: Int32Array;
   leastTree(net: StandingNet, barred: readonly number[]): LeastTree | null;
 }
 
@@ -147,6 +156,7 @@ function routeTogether(task: Task): JointRoute {
     if (!tree) return { kind: 'over' };
     trees.push(tree);
   }
+  if (!isOverfull(trees, task.channels, task.load)) return routed(trees, 0);
   let best: Branch | null = null;
   let limit = budget;
   let nodes = 0;
@@ -175,12 +185,26 @@ function routeTogether(task: Task): JointRoute {
     }
   }
   if (!best) return { kind: 'over' };
-  return {
-    kind: 'routed',
-    extra: best.extra,
-    links: best.trees.map((tree) => tree.links),
-    exact: best.trees.every((tree) => tree.exact),
-  };
+  return routed(best.trees, best.extra);
+}
+
+const routed = (trees: readonly LeastTree[], extra: number): JointRoute => ({
+  kind: 'routed',
+  extra,
+  links: trees.map((tree) => tree.links),
+  exact: trees.every((tree) => tree.exact),
+});
+
+/** Whether some link carries more nets than it has channels. `load` is a buffer, one entry a link. */
+function isOverfull(trees: readonly LeastTree[], channels: Int32Array, load: Int32Array): boolean {
+  load.fill(0);
+  for (const { links } of trees) {
+    for (const link of links) {
+      load[link] = (load[link] as number) + 1;
+      if ((load[link] as number) > (channels[link] as number)) return true;
+    }
+  }
+  return false;
 }
 
 /**

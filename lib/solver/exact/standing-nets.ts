@@ -3,26 +3,35 @@ import type { PlacementInstance } from '../instance';
 import type { StandingNet } from './joint-routing';
 
 export interface StandingNets {
-  /** Nets of more than one terminal whose terminals all stand, in the instance's order. */
-  standing(tileOf: Int32Array): StandingNet[];
+  /** Nets of the op whose terminals all stand, now that it does; in the instance's order. */
+  completedBy(op: number, tileOf: Int32Array): NumberedNet[];
   /** The pairs' cost when all ops stand (objective `path`, nothing routed). */
   pairCost(tileOf: Int32Array): number;
+}
+
+export interface NumberedNet extends StandingNet {
+  /** Its place in the instance's nets. */
+  index: number;
 }
 
 export function standingNets(instance: PlacementInstance): StandingNets {
   const { pairs, distance, tileCount } = instance;
   const weightOf = new Map(pairs.map(({ from, to, weight }) => [`${from}>${to}`, weight]));
-  const nets = instance.nets.map(({ source, consumers, weight }) => ({
+  const nets = instance.nets.map(({ source, consumers, weight }, index) => ({
+    index,
     ops: [source, ...consumers],
     weight,
     pathWeights: consumers.map((to) => weightOf.get(`${source}>${to}`) ?? 0),
   }));
+  const netsOf = Array.from({ length: instance.opCount }, (_, op) =>
+    nets.filter(({ ops }) => ops.includes(op)),
+  );
   return {
-    standing(tileOf) {
-      const found: StandingNet[] = [];
-      for (const { ops, weight, pathWeights } of nets) {
-        if (ops.some((op) => (tileOf[op] as number) < 0)) continue;
-        found.push({ tiles: ops.map((op) => tileOf[op] as number), weight, pathWeights });
+    completedBy(op, tileOf) {
+      const found: NumberedNet[] = [];
+      for (const { index, ops, weight, pathWeights } of netsOf[op] as typeof nets) {
+        if (ops.some((terminal) => (tileOf[terminal] as number) < 0)) continue;
+        found.push({ index, tiles: ops.map((terminal) => tileOf[terminal] as number), weight, pathWeights });
       }
       return found;
     },
