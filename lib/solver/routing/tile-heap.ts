@@ -10,56 +10,60 @@ export interface TileHeap {
 
 /** An empty heap. A tile may be pushed again with a lower cost; the caller skips outdated entries. */
 export function tileHeap(): TileHeap {
-  const tiles: number[] = [];
-  const costs: number[] = [];
+  let tiles = new Int32Array(64);
+  let costs = new Float64Array(64);
+  let size = 0;
   let last = 0;
-  const before = (a: number, b: number): boolean => {
-    const difference = (costs[a] ?? 0) - (costs[b] ?? 0);
-    return difference < 0 || (difference === 0 && (tiles[a] ?? 0) < (tiles[b] ?? 0));
-  };
-  const swap = (a: number, b: number): void => {
-    const tile = tiles[a] ?? 0;
-    const cost = costs[a] ?? 0;
-    tiles[a] = tiles[b] ?? 0;
-    costs[a] = costs[b] ?? 0;
-    tiles[b] = tile;
-    costs[b] = cost;
-  };
-  const sink = (): void => {
-    let at = 0;
-    for (;;) {
-      const left = 2 * at + 1;
-      if (left >= tiles.length) return;
-      const child = left + 1 < tiles.length && before(left + 1, left) ? left + 1 : left;
-      if (!before(child, at)) return;
-      swap(child, at);
-      at = child;
-    }
+  const grow = (): void => {
+    const [moreTiles, moreCosts] = [new Int32Array(2 * size), new Float64Array(2 * size)];
+    moreTiles.set(tiles);
+    moreCosts.set(costs);
+    [tiles, costs] = [moreTiles, moreCosts];
   };
   return {
     push(tile, cost) {
-      tiles.push(tile);
-      costs.push(cost);
-      let at = tiles.length - 1;
-      while (at > 0 && before(at, (at - 1) >> 1)) {
-        swap(at, (at - 1) >> 1);
-        at = (at - 1) >> 1;
+      if (size === tiles.length) grow();
+      let at = size++;
+      while (at > 0) {
+        const up = (at - 1) >> 1;
+        const above = costs[up] as number;
+        if (above < cost || (above === cost && (tiles[up] as number) <= tile)) break;
+        costs[at] = above;
+        tiles[at] = tiles[up] as number;
+        at = up;
       }
+      costs[at] = cost;
+      tiles[at] = tile;
     },
     pop() {
-      const top = tiles[0];
-      if (top === undefined) return -1;
-      last = costs[0] ?? 0;
-      swap(0, tiles.length - 1);
-      tiles.pop();
-      costs.pop();
-      sink();
+      if (size === 0) return -1;
+      const top = tiles[0] as number;
+      last = costs[0] as number;
+      size--;
+      const tile = tiles[size] as number;
+      const cost = costs[size] as number;
+      let at = 0;
+      for (let child = 1; child < size; child = 2 * at + 1) {
+        const right = child + 1;
+        if (right < size && isBefore(costs, tiles, right, child)) child = right;
+        const below = costs[child] as number;
+        if (cost < below || (cost === below && tile <= (tiles[child] as number))) break;
+        costs[at] = below;
+        tiles[at] = tiles[child] as number;
+        at = child;
+      }
+      costs[at] = cost;
+      tiles[at] = tile;
       return top;
     },
     lastCost: () => last,
     clear() {
-      tiles.length = 0;
-      costs.length = 0;
+      size = 0;
     },
   };
+}
+
+function isBefore(costs: Float64Array, tiles: Int32Array, a: number, b: number): boolean {
+  const difference = (costs[a] as number) - (costs[b] as number);
+  return difference < 0 || (difference === 0 && (tiles[a] as number) < (tiles[b] as number));
 }

@@ -5,7 +5,7 @@
  * upper bound of the least tree (tree-estimate.ts). Paths beyond the hop limit cost `LIMIT_PENALTY` and their excess.
  */
 import { type PlacementInstance, UNREACHABLE_HOPS, withinReach } from '../instance';
-import { type LengthOf, treeEstimate } from './tree-estimate';
+import { type LengthOf, treeEstimates } from './tree-estimate';
 
 export const LIMIT_PENALTY = 1000;
 
@@ -92,10 +92,11 @@ function netTerms(instance: PlacementInstance): Term[] {
   const table = hopTable(instance, (hops) => hops);
   const isLimited = table !== instance.distance;
   const excess = isLimited ? hopTable(instance, () => 0) : null;
+  const estimate = treeEstimates(instance);
   return instance.nets.map(({ source, consumers, weight }) => {
     const ops = [source, ...consumers];
     if (ops.length === 2) return { ops, weight, table, more: null };
-    const length = treeEstimate(instance, ops);
+    const length = estimate(ops);
     return {
       ops,
       weight,

@@ -39,8 +39,10 @@ export interface SearchLimits {
 }
 
 /** Moves of the first slice, for an answer at once; later slices grow to the last entry times the ops. */
-const MOVES_PER_OP = [60, 400, 800, 1500] as const;
-const ROUTED_MOVES_PER_OP = [400, 800, 1500, 3000, 5000] as const;
+const MOVES_PER_OP = [60, 400, 800, 1500, 1500, 3000, 3000, 6000] as const;
+const ROUTED_MOVES_PER_OP = [150, 600, 1500, 3000, 5000] as const;
+/** Above this many, ops and routes together take turns with longer annealing of the ops alone. */
+const MANY_OPS = 60;
 /** Ops counted at most, so that a slice stays short. */
 const MOST_OPS = 120;
 const CROWD_COST = 0.5;
@@ -82,6 +84,7 @@ interface Search {
   hooks: SearchHooks;
   routed: RoutedNets | null;
   tabu: TabuSearch | null;
+  tabuSlices: number;
   tried: Set<string>;
   best: { tiling: Int32Array; objectiveValue: number };
   stale: number;
@@ -102,6 +105,7 @@ function newSearch(
     hooks,
     routed: hasTrees && limits.links ? routedNets(instance, limits.links) : null,
     tabu: isForTabu ? tabuSearch(instance) : null,
+    tabuSlices: 0,
     tried: new Set(),
     best: { tiling: first, objectiveValue: Number.POSITIVE_INFINITY },
     stale: 0,
@@ -128,13 +132,19 @@ function settle(search: Search, found: Candidate, round: number): void {
   search.stale = 0;
 }
 
-/** Two quick annealings first; then every method that the problem allows in turn. */
+/**
+ * Quick annealing first, again if it was good for a mapping; then every method that the problem allows in turn.
+ * Trees make a move dearer the more ops there are, so many ops are mostly annealed without.
+ */
 function slice(search: Search, round: number): Candidate {
-  const { routed, tabu } = search;
-  if (round < 2 || (!routed && !tabu)) return annealSlice(search, round);
-  if (!routed)
-    return round % 8 === 7 ? annealSlice(search, round) : tabuSlice(search, tabu as TabuSearch, round);
-  return routedSlice(search, routed, round);
+  const { routed, tabu, best, instance } = search;
+  const isFound = best.objectiveValue < Number.POSITIVE_INFINITY;
+  if (round === 0 || (round === 1 && isFound)) return annealSlice(search, round);
+  if (routed) {
+    const isPlaced = instance.opCount > MANY_OPS ? round % 4 !== 2 : round % 3 === 1;
+    return isPlaced && isFound ? annealSlice(search, round) : routedSlice(search, routed, round);
+  }
+  return tabu && round % 8 !== 7 ? tabuSlice(search, tabu) : annealSlice(search, round);
 }
 
 /** Even rounds start hot, odd ones warm from the best, so that they keep most of it. */
@@ -160,8 +170,9 @@ const movesOf = (perOp: readonly number[], round: number, opCount: number): numb
   (perOp[Math.min(round, perOp.length - 1)] as number) * Math.max(8, Math.min(opCount, MOST_OPS));
 
 /** The table is kept from slice to slice, so that it goes on where it was. */
-function tabuSlice({ instance, best, random, hooks }: Search, tabu: TabuSearch, round: number): Candidate {
-  if (round === 2) tabu.restart(best.tiling);
+function tabuSlice(search: Search, tabu: TabuSearch): Candidate {
+  const { instance, best, random, hooks } = search;
+  if (search.tabuSlices++ === 0) tabu.restart(best.tiling);
   const steps = Math.max(100, Math.min(4000, Math.ceil(TABU_WORK / instance.tileCount ** 2)));
   return tabu.run(steps, random, hooks.shouldStop);
 }
@@ -172,11 +183,12 @@ function tabuSlice({ instance, best, random, hooks }: Search, tabu: TabuSearch, 
  */
 function routedSlice(search: Search, routed: RoutedNets, round: number): Candidate {
   const { moves, best, random, hooks } = search;
-  const isFresh = round % 2 === 0;
   let start = best.tiling;
+  const isFound = best.objectiveValue < Number.POSITIVE_INFINITY;
+  const isFresh = !isFound || (round % 2 === 0 && start.length <= MANY_OPS);
   if (isFresh) {
     const placed =
-      search.tabu && round % 4 === 2 ? tabuSlice(search, search.tabu, round) : annealSlice(search, round);
+      search.tabu && round % 4 === 2 ? tabuSlice(search, search.tabu) : annealSlice(search, round);
     if ('cost' in placed && placed.cost >= LIMIT_PENALTY) return { tiling: placed.tiling };
     start = placed.tiling;
   }
@@ -186,7 +198,7 @@ function routedSlice(search: Search, routed: RoutedNets, round: number): Candida
     routed,
     start,
     {
-      moves: movesOf(ROUTED_MOVES_PER_OP, round - 2, start.length),
+      moves: movesOf(ROUTED_MOVES_PER_OP, Math.max(0, round - 2), start.length),
       startTemperature: (isFresh ? 1 : 0.7) * unit,
       endTemperature: 0.5 * unit,
       startOverfull: 0.7,

@@ -11,28 +11,48 @@ const PRIM_TERMINALS = 24;
 /** Where no way leads: beyond every length there is. */
 const NO_WAY = 2000;
 
-/** Links of a tree from ops[0] to the others. Source of the trunk tree: single-trunk Steiner trees (Soukup 1981). */
-export function treeEstimate(instance: PlacementInstance, ops: readonly number[]): LengthOf {
-  const [a, b, c] = ops as [number, number, number];
+/** For ops, the first being the source: links of a tree to the others. Trunk trees: Soukup 1981. */
+export function treeEstimates(instance: PlacementInstance): (ops: readonly number[]) => LengthOf {
+  const { rows, cols, isPlainMesh } = instance;
   const hops = (from: number, to: number): number => Math.min(hopsBetween(instance, from, to), NO_WAY);
-  if (ops.length === 2) return (tiling) => hops(tiling[a] as number, tiling[b] as number);
-  if (instance.isPlainMesh) {
-    if (ops.length === 3) return boxOfThree(instance.rows, instance.cols, [a, b, c]);
-    const trunks = trunkTree(instance.rows, instance.cols, ops);
-    if (ops.length > PRIM_TERMINALS) return trunks;
+  const meeting = isPlainMesh ? null : meetingLength(instance.tileCount, hops);
+  return (ops) => {
+    const [a, b, c] = ops as [number, number, number];
+    if (ops.length === 2) return (tiling) => hops(tiling[a] as number, tiling[b] as number);
+    if (ops.length === 3) {
+      if (!meeting) return boxOfThree(rows, cols, [a, b, c]);
+      return (tiling) => meeting(tiling[a] as number, tiling[b] as number, tiling[c] as number);
+    }
+    if (ops.length > PRIM_TERMINALS) return isPlainMesh ? trunkTree(rows, cols, ops) : sourceStar(hops, ops);
     const prim = directedPrim(hops, ops);
+    if (!isPlainMesh) return prim;
+    const trunks = trunkTree(rows, cols, ops);
     return (tiling) => Math.min(prim(tiling), trunks(tiling));
-  }
-  if (ops.length > PRIM_TERMINALS) return sourceStar(hops, ops);
-  if (ops.length > 3) return directedPrim(hops, ops);
-  return (tiling) => {
+  };
+}
+
+/** Up to this many tiles, the answer for three tiles is remembered: 4 MB. */
+const REMEMBERED_TILES = 128;
+
+/** Links from tile p to q and r by the best meeting tile. Cost: the tiles, once for each three of them. */
+function meetingLength(
+  tileCount: number,
+  hops: (from: number, to: number) => number,
+): (p: number, q: number, r: number) => number {
+  const measure = (p: number, q: number, r: number): number => {
     let best = Number.POSITIVE_INFINITY;
-    const [p, q, r] = [tiling[a] as number, tiling[b] as number, tiling[c] as number];
-    for (let m = 0; m < instance.tileCount; m++) {
+    for (let m = 0; m < tileCount; m++) {
       const length = hops(p, m) + hops(m, q) + hops(m, r);
       if (length < best) best = length;
     }
     return best;
+  };
+  if (tileCount > REMEMBERED_TILES) return measure;
+  const known = new Uint16Array(tileCount ** 3);
+  return (p, q, r) => {
+    const at = (p * tileCount + q) * tileCount + r;
+    if (known[at] === 0) known[at] = measure(p, q, r);
+    return known[at] as number;
   };
 }
 
