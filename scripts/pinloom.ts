@@ -3,16 +3,18 @@ import { place } from './command-line/place';
 import { usage } from './command-line/usage';
 import { verify } from './command-line/verify';
 import { model, modelUsage } from './pinloom-model';
+import { qap, qapUsage } from './pinloom-qap';
 
 export type ExitCode = 0 | 2 | 3 | 4;
 
-const allUsage = `${usage}${modelUsage}`;
+const allUsage = `${usage}${modelUsage}${qapUsage}`;
 
 async function run(args: readonly string[]): Promise<ExitCode> {
   const [command, ...rest] = args;
   if (command === 'place') return place(rest);
   if (command === 'verify') return verify(rest);
   if (command === 'model') return model(rest);
+  if (command === 'qap') return qap(rest);
   const wantsHelp = command === undefined || command === '--help' || command === '-h' || command === 'help';
   (command !== undefined && wantsHelp ? process.stdout : process.stderr).write(
     wantsHelp ? allUsage : `There is no command ${command}.\n\n${allUsage}`,
