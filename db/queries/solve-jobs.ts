@@ -25,6 +25,8 @@ export interface SolveView {
   /** (best − bound) / best; null while either is missing. */
   gapRatio: number | null;
   elapsedMs: number;
+  /** Nodes that the exact search has looked at. */
+  nodes: number;
   best: SolveBest | null;
   history: SolveHistoryPoint[];
   outcome: SolveEnd | null;
@@ -44,6 +46,7 @@ const columns = {
   bound: solveJobs.bound,
   gapRatio: solveJobs.gapRatio,
   elapsedMs: solveJobs.elapsedMs,
+  nodes: solveJobs.nodes,
   best: solveJobs.best,
   history: solveJobs.history,
   outcome: solveJobs.outcome,

@@ -39,6 +39,7 @@ export interface SolveProgressNote {
   bound: number | null;
   gapRatio: number | null;
   elapsedMs: number;
+  nodes: number;
   /** Null: nothing better than what is stored. */
   best: SolveBest | null;
   history: SolveHistoryPoint[];
@@ -114,6 +115,7 @@ export async function reportProgress(
       bound: finite(note.bound),
       gapRatio: finite(note.gapRatio),
       elapsedMs: Math.round(note.elapsedMs),
+      nodes: note.nodes,
       history: thinned(note.history),
       leaseUntil: lease,
       ...(note.best ? { best: note.best, bestObjective: note.best.objectiveValue } : {}),
@@ -139,6 +141,7 @@ export async function finishSolve(
       bound: finite(outcome.bound),
       gapRatio: finite(outcome.gapRatio),
       elapsedMs: Math.round(outcome.elapsedMs),
+      nodes: outcome.nodes,
       leaseUntil: null,
       finishedAt: sql`now()`,
       ...(end.best ? { best: end.best, bestObjective: end.best.objectiveValue } : {}),
@@ -170,7 +173,7 @@ export function sweepSolves(tx: Tx): Promise<Sweep> {
         state: sql`case when ${solveJobs.cancelRequested} then 'cancelled' else 'failed' end`,
         leaseUntil: null,
         finishedAt: sql`now()`,
-        outcome: sql`jsonb_build_object('status', 'unknown', 'engine', '', 'elapsedMs', ${solveJobs.elapsedMs},
+        outcome: sql`jsonb_build_object('status', 'unknown', 'engine', '', 'elapsedMs', ${solveJobs.elapsedMs}, 'nodes', ${solveJobs.nodes},
           'objectiveValue', ${solveJobs.bestObjective}, 'bound', ${solveJobs.bound}, 'gapRatio', ${solveJobs.gapRatio},
           'stopReason', case when ${solveJobs.cancelRequested} then 'stopped' else 'worker lost' end,
           'explanation', null, 'reason', case when ${solveJobs.cancelRequested} then null

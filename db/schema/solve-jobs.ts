@@ -1,5 +1,6 @@
 import { sql } from 'drizzle-orm';
 import {
+  bigint,
   boolean,
   check,
   doublePrecision,
@@ -49,6 +50,8 @@ export interface SolveEnd {
   status: 'optimal' | 'feasible' | 'infeasible' | 'unknown';
   engine: string;
   elapsedMs: number;
+  /** Nodes that the exact search looked at. */
+  nodes: number;
   objectiveValue: number | null;
   bound: number | null;
   gapRatio: number | null;
@@ -91,6 +94,8 @@ export const solveJobs = pgTable(
     bound: doublePrecision('bound'),
     gapRatio: doublePrecision('gap_ratio'),
     elapsedMs: integer('elapsed_ms').notNull().default(0),
+    /** Nodes that the exact search has looked at. */
+    nodes: bigint('nodes', { mode: 'number' }).notNull().default(0),
     best: jsonb('best').$type<SolveBest>(),
     history: jsonb('history').$type<SolveHistoryPoint[]>().notNull().default([]),
     /** Null until finished. */

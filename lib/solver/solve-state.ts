@@ -22,6 +22,9 @@ export interface SolveClock {
   stopCause?(): 'stopped' | 'memory limit';
 }
 
+/** How often the number of nodes is reported while nothing else happens. */
+const NODES_EVERY_MS = 250;
+
 export interface SolveState {
   best(): BestMapping | null;
   bound(): number;
@@ -56,7 +59,9 @@ export function solveState(
   let best: BestMapping | null = null;
   let bound = 0;
   let nodes = 0;
-  const report = () =>
+  let reportedMs = 0;
+  const report = () => {
+    reportedMs = elapsedMs();
     onProgress({
       phase,
       best,
@@ -65,6 +70,7 @@ export function solveState(
       elapsedMs: elapsedMs(),
       nodes,
     });
+  };
   const isProved = () => best !== null && best.objectiveValue <= bound;
   const common = () => ({
     engine: engines.join(' + ') || 'presolve',
@@ -107,6 +113,7 @@ export function solveState(
     },
     noteNodes: (looked) => {
       nodes = looked;
+      if (elapsedMs() - reportedMs >= NODES_EVERY_MS) report();
     },
     finish: (fallback) =>
       best ? found(best, bound, cause(fallback), common()) : nothing(bound, cause(fallback), common()),

@@ -125,6 +125,7 @@ const endOf = (outcome: SolveOutcome): SolveEnd => ({
   status: outcome.status,
   engine: outcome.engine,
   elapsedMs: outcome.elapsedMs,
+  nodes: outcome.nodes,
   objectiveValue: outcome.objectiveValue,
   bound: outcome.bound,
   gapRatio: outcome.gapRatio,
@@ -137,6 +138,7 @@ const refusal = (reason: string): SolveEnd => ({
   status: 'unknown',
   engine: '',
   elapsedMs: 0,
+  nodes: 0,
   objectiveValue: null,
   bound: null,
   gapRatio: null,
@@ -176,6 +178,7 @@ function progressLedger(earlier: readonly SolveHistoryPoint[]): ProgressLedger {
         bound: latest?.bound ?? null,
         gapRatio: latest?.gapRatio ?? null,
         elapsedMs: earlierMs + (latest?.elapsedMs ?? 0),
+        nodes: latest?.nodes ?? 0,
         best: best && { objectiveValue: best.objectiveValue, placement: best.placement, routes: best.routes },
         history,
       };

@@ -143,12 +143,13 @@ function Progress({ solve, previewing, readOnly, onStop, onPreview }: SolvePanel
           style={{ width: `${Math.min(100, (100 * solve.elapsedMs) / solve.settings.timeLimitMs)}%` }}
         />
       </div>
-      <dl className="mt-2 grid grid-cols-4 gap-x-2 text-sm">
+      <dl className="mt-2 grid grid-cols-3 gap-x-2 gap-y-1 text-sm">
         {[
           ['Best', bestObjective ?? '–'],
           ['Bound', bound === null ? '–' : Math.round(bound * 100) / 100],
           ['Gap', gapRatio === null ? '–' : `${Math.round(gapRatio * 100)} %`],
           ['Time', durationText(solve.elapsedMs)],
+          ['Nodes', solve.nodes.toLocaleString('en-GB')],
         ].map(([label, value]) => (
           <div key={label}>
             <dt className="text-xs text-quiet">{label}</dt>

@@ -28,6 +28,7 @@ export const solveSchema = z.object({
   bound: z.number().nullable(),
   gapRatio: z.number().nullable(),
   elapsedMs: z.number(),
+  nodes: z.number(),
   best: z.object({ objectiveValue: z.number(), placement: placementSchema, routes: routesSchema }).nullable(),
   history: z.array(
     z.object({ elapsedMs: z.number(), best: z.number().nullable(), bound: z.number().nullable() }),
@@ -102,7 +103,7 @@ const phases: Record<string, string> = {
   presolve: 'Looking for what cannot fit',
   search: 'Searching for good placements',
   bound: 'Raising the lower bound',
-  exact: 'Proving with the integer program',
+  exact: 'Proving by exact search',
   routes: 'Finding routes',
 };
 export const phaseText = (phase: string): string => phases[phase] ?? 'Waiting for a worker';

@@ -1,0 +1,1 @@
+ALTER TABLE "solve_jobs" ADD COLUMN "nodes" bigint DEFAULT 0 NOT NULL;
