@@ -1,7 +1,9 @@
 import '@testing-library/jest-dom/vitest';
-import { cleanup } from '@testing-library/react';
+import { cleanup, configure } from '@testing-library/react';
 import { afterEach } from 'vitest';
 
+// A busy machine is slow, not wrong.
+configure({ asyncUtilTimeout: 10_000 });
 afterEach(cleanup);
 
 // jsdom lays nothing out; the canvas library measures its nodes through these.
