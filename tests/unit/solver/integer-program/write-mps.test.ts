@@ -4,7 +4,7 @@ import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { type IntegerProgram, programBuilder } from '@/lib/solver/integer-program/integer-program';
 import { oneSidedRows, writeLp } from '@/lib/solver/integer-program/write-lp';
 import { writeMps } from '@/lib/solver/integer-program/write-mps';
-import { type OutsideSolvers, outsideSolvers } from './outside-solvers';
+import { type Answer, type OutsideSolvers, outsideSolvers } from './outside-solvers';
 
 let solvers: OutsideSolvers;
 let highs: Highs;
@@ -16,12 +16,15 @@ afterAll(() => solvers.remove());
 
 const INFINITE = Number.POSITIVE_INFINITY;
 
-/** What GLPK, CBC and HiGHS find in the MPS text, then in the LP text. */
-const answers = (program: IntegerProgram) => [
-  ...[solvers.glpk, solvers.cbc, solvers.highs].map((solve) => solve(writeMps(program), 'mps')),
-  ...[solvers.glpk, solvers.cbc, solvers.highs].map((solve) => solve(writeLp(program), 'lp')),
-];
-const six = <T>(value: T): T[] => Array.from({ length: 6 }, () => value);
+const answers = async (program: IntegerProgram) => ({
+  mps: await solvers.answers(writeMps(program), 'mps'),
+  lp: await solvers.answers(writeLp(program), 'lp'),
+});
+/** The same answer of every solver in both formats. */
+const everywhere = (answer: Answer) => {
+  const all = { glpk: answer, cbc: answer, highs: answer };
+  return { mps: all, lp: all };
+};
 
 /** Two whole columns x (1 to 4, cost 1) and y (from 0, cost 2), one fixed at 3, a two-sided row, and an offset of 5. */
 function smallProgram(): IntegerProgram {
@@ -82,25 +85,25 @@ describe('MPS text', () => {
     ]);
   });
 
-  it('counts the offset once: x + y = 2 at x + 2y + 5 gives 7, in both formats', () => {
-    expect(answers(smallProgram())).toEqual(six(7));
+  it('counts the offset once: x + y = 2 at x + 2y + 5 gives 7, in both formats', async () => {
+    expect(await answers(smallProgram())).toEqual(everywhere(7));
   });
 
-  it('subtracts a negative offset: at least 3 of a column of cost 2, less 10, gives −4', () => {
+  it('subtracts a negative offset: at least 3 of a column of cost 2, less 10, gives −4', async () => {
     const builder = programBuilder();
     const x = builder.column('x', { lower: 0, cost: 2, integer: true });
     builder.row('least', 3, INFINITE, [[x, 1]]);
-    expect(answers(builder.finish({ hasIntegerObjective: true, offset: -10 }))).toEqual(six(-4));
+    expect(await answers(builder.finish({ hasIntegerObjective: true, offset: -10 }))).toEqual(everywhere(-4));
   });
 
-  it('lets a whole column without an upper bound pass 1: 2z ≥ 13 gives z = 7', () => {
+  it('lets a whole column without an upper bound pass 1: 2z ≥ 13 gives z = 7', async () => {
     const builder = programBuilder();
     const z = builder.column('z', { lower: 0, cost: 1, integer: true });
     builder.row('least', 13, INFINITE, [[z, 2]]);
-    expect(answers(builder.finish({ hasIntegerObjective: true }))).toEqual(six(7));
+    expect(await answers(builder.finish({ hasIntegerObjective: true }))).toEqual(everywhere(7));
   });
 
-  it('keeps bounds below 0: −5 to −2, the least of x is −5 and of −x is 2', () => {
+  it('keeps bounds below 0: −5 to −2, the least of x is −5 and of −x is 2', async () => {
     const least = (cost: number) => {
       const builder = programBuilder();
       const x = builder.column('x', { lower: -5, upper: -2, cost });
@@ -108,8 +111,8 @@ describe('MPS text', () => {
       builder.row('loose', Number.NEGATIVE_INFINITY, 9, [[x, 1]]);
       return builder.finish({ hasIntegerObjective: true });
     };
-    expect(answers(least(1))).toEqual(six(-5));
-    expect(answers(least(-1))).toEqual(six(2));
+    expect(await answers(least(1))).toEqual(everywhere(-5));
+    expect(await answers(least(-1))).toEqual(everywhere(2));
   });
 
   it.each([
@@ -117,11 +120,11 @@ describe('MPS text', () => {
     ['its lower side above its upper one', 1, 0, [[0, 1]]],
   ] as [string, number, number, [number, number][]][])(
     'is infeasible with a row that has %s',
-    (_, low, high, entries) => {
+    async (_, low, high, entries) => {
       const builder = programBuilder();
       builder.column('x', { lower: 0, upper: 1, cost: 1, integer: true });
       builder.row('wrong', low, high, entries);
-      expect(answers(builder.finish({ hasIntegerObjective: true }))).toEqual(six('infeasible'));
+      expect(await answers(builder.finish({ hasIntegerObjective: true }))).toEqual(everywhere('infeasible'));
     },
   );
 
