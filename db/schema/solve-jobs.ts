@@ -26,7 +26,7 @@ export const solveStates = ['queued', 'running', 'done', 'failed', 'cancelled'] 
 export type SolveState = (typeof solveStates)[number];
 
 export interface SolveSettings {
-  engine: 'auto' | 'highs' | 'simplex' | 'search';
+  engine: 'auto' | 'program' | 'highs' | 'simplex' | 'search';
   objective: Objective;
   timeLimitMs: number;
   seed: number;

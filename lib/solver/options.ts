@@ -1,13 +1,16 @@
 /** How long and with what a placement is solved. */
 import { z } from 'zod';
 
-export const engineChoices = ['auto', 'highs', 'simplex', 'search'] as const;
+export const engineChoices = ['auto', 'program', 'highs', 'simplex', 'search'] as const;
 export type EngineChoice = (typeof engineChoices)[number];
 
 export const SOLVE_LIMITS = { timeLimitMs: 3_600_000, seed: 2 ** 31 - 1, memoryLimitMb: 4096 } as const;
 
 export const solveOptionsSchema = z.strictObject({
-  /** `auto`: search, then the exact search. `search` proves nothing; the others name an integer-program engine. */
+  /**
+   * `auto`: search, then the exact search. `program`: integer programs in its place, each with the engine for its size;
+   * `highs` and `simplex` with that one only. `search` proves nothing.
+   */
   engine: z.enum(engineChoices),
   timeLimitMs: z.number().int().min(1).max(SOLVE_LIMITS.timeLimitMs),
   seed: z.number().int().min(0).max(SOLVE_LIMITS.seed),

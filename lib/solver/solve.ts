@@ -96,7 +96,7 @@ function runPasses(
 const stopOf = (result: { kind: string; stop?: StopReason }): StopReason => result.stop ?? 'search complete';
 
 const enginesFor = (options: SolveOptions, engines: readonly Engine[]): readonly Engine[] =>
-  options.engine === 'auto' ? engines : engines.filter((engine) => engine.name === options.engine);
+  options.engine === 'program' ? engines : engines.filter((engine) => engine.name === options.engine);
 
 const starsWithinWork = (instance: PlacementInstance): ReturnType<typeof starBound> | null =>
   starWork(instance) > STAR_WORK_LIMIT ? null : starBound(instance);

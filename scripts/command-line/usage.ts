@@ -5,7 +5,7 @@ npm run -s pinloom -- place --kernel K --fabric F [options]
   --fabric F          fabric, .json
   --pins P            pins, .json
   --objective O       wire (default): links of all nets; path: links of all paths
-  --engine E          auto (default), highs, simplex or search
+  --engine E          auto (default), program, highs, simplex or search
   --time-limit-ms N   30000 by default
   --seed N            1 by default; the same seed gives the same answer, within the time limit
 

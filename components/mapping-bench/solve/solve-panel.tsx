@@ -26,10 +26,9 @@ export function SolvePanel(props: SolvePanelProps) {
 }
 
 const engines = [
-  { value: 'auto', label: 'Automatic' },
+  { value: 'auto', label: 'Exact search' },
+  { value: 'program', label: 'Integer program' },
   { value: 'search', label: 'Local search only' },
-  { value: 'highs', label: 'Integer program (HiGHS)' },
-  { value: 'simplex', label: 'Integer program (JavaScript)' },
 ];
 const aims = [
   { value: 'wire', label: 'Fewest wire hops' },

@@ -22,7 +22,7 @@ export function attemptsFor(
   remainingMs: number,
 ): Attempt[] {
   const whole = (engine: Engine): Attempt => ({ engine, timeLimitMs: remainingMs });
-  if (choice !== 'auto') return engines.map(whole);
+  if (choice !== 'program') return engines.map(whole);
   const simplex = engines.find((engine) => engine.name === 'simplex');
   const others = engines.filter((engine) => engine !== simplex);
   const isSmall = program.entryValue.length <= SIMPLEX_ENTRIES;

@@ -40,7 +40,7 @@ export interface SearchLimits {
 
 /** Moves of the first slice, for an answer at once; later slices grow to the last entry times the ops. */
 const MOVES_PER_OP = [60, 400, 800, 1500, 1500, 3000, 3000, 6000] as const;
-const ROUTED_MOVES_PER_OP = [150, 600, 1500, 3000, 5000] as const;
+const ROUTED_MOVES_PER_OP = [40, 150, 600, 600, 1500, 3000, 5000] as const;
 /** Above this many, ops and routes together take turns with longer annealing of the ops alone. */
 const MANY_OPS = 60;
 /** Ops counted at most, so that a slice stays short. */
@@ -139,6 +139,7 @@ function settle(search: Search, found: Candidate, round: number): void {
 function slice(search: Search, round: number): Candidate {
   const { routed, tabu, best, instance } = search;
   const isFound = best.objectiveValue < Number.POSITIVE_INFINITY;
+  if (round === 0 && routed && instance.opCount <= MANY_OPS) return routedSlice(search, routed, round);
   if (round === 0 || (round === 1 && isFound)) return annealSlice(search, round);
   if (routed) {
     const isPlaced = instance.opCount > MANY_OPS ? round % 4 !== 2 : round % 3 === 1;
@@ -198,7 +199,7 @@ function routedSlice(search: Search, routed: RoutedNets, round: number): Candida
     routed,
     start,
     {
-      moves: movesOf(ROUTED_MOVES_PER_OP, Math.max(0, round - 2), start.length),
+      moves: movesOf(ROUTED_MOVES_PER_OP, round, start.length),
       startTemperature: (isFresh ? 1 : 0.7) * unit,
       endTemperature: 0.5 * unit,
       startOverfull: 0.7,

@@ -11,8 +11,8 @@ const cell = new Int32Array(stopCell);
 const send = (message: ThreadMessage) => parentPort?.postMessage(message);
 const wanted = options.engine;
 const engines = [
-  ...(wanted === 'simplex' ? [simplexEngine] : []),
-  ...(wanted === 'highs' ? [await highsEngine()] : []),
+  ...(wanted === 'program' || wanted === 'simplex' ? [simplexEngine] : []),
+  ...(wanted === 'program' || wanted === 'highs' ? [await highsEngine()] : []),
 ];
 // Loading the engine is part of the time that was asked for.
 const loadedMs = performance.now() - startMs;
