@@ -13,6 +13,7 @@ const lineSchema = z.object({
   objectiveValue: z.number().nullable(),
   bound: z.number().nullable(),
   elapsedMs: z.number(),
+  nodes: z.number(),
   firstMappingMs: z.number().nullable(),
   peakMemoryMb: z.number(),
 });
@@ -20,7 +21,7 @@ const lineSchema = z.object({
 export async function measureSolves(root: string, timeLimitMs: number, take: Take): Promise<void> {
   const child = spawn(
     process.execPath,
-    [join(root, 'dist', 'bench-solve.mjs'), '--time-limit-ms', String(timeLimitMs)],
+    [join(root, 'dist', 'bench-solve.mjs'), '--engines', 'auto', '--time-limit-ms', String(timeLimitMs)],
     { cwd: root, stdio: ['ignore', 'pipe', 'inherit'] },
   );
   for await (const text of createInterface({ input: child.stdout })) {
