@@ -14,7 +14,14 @@ function newestMs(path) {
   return Math.max(stat.mtimeMs, ...readdirSync(path).map((name) => newestMs(join(path, name))));
 }
 
-const sources = ['lib', 'scripts/pinloom.ts', 'scripts/command-line', 'package-lock.json'];
+const sources = [
+  'lib',
+  'scripts/pinloom.ts',
+  'scripts/pinloom-model.ts',
+  'scripts/pinloom-qap.ts',
+  'scripts/command-line',
+  'package-lock.json',
+];
 const newestSourceMs = Math.max(...sources.map((path) => newestMs(join(ROOT, path))));
 const oldestOutputMs = Math.min(...outputs.map(newestMs));
 if (oldestOutputMs < newestSourceMs) {
