@@ -4,10 +4,10 @@
  * `settle`; tiles where routes were crowded become dearer.
  * Deterministic for a seed as far as time allows: slices are counted in moves, time only ends them.
  */
-import type { PlacementInstance } from '../instance';
+import { hopsBetween, type PlacementInstance, withinReach } from '../instance';
 import { type AnnealMoves, anneal, annealMoves } from './anneal';
 import { matchOps } from './matching';
-import { LIMIT_PENALTY, placementCost } from './placement-cost';
+import { placementCost } from './placement-cost';
 import { type Random, seededRandom } from './random';
 import { annealRouted, type RoutedTiling } from './routed-anneal';
 import { type RoutedNets, routedNets, type SearchLink } from './routed-nets';
@@ -46,6 +46,8 @@ const MANY_OPS = 60;
 /** Ops counted at most, so that a slice stays short. */
 const MOST_OPS = 120;
 const CROWD_COST = 0.5;
+/** Where links would be filled less than this, the router alone is likely to do, and sooner. */
+const EASY_FILL = 0.3;
 /** Nets × tiles that may have a tree each. */
 const ROUTED_LIMIT = 2_000_000;
 const TABU_TILES = 128;
@@ -83,6 +85,8 @@ interface Search {
   random: Random;
   hooks: SearchHooks;
   routed: RoutedNets | null;
+  /** Of all links together. */
+  channels: number;
   tabu: TabuSearch | null;
   tabuSlices: number;
   tried: Set<string>;
@@ -104,6 +108,7 @@ function newSearch(
     random: seededRandom(limits.seed),
     hooks,
     routed: hasTrees && limits.links ? routedNets(instance, limits.links) : null,
+    channels: (limits.links ?? []).reduce((sum, link) => sum + link.channels, 0),
     tabu: isForTabu ? tabuSearch(instance) : null,
     tabuSlices: 0,
     tried: new Set(),
@@ -112,6 +117,7 @@ function newSearch(
   };
 }
 
+type Placed = { tiling: Int32Array; cost: number };
 type Candidate = { tiling: Int32Array } | RoutedTiling;
 
 function settle(search: Search, found: Candidate, round: number): void {
@@ -149,10 +155,7 @@ function slice(search: Search, round: number): Candidate {
 }
 
 /** Even rounds start hot, odd ones warm from the best, so that they keep most of it. */
-function annealSlice(
-  { moves, best, random, hooks }: Search,
-  round: number,
-): { tiling: Int32Array; cost: number } {
+function annealSlice({ moves, best, random, hooks }: Search, round: number): Placed {
   const unit = moves.temperatureUnit;
   return anneal(
     moves,
@@ -171,7 +174,7 @@ const movesOf = (perOp: readonly number[], round: number, opCount: number): numb
   (perOp[Math.min(round, perOp.length - 1)] as number) * Math.max(8, Math.min(opCount, MOST_OPS));
 
 /** The table is kept from slice to slice, so that it goes on where it was. */
-function tabuSlice(search: Search, tabu: TabuSearch): Candidate {
+function tabuSlice(search: Search, tabu: TabuSearch): Placed {
   const { instance, best, random, hooks } = search;
   if (search.tabuSlices++ === 0) tabu.restart(best.tiling);
   const steps = Math.max(100, Math.min(4000, Math.ceil(TABU_WORK / instance.tileCount ** 2)));
@@ -190,7 +193,8 @@ function routedSlice(search: Search, routed: RoutedNets, round: number): Candida
   if (isFresh) {
     const placed =
       search.tabu && round % 4 === 2 ? tabuSlice(search, search.tabu) : annealSlice(search, round);
-    if ('cost' in placed && placed.cost >= LIMIT_PENALTY) return { tiling: placed.tiling };
+    if (hasTooLong(search.instance, placed.tiling)) return placed;
+    if (round === 0 && placed.cost < EASY_FILL * search.channels) return placed;
     start = placed.tiling;
   }
   const unit = moves.temperatureUnit;
@@ -209,6 +213,13 @@ function routedSlice(search: Search, routed: RoutedNets, round: number): Candida
     random,
   );
 }
+
+/** Trees cannot help where a connection is beyond the clock's limit by the shortest way. */
+const hasTooLong = (instance: PlacementInstance, tiling: Int32Array): boolean =>
+  instance.pairs.some(
+    ({ from, to }) =>
+      !withinReach(instance, hopsBetween(instance, tiling[from] as number, tiling[to] as number)),
+  );
 
 /** The given start where it is whole, else one matched around it, else around none. */
 export function firstTiling(instance: PlacementInstance, start: Int32Array | null): Int32Array | null {
