@@ -41,6 +41,7 @@ export interface SearchLimits {
 /** Moves of the first slice, for an answer at once; later slices grow to the last entry times the ops. */
 const MOVES_PER_OP = [60, 400, 800, 1500, 1500, 3000, 3000, 6000] as const;
 const ROUTED_MOVES_PER_OP = [40, 150, 600, 600, 1500, 3000, 5000] as const;
+const QUICK_SLICES = 2;
 /** Above this many, ops and routes together take turns with longer annealing of the ops alone. */
 const MANY_OPS = 60;
 /** Ops counted at most, so that a slice stays short. */
@@ -69,12 +70,14 @@ export function searchPlacements(
   if (!first) return { rounds: 0, endedBy: 'rounds' };
   const search = newSearch(instance, first, limits, hooks);
   if (start) settle(search, { tiling: first }, 0);
+  // From a legal start there is no hurry for a first answer.
+  const skipped = search.best.objectiveValue < Number.POSITIVE_INFINITY ? QUICK_SLICES : 0;
   for (let round = 0; round < limits.rounds; round++) {
     if (search.best.objectiveValue <= limits.bound) return { rounds: round, endedBy: 'bound' };
     if (hooks.shouldStop()) return { rounds: round, endedBy: 'stopped' };
     if (search.stale >= limits.staleRounds) return { rounds: round, endedBy: 'stale' };
     search.stale++;
-    settle(search, slice(search, round), round);
+    settle(search, slice(search, round + skipped), round);
   }
   return { rounds: limits.rounds, endedBy: 'rounds' };
 }
