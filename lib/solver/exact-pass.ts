@@ -14,18 +14,29 @@ export type ExactPassResult =
   | { kind: 'infeasible'; explanation: InfeasibleReason }
   | { kind: 'unfinished'; stop: StopReason };
 
+/** Nodes after which the search for better mappings goes on for the first time; each later time after twice as many. */
+const FIRST_STRETCH_NODES = 2000;
+
+/** `improve` is a stretch of search, called with 1, 2, 3, … while the proof waits. */
 export function exactPass(
   problem: CheckedProblem,
   instance: PlacementInstance,
   state: SolveState,
+  improve: (stretch: number) => void,
 ): ExactPassResult {
+  let stretches = 0;
   state.setPhase('exact');
   state.noteEngine('exact');
   const result = exactSearch(instance, problem.graph, {
     incumbent: () => state.best()?.objectiveValue ?? Number.POSITIVE_INFINITY,
     shouldStop: state.shouldStop,
     onBound: (bound) => void state.raise(bound),
-    onNodes: state.noteNodes,
+    onNodes: (nodes) => {
+      state.noteNodes(nodes);
+      if (nodes < FIRST_STRETCH_NODES * 2 ** stretches) return;
+      stretches++;
+      improve(stretches);
+    },
     onMapping: (tiling, netLinks) => {
       const placement = placementOf(problem.kernel, problem.graph, tiling);
       const mapping = netLinks && verifiedMapping(problem, placement, routesOf(problem, instance, netLinks));

@@ -6,10 +6,12 @@
 import { ok, type Result } from '../result';
 import { starBound, starWork, trivialBound } from './bounds/star-bound';
 import type { Engine } from './engines/engine';
+import { TABLE_ENTRIES_LIMIT } from './exact/exact-search';
+import { tableEntries } from './exact/root-relaxation';
 import { exactPass } from './exact-pass';
 import { explainInfeasible } from './explain/explain-infeasible';
 import { explainStars } from './explain/explain-stars';
-import { buildInstance, type PlacementInstance } from './instance';
+import { buildInstance, type PlacementInstance, tilingOf } from './instance';
 import { estimateEntries } from './integer-program/placement-program';
 import { legalMapping, startTiles } from './legal-mapping';
 import type { SolveOptions } from './options';
@@ -30,6 +32,8 @@ export interface SolveHooks extends SolveClock {
 const STAR_WORK_LIMIT = 2e7;
 /** The part of the time that the search may take before an engine takes over; more as long as nothing is found. */
 const SEARCH_SHARE = 0.1;
+/** Slices without a better mapping after which the proof begins; it lets the search go on now and then. */
+const FIRST_STALE_ROUNDS = 4;
 const FIRST_MAPPING_SHARE = 0.6;
 
 /**
@@ -72,7 +76,9 @@ function runPasses(
   searchPass(problem, instance, options, state);
   if (options.engine === 'search' || state.shouldStop()) return state.finish('search complete');
   if (options.engine === 'auto') {
-    const exact = exactPass(problem, instance, state);
+    const exact = exactPass(problem, instance, state, (stretch) =>
+      improve(problem, instance, options, state, stretch),
+    );
     if (exact.kind === 'infeasible') return state.infeasible(exact.explanation);
     return state.finish(exact.kind === 'unfinished' ? exact.stop : 'search complete');
   }
@@ -101,7 +107,7 @@ const enginesFor = (options: SolveOptions, engines: readonly Engine[]): readonly
 const starsWithinWork = (instance: PlacementInstance): ReturnType<typeof starBound> | null =>
   starWork(instance) > STAR_WORK_LIMIT ? null : starBound(instance);
 
-/** Legal mappings from the search, each better one reported at once. */
+/** Legal mappings from the search alone, each better one reported at once. */
 function searchPass(
   problem: CheckedProblem,
   instance: PlacementInstance,
@@ -110,24 +116,58 @@ function searchPass(
 ): void {
   state.setPhase('search');
   state.noteEngine('search');
-  // Where no engine can follow, the search has all the time.
-  const alone = options.engine === 'search' || estimateEntries(instance) > MODEL_ENTRIES_LIMIT;
+  // Where nothing can follow, the search has all the time.
+  const alone = options.engine === 'search' || !canProve(options, instance);
   const startMs = state.elapsedMs();
   const spentRatio = () => (state.elapsedMs() - startMs) / (options.timeLimitMs - startMs);
   const isOver = () => !alone && spentRatio() >= (state.best() ? SEARCH_SHARE : FIRST_MAPPING_SHARE);
-  searchPlacements(
+  const limits = alone ? { rounds: 400, staleRounds: 120 } : { rounds: 60, staleRounds: FIRST_STALE_ROUNDS };
+  runSearch(
+    problem,
     instance,
     startTiles(problem, instance),
-    {
-      seed: options.seed,
-      rounds: alone ? 400 : 60,
-      staleRounds: alone ? 120 : 14,
-      bound: state.bound(),
-    },
+    { ...limits, seed: options.seed },
+    state,
+    isOver,
+  );
+}
+
+const canProve = ({ engine }: SolveOptions, instance: PlacementInstance): boolean =>
+  engine === 'auto'
+    ? tableEntries(instance) <= TABLE_ENTRIES_LIMIT
+    : estimateEntries(instance) <= MODEL_ENTRIES_LIMIT;
+
+/** Another stretch of search from the best mapping, while the proof waits; counted in slices, so that it can be repeated. */
+function improve(
+  problem: CheckedProblem,
+  instance: PlacementInstance,
+  options: SolveOptions,
+  state: SolveState,
+  stretch: number,
+): void {
+  const best = state.best();
+  const start = best ? tilingOf(problem.kernel, problem.graph, best.placement) : null;
+  const limits = { rounds: 60, staleRounds: FIRST_STALE_ROUNDS + stretch, seed: options.seed + stretch };
+  runSearch(problem, instance, start, limits, state, () => false);
+}
+
+function runSearch(
+  problem: CheckedProblem,
+  instance: PlacementInstance,
+  start: Int32Array | null,
+  limits: { rounds: number; staleRounds: number; seed: number },
+  state: SolveState,
+  isOver: () => boolean,
+): void {
+  const { links } = problem.graph;
+  searchPlacements(
+    instance,
+    start,
+    { ...limits, bound: state.bound(), links },
     {
       shouldStop: () => state.shouldStop() || isOver(),
-      settle: (tiling, round) => {
-        const legal = legalMapping(problem, tiling, round, state.shouldStop);
+      settle: (tiling, round, trees) => {
+        const legal = legalMapping(problem, tiling, round, state.shouldStop, trees);
         if (!legal.ok) return legal;
         state.offer(legal.mapping);
         return { ok: true, objectiveValue: legal.mapping.objectiveValue };

@@ -91,6 +91,7 @@ function outcomeDocument(problem: PlacementProblem, outcome: SolveOutcome): obje
     engine: outcome.engine,
     seed: outcome.seed,
     elapsedMs: outcome.elapsedMs,
+    nodes: outcome.nodes,
     placement,
     routes,
     metrics: placement === null || routes === null ? null : metricsDocument(problem, { placement, routes }),

@@ -50,7 +50,7 @@ const LEAST_GAIN = 0.02;
 /** Conflicts looked at for the nets that stand at an inner node, and for a whole placement. */
 const INNER_ROUTE_NODES = 40;
 const LEAF_ROUTE_NODES = 20_000;
-const CHEAP_LEVEL_NODES = 200;
+const CHEAP_LEVEL_NODES = 30;
 const EPSILON = 1e-6;
 
 /** What the ops placed so far decide: nets that stand, and the symmetries that leave those ops where they are. */
