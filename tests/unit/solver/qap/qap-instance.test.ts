@@ -14,10 +14,13 @@ import {
 
 // Values and permutations: QAPLIB (Burkard, Karisch and Rendl 1997), by way of tests/reference/qaplib.
 describe('the value of published permutations', () => {
+  const larger = ['chr15b', 'nug15', 'rou15', 'had20', 'nug20', 'scr20', 'nug25', 'nug30', 'ste36a'];
   it.each([
-    ...upToTwelve.map(([name, read]) => read(name)),
-    ...['bur26c', 'esc16a', 'lipa20a'].map(publishedText),
-  ])('is the published one (%#)', ({ problem, optimum, locationOf }) => {
+    ...upToTwelve,
+    ...larger.map((name): (typeof upToTwelve)[number] => [name, publishedJson]),
+    ...['bur26c', 'esc16a', 'lipa20a'].map((name): (typeof upToTwelve)[number] => [name, publishedText]),
+  ])('is the published one: %s', (name, read) => {
+    const { problem, optimum, locationOf } = read(name);
     expect(qapValue(problem, locationOf)).toBe(optimum);
   });
 
@@ -25,6 +28,7 @@ describe('the value of published permutations', () => {
     const { problem } = publishedJson('nug5');
     for (const wrong of [
       [0, 1, 2, 3],
+      [0, 1, 2, 3, 4, 0],
       [0, 1, 2, 3, 3],
       [0, 1, 2, 3, 5],
       [0, 1, 2, 3, -1],

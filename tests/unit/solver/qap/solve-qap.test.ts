@@ -145,6 +145,15 @@ describe('the state of a solve', () => {
     expect(() => fresh().offer([0, 0, 1, 2, 3], optimum)).toThrow(/took an assignment/);
   });
 
+  it('keeps the better assignment', () => {
+    const state = fresh();
+    state.offer(locationOf, optimum);
+    const start = [0, 1, 2, 3, 4];
+    expect(qapValue(problem, start)).toBeGreaterThan(optimum);
+    state.offer(start, qapValue(problem, start) as number);
+    expect(state.best()).toMatchObject({ objectiveValue: optimum, locationOf });
+  });
+
   it('throws for a bound above a value, and for a value below the bound', () => {
     const state = fresh();
     state.offer(locationOf, optimum);
