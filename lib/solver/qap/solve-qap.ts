@@ -21,9 +21,11 @@ const STAR_WORK_LIMIT = 1e8;
 /** The exact search begins and ends by these parts of the time; the search has what is left on both sides. */
 const EXACT_FROM = 0.1;
 const EXACT_TO = 0.75;
-/** Slices of the search, and those without a better assignment after which it ends. */
-const FIRST_SEARCH = { rounds: 16, staleRounds: 16 };
-const LAST_SEARCH = { rounds: 400, staleRounds: 120 };
+/** Slices of the search. Before the exact search, more on large problems, where less may be hoped of a proof. */
+const slicesBefore = (n: number): number => Math.max(16, 2 * n);
+const SLICES_AFTER = 400;
+/** Slices without a better assignment after which the search ends, unless time alone had ended the exact search. */
+const STALE_SLICES = 120;
 
 /**
  * Blocks until done. Same problem, options and seed give the same answer as long as neither the time limit nor a stop
@@ -42,9 +44,12 @@ export function solveQap(
   state.raise(starsBound(model));
   const until = (part: number) => (): boolean =>
     state.shouldStop() || state.elapsedMs() > part * options.timeLimitMs;
-  searchPass(model, state, { ...FIRST_SEARCH, seed: options.seed }, until(EXACT_FROM));
+  const slices = slicesBefore(problem.n);
+  const first = { rounds: slices, staleRounds: slices, seed: options.seed };
+  searchPass(model, state, first, until(EXACT_FROM));
   const reason = state.shouldStop() ? 'search complete' : exactPass(model, state, until(EXACT_TO));
-  searchPass(model, state, { ...LAST_SEARCH, seed: options.seed + 1 }, state.shouldStop);
+  const [rounds, staleRounds] = reason === 'time limit' ? [1e9, 1e9] : [SLICES_AFTER, STALE_SLICES];
+  searchPass(model, state, { rounds, staleRounds, seed: options.seed + 1 }, state.shouldStop);
   return ok(state.finish(reason));
 }
 
