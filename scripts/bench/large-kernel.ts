@@ -1,4 +1,6 @@
 /** A kernel of any size for measuring, the same at every call: columns of ops, each fed by the column before. */
+
+import { initialParams } from '../../lib/graph/edits';
 import {
   type Edge,
   edgeIdSchema,
@@ -27,11 +29,7 @@ export function largeKernel(name: string, columns: number): Kernel {
         kind,
         label: `${kind} ${column}.${row}`,
         widthBits: 32,
-        params: end
-          ? { array: `x${row}`, base: 0, stride: 1 }
-          : kind === 'add' || kind === 'subtract'
-            ? { overflow: 'wrap' }
-            : {},
+        params: end ? { array: `x${row}`, base: 0, stride: 1 } : initialParams(kind),
         immediates: {},
         positionPx: { x: column * COLUMN_PX, y: row * ROW_PX },
       });

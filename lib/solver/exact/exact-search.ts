@@ -51,6 +51,8 @@ const LEAST_GAIN = 0.02;
 const INNER_ROUTE_NODES = 40;
 const LEAF_ROUTE_NODES = 20_000;
 const CHEAP_LEVEL_NODES = 30;
+/** Nodes with more table entries look at the clock each time. */
+const SLOW_NODE_ENTRIES = 20_000;
 const EPSILON = 1e-6;
 
 /** What the ops placed so far decide: nets that stand, and the symmetries that leave those ops where they are. */
@@ -177,7 +179,7 @@ const copyOf = (root: Relaxation): Relaxation => ({
 
 function visit(search: Search, node: Relaxation, levelCutoff: number, decided: Decided): void {
   search.nodes++;
-  if (search.nodes % 16 === 0) {
+  if (search.nodes % 16 === 0 || node.tables.length > SLOW_NODE_ENTRIES) {
     search.hooks.onNodes?.(search.nodes);
     if (search.hooks.shouldStop()) search.stopped = true;
   }
