@@ -37,7 +37,7 @@ export interface ExactResult {
   /** No legal mapping is cheaper. */
   bound: number;
   nodes: number;
-  /** Some placement was refused because its nets cannot be routed together. */
+  /** On the last level, some placement was refused because its nets cannot be routed together at that cost. */
   isCongested: boolean;
 }
 
@@ -53,7 +53,8 @@ const LEAF_ROUTE_NODES = 20_000;
 const CHEAP_LEVEL_NODES = 30;
 /** Nodes with more table entries look at the clock each time. */
 const SLOW_NODE_ENTRIES = 20_000;
-const EPSILON = 1e-6;
+/** Part of the costs' step that rounding may take: far above it for sums of any size, far below the next cost. */
+const MARGIN = 1e-3;
 
 /** What the ops placed so far decide: nets that stand, and the symmetries that leave those ops where they are. */
 interface Decided {
@@ -75,6 +76,8 @@ interface Search {
   pairCountOf: Int32Array;
   /** All objectives are multiples of it. */
   step: number;
+  /** What a cost may exceed the cutoff by, as rounding. */
+  margin: number;
   nodes: number;
   stopped: boolean;
   /** The least cutoff at which a placement was met that could be neither routed nor refused. */
@@ -103,6 +106,7 @@ export function exactSearch(
     tileOf: new Int32Array(instance.opCount).fill(-1),
     pairCountOf: Int32Array.from(root.pairsOf, (pairs) => pairs.length),
     step: costStep(instance),
+    margin: MARGIN * costStep(instance),
     nodes: 0,
     stopped: false,
     openAt: Number.POSITIVE_INFINITY,
@@ -118,7 +122,7 @@ export function exactSearch(
 
 /** Raises the cutoff until nothing below the incumbent is left to try. */
 function deepen(search: Search, root: Relaxation, decided: Decided, most: number): ExactResult {
-  const { hooks, step } = search;
+  const { hooks, step, margin } = search;
   const result = (kind: ExactResult['kind'], bound: number): ExactResult => ({
     kind,
     bound,
@@ -130,19 +134,20 @@ function deepen(search: Search, root: Relaxation, decided: Decided, most: number
     const known = hooks.incumbent();
     return Number.isFinite(known) ? result('proved', known) : result('infeasible', Number.POSITIVE_INFINITY);
   }
-  let bound = roundUp(root.constant, step);
+  let bound = step * Math.ceil((root.constant - margin) / step);
   hooks.onBound(bound);
   let stride = step;
   let before = 0;
   for (;;) {
     const known = hooks.incumbent();
-    if (bound >= known - EPSILON) return result('proved', known);
+    if (bound >= known - margin) return result('proved', known);
     if (bound > most) return result('infeasible', Number.POSITIVE_INFINITY);
     const cutoff = Math.min(bound + stride - step, known - step, most);
     const startNodes = search.nodes;
+    search.isCongested = false;
     visit(search, copyOf(root), cutoff, decided);
     if (search.stopped) return result('stopped', bound);
-    if (search.openAt <= cutoff + EPSILON) return result('unresolved', Math.min(bound, hooks.incumbent()));
+    if (search.openAt <= cutoff + margin) return result('unresolved', Math.min(bound, hooks.incumbent()));
     bound = Math.min(cutoff + step, hooks.incumbent());
     hooks.onBound(bound);
     // A level that cost little, or hardly more than the one before, was too low to be worth a pass of its own.
@@ -152,8 +157,6 @@ function deepen(search: Search, root: Relaxation, decided: Decided, most: number
     before = visited;
   }
 }
-
-const roundUp = (value: number, step: number): number => step * Math.ceil((value - EPSILON) / step);
 
 /** No legal mapping costs more: nets share the fabric's channels, and a path visits no tile twice. */
 function dearestCost(
@@ -191,7 +194,7 @@ function visit(search: Search, node: Relaxation, levelCutoff: number, decided: D
   }
   const extra = standingExtra(search, decided.nets, node.constant, cutoff);
   if (extra === null) return;
-  const limits = { cutoff: cutoff - extra, sweeps: NODE_SWEEPS, leastGain: LEAST_GAIN };
+  const limits = { cutoff: cutoff + search.margin - extra, sweeps: NODE_SWEEPS, leastGain: LEAST_GAIN };
   if (!reassignAll(node, search.scratch) || !raiseConstant(node, limits, search.scratch)) return;
   const op = branchingOp(node, search.pairCountOf);
   if (op < 0 || !gatherOp(node, op, limits.cutoff, search.scratch)) return;
@@ -205,7 +208,7 @@ function standingExtra(
   constant: number,
   cutoff: number,
 ): number | null {
-  const slack = cutoff + EPSILON - constant;
+  const slack = cutoff + search.margin - constant;
   if (slack < 0) return null;
   if (!search.router) return 0;
   if (standing.length < 2) return 0;
@@ -303,7 +306,7 @@ function closure(images: readonly Int32Array[], limit: number): Int32Array[] {
 function settleLeaf(search: Search, standing: readonly NumberedNet[], cutoff: number): void {
   const { router, hooks, nets, tileOf, instance } = search;
   if (!router) {
-    if (nets.pairCost(tileOf) <= cutoff + EPSILON && !hooks.onMapping(tileOf.slice(), null))
+    if (nets.pairCost(tileOf) <= cutoff + search.margin && !hooks.onMapping(tileOf.slice(), null))
       leaveOpen(search, cutoff);
     return;
   }
@@ -315,7 +318,7 @@ function settleLeaf(search: Search, standing: readonly NumberedNet[], cutoff: nu
     cost += tree.cost;
     exact &&= tree.exact;
   }
-  const budget = cutoff + EPSILON - cost;
+  const budget = cutoff + search.margin - cost;
   if (budget < 0 && exact) return;
   const routed = router.route(standing, Math.max(0, budget), LEAF_ROUTE_NODES);
   if (routed.kind !== 'routed') {

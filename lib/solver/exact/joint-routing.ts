@@ -6,7 +6,7 @@
  */
 import type { LinkGraph } from '../../fabric/link-graph';
 import type { Objective } from '../../mapping/mapping';
-import { shortestPathsTree, steinerTree } from '../routing/steiner-tree';
+import { DEFAULT_EXACT_WORK, shortestPathsTree, steinerTree } from '../routing/steiner-tree';
 
 export interface RoutingFabric extends LinkGraph {
   maxHops: number | null;
@@ -75,16 +75,20 @@ export function jointRouter(fabric: RoutingFabric, objective: Objective): JointR
   };
 }
 
-function wireTree(
-  fabric: RoutingFabric,
-  { tiles, weight }: StandingNet,
-  cost: Float64Array,
-): LeastTree | null {
+function wireTree(fabric: RoutingFabric, net: StandingNet, cost: Float64Array): LeastTree | null {
+  const { tiles, weight } = net;
   const [source, ...targets] = tiles;
   const found = steinerTree(fabric, source as number, targets, cost, { maxDepthHops: fabric.maxHops });
-  if (!found || !Number.isFinite(found.cost)) return null;
-  return { cost: weight * found.links.length, links: found.links, exact: found.exact };
+  if (found && Number.isFinite(found.cost)) {
+    return { cost: weight * found.links.length, links: found.links, exact: found.exact };
+  }
+  // A net too large for the exact methods may have a tree that they do not find: its own one stays, and stays in conflict.
+  if (net.own && !isExactSize(fabric, targets.length)) return { ...net.own, exact: false };
+  return null;
 }
+
+const isExactSize = ({ tileCount, maxHops }: RoutingFabric, targets: number): boolean =>
+  tileCount * 3 ** targets * (maxHops ?? 1) <= DEFAULT_EXACT_WORK;
 
 /** Every path is a shortest one, so the sum of their hops cannot be less. */
 function pathTree(fabric: RoutingFabric, net: StandingNet, cost: Float64Array): LeastTree | null {
