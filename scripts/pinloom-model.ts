@@ -1,7 +1,5 @@
 /** `model`: prints a placement problem, routes included, as an integer program that other solvers read. */
-import type { Fabric } from '../lib/fabric/fabric';
-import type { Kernel } from '../lib/graph/kernel';
-import { type Objective, objectives, type Pins } from '../lib/mapping/mapping';
+import type { Objective } from '../lib/mapping/mapping';
 import { err, ok, type Result } from '../lib/result';
 import { buildInstance, hopsBetween, type PlacementInstance, withinReach } from '../lib/solver/instance';
 import type { IntegerProgram } from '../lib/solver/integer-program/integer-program';
@@ -23,7 +21,7 @@ import {
 } from '../lib/solver/problem';
 import { readArguments } from './command-line/arguments';
 import { printFaults } from './command-line/print';
-import { type Faults, placeInFile, readFabric, readKernel, readPins } from './command-line/read-document';
+import { inputFaultLine, readProblem } from './command-line/read-problem';
 
 export const modelUsage = `
 npm run -s pinloom -- model --kernel K --fabric F --format lp|mps [--objective O] [--pins P]
@@ -39,7 +37,6 @@ type ModelFormat = keyof typeof writers;
 const MODEL_LIMITS = { columns: 300_000, reachEntries: 2_000_000 } as const;
 
 const names = ['kernel', 'fabric', 'pins', 'objective', 'format'] as const;
-type Given = Partial<Record<(typeof names)[number], string>>;
 
 export function model(args: readonly string[]): 0 | 2 {
   const given = readArguments(args, names, ['kernel', 'fabric', 'format']);
@@ -133,21 +130,4 @@ function headLines(
       return `  ${name}: ${name === id ? '' : `${id}, `}${kind} ${JSON.stringify(label)}`;
     }),
   ];
-}
-
-function readProblem(given: Given): Result<PlacementProblem, Faults> {
-  const kernel: Result<Kernel, Faults> = readKernel(given.kernel ?? '');
-  const fabric: Result<Fabric, Faults> = readFabric(given.fabric ?? '');
-  const pins: Result<Pins, Faults> = given.pins === undefined ? ok({}) : readPins(given.pins);
-  const objective = objectives.find((one) => one === (given.objective ?? 'wire'));
-  const faults = [kernel, fabric, pins].flatMap((part) => (part.ok ? [] : part.error));
-  if (!objective) faults.push(`--objective: one of ${objectives.join(', ')}`);
-  if (!kernel.ok || !fabric.ok || !pins.ok || !objective) return err(faults);
-  return ok({ kernel: kernel.value, fabric: fabric.value, pins: pins.value, objective });
-}
-
-/** file:line:column of the first place that names the op or connection at fault. */
-function inputFaultLine(given: Given, { part, message, id }: InputFault): string {
-  const path = (part === 'pins' ? given.pins : part === 'fabric' ? given.fabric : given.kernel) ?? '';
-  return `${path}:${placeInFile(path, id)}: ${message}`;
 }

@@ -1,8 +1,6 @@
 /** `qap`: solves a quadratic assignment instance in QAPLIB's text format and prints the outcome. */
-import { readFileSync, statSync } from 'node:fs';
 import { parseArgs } from 'node:util';
 import { isMainThread, parentPort, Worker, workerData } from 'node:worker_threads';
-import { parseQaplib } from '../lib/formats/qaplib';
 import { err, ok, type Result } from '../lib/result';
 import { defaultSolveOptions, solveOptionsSchema } from '../lib/solver/options';
 import type { StopReason } from '../lib/solver/outcome';
@@ -11,7 +9,7 @@ import { type QapOptions, type QapOutcome, type QapProgress, qapOutcome } from '
 import { solveQap } from '../lib/solver/qap/solve-qap';
 import { wholeNumber } from './command-line/arguments';
 import { printDocument, printFaults } from './command-line/print';
-import type { Faults } from './command-line/read-document';
+import { type Faults, readQaplib } from './command-line/read-document';
 
 export const qapUsage = `
 npm run -s pinloom -- qap FILE.dat [--time-limit-ms N] [--seed N]
@@ -21,7 +19,6 @@ npm run -s pinloom -- qap FILE.dat [--time-limit-ms N] [--seed N]
   both counted from 1. Exit codes: 0 solved, 2 bad input, 4 nothing found.
 `;
 
-const MAX_FILE_BYTES = 16 * 2 ** 20;
 /** How long the thread may overrun its time limit before it is ended from outside. */
 const GRACE_MS = 3000;
 const MEMORY_LIMIT_MB = 1024;
@@ -92,24 +89,8 @@ function readGiven(args: readonly string[]): Result<{ path: string; options: Qap
 }
 
 function readProblem(path: string): Result<QapProblem, Faults> {
-  let text: string;
-  try {
-    if (statSync(path).size > MAX_FILE_BYTES) return err([`${path}: larger than 16 MiB`]);
-    text = readFileSync(path, 'utf8');
-  } catch (error) {
-    return err([`${path}: cannot be read (${(error as NodeJS.ErrnoException).code ?? 'unknown cause'})`]);
-  }
-  const parsed = parseQaplib(text);
-  if (parsed.ok) {
-    const { n, first, second } = parsed.value;
-    return ok({ n, flow: first, distance: second });
-  }
-  return err(
-    parsed.errors.map(({ line, column, path: place, message, expected }) => {
-      const where = place ? `${place}: ` : '';
-      return `${path}:${line}:${column}: ${where}${message}${expected ? ` Expected: ${expected}.` : ''}`;
-    }),
-  );
+  const read = readQaplib(path);
+  return read.ok ? ok({ n: read.value.n, flow: read.value.first, distance: read.value.second }) : read;
 }
 
 /** Null where the thread ended before it had told anything. Ctrl-C ends the solve with its best. */

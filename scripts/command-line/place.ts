@@ -1,17 +1,15 @@
 /** `place`: solves and prints the outcome. */
 import { compileFabric } from '../../lib/fabric/compile';
-import type { Fabric } from '../../lib/fabric/fabric';
-import type { Kernel } from '../../lib/graph/kernel';
-import { type Objective, objectives, type Pins } from '../../lib/mapping/mapping';
 import { measureMapping } from '../../lib/mapping/metrics';
 import { err, ok, type Result } from '../../lib/result';
 import { defaultSolveOptions, type SolveOptions, solveOptionsSchema } from '../../lib/solver/options';
 import type { SolveOutcome } from '../../lib/solver/outcome';
-import type { InputFault, PlacementProblem } from '../../lib/solver/problem';
+import type { PlacementProblem } from '../../lib/solver/problem';
 import { isBadInputError, runSolve } from '../../lib/solver/worker/client';
 import { readArguments, wholeNumber } from './arguments';
 import { printDocument, printFaults } from './print';
-import { type Faults, placeInFile, readFabric, readKernel, readPins } from './read-document';
+import type { Faults } from './read-document';
+import { inputFaultLine, readProblem } from './read-problem';
 import { usage } from './usage';
 
 const names = ['kernel', 'fabric', 'pins', 'objective', 'engine', 'time-limit-ms', 'seed'] as const;
@@ -45,12 +43,6 @@ export async function place(args: readonly string[]): Promise<0 | 2 | 3 | 4> {
   }
 }
 
-/** file:line:column of the first place that names the op or connection at fault. */
-function inputFaultLine(given: Given, { part, message, id }: InputFault): string {
-  const path = (part === 'pins' ? given.pins : part === 'fabric' ? given.fabric : given.kernel) ?? '';
-  return `${path}:${placeInFile(path, id)}: ${message}`;
-}
-
 function readOptions(given: Given): Result<SolveOptions, Faults> {
   const parsed = solveOptionsSchema.safeParse({
     engine: given.engine ?? defaultSolveOptions.engine,
@@ -64,17 +56,6 @@ function readOptions(given: Given): Result<SolveOptions, Faults> {
     seed: '--seed',
   };
   return err(parsed.error.issues.map((issue) => `${optionOf[String(issue.path[0])]}: ${issue.message}`));
-}
-
-function readProblem(given: Given): Result<PlacementProblem, Faults> {
-  const kernel: Result<Kernel, Faults> = readKernel(given.kernel ?? '');
-  const fabric: Result<Fabric, Faults> = readFabric(given.fabric ?? '');
-  const pins: Result<Pins, Faults> = given.pins === undefined ? ok({}) : readPins(given.pins);
-  const objective: Objective | undefined = objectives.find((one) => one === (given.objective ?? 'wire'));
-  const faults = [kernel, fabric, pins].flatMap((part) => (part.ok ? [] : part.error));
-  if (!objective) faults.push(`--objective: one of ${objectives.join(', ')}`);
-  if (!kernel.ok || !fabric.ok || !pins.ok || !objective) return err(faults);
-  return ok({ kernel: kernel.value, fabric: fabric.value, pins: pins.value, objective });
 }
 
 /** Every key is there for every status; what does not exist is null. */

@@ -7,6 +7,7 @@ import { parseKernelJson } from '../../lib/formats/kernel-json';
 import { parseMappingJson } from '../../lib/formats/mapping-json';
 import { type ParseResult, positionAt } from '../../lib/formats/parse-result';
 import { parsePinsJson } from '../../lib/formats/pins-json';
+import { parseQaplib, type QaplibDocument } from '../../lib/formats/qaplib';
 import type { Kernel } from '../../lib/graph/kernel';
 import type { MappingDocument, Pins } from '../../lib/mapping/mapping';
 import { err, ok, type Result } from '../../lib/result';
@@ -38,6 +39,7 @@ export const readKernel = (path: string): Result<Kernel, Faults> =>
   read(path, path.endsWith('.dot') || path.endsWith('.gv') ? parseKernelDot : parseKernelJson);
 export const readFabric = (path: string): Result<Fabric, Faults> => read(path, parseFabricJson);
 export const readPins = (path: string): Result<Pins, Faults> => read(path, parsePinsJson);
+export const readQaplib = (path: string): Result<QaplibDocument, Faults> => read(path, parseQaplib);
 export const readMapping = (path: string): Result<MappingDocument, Faults> => read(path, parseMappingJson);
 
 /** line:column of the first word that is the id; 1:1 without an id. */
