@@ -1,10 +1,8 @@
 /** Proves the best mapping optimal, finds better ones, or proves that there is none: the exact search. */
-import type { LinkId } from '../fabric/fabric';
-import type { OpId } from '../graph/kernel';
-import type { Routes } from '../mapping/mapping';
 import { exactSearch } from './exact/exact-search';
+import { noPlacementReason } from './explain/proved-reasons';
 import { type PlacementInstance, placementOf } from './instance';
-import { verifiedMapping } from './legal-mapping';
+import { routesOf, verifiedMapping } from './legal-mapping';
 import type { InfeasibleReason, StopReason } from './outcome';
 import type { CheckedProblem } from './problem';
 import type { SolveState } from './solve-state';
@@ -39,7 +37,7 @@ export function exactPass(
     },
     onMapping: (tiling, netLinks) => {
       const placement = placementOf(problem.kernel, problem.graph, tiling);
-      const mapping = netLinks && verifiedMapping(problem, placement, routesOf(problem, instance, netLinks));
+      const mapping = netLinks && verifiedMapping(problem, placement, routesOf(problem, netLinks));
       if (mapping) state.offer(mapping);
       return mapping !== null;
     },
@@ -50,7 +48,10 @@ export function exactPass(
       // A legal mapping stands against it: nothing is concluded.
       return state.best()
         ? { kind: 'unfinished', stop: 'search complete' }
-        : { kind: 'infeasible', explanation: reasonOf(problem, result.isCongested) };
+        : {
+            kind: 'infeasible',
+            explanation: result.isCongested ? tooFewChannels : noPlacementReason(problem),
+          };
     case 'proved':
       state.raise(result.bound);
       return { kind: 'proved' };
@@ -63,33 +64,11 @@ export function exactPass(
   }
 }
 
-function routesOf(
-  { kernel, graph }: CheckedProblem,
-  instance: PlacementInstance,
-  netLinks: readonly (readonly number[])[],
-): Routes {
-  const routes: Routes = {};
-  instance.nets.forEach((net, n) => {
-    const source = kernel.ops[net.source]?.id as OpId;
-    routes[source] = (netLinks[n] ?? []).map((link) => graph.links[link]?.id as LinkId);
-  });
-  return routes;
-}
-
-function reasonOf({ graph }: CheckedProblem, isCongested: boolean): InfeasibleReason {
-  const nothing = { opIds: [], tileIds: [], edgeIds: [] };
-  if (isCongested) {
-    return {
-      ...nothing,
-      code: 'too few channels',
-      message:
-        'Proved by exhaustive search: placements exist, but none can be routed, as the links have too few channels for the nets. Add channels or links, lengthen the clock period, or remove pins.',
-    };
-  }
-  const limit = graph.maxHops === null ? 'joined by links' : `within the clock's ${graph.maxHops} hops`;
-  return {
-    ...nothing,
-    code: 'proved by search',
-    message: `Proved by exhaustive search: no placement puts every op on a PE of its own that can hold it with all connections ${limit}. ${graph.maxHops === null ? 'Add links' : 'Lengthen the clock period'}, add units, or remove pins.`,
-  };
-}
+const tooFewChannels: InfeasibleReason = {
+  code: 'too few channels',
+  message:
+    'Proved by exhaustive search: placements exist, but none can be routed, as the links have too few channels for the nets. Add channels or links, lengthen the clock period, or remove pins.',
+  opIds: [],
+  tileIds: [],
+  edgeIds: [],
+};

@@ -42,7 +42,8 @@ export function legalMapping(
   return { ok: false, crowdedTiles: [...crowded] };
 }
 
-function routesOf({ kernel, graph }: CheckedProblem, trees: readonly (readonly number[])[]): Routes {
+/** Routes of link indices, one list for each of the kernel's nets in the order of `netsOf`, which is the instance's. */
+export function routesOf({ kernel, graph }: CheckedProblem, trees: readonly (readonly number[])[]): Routes {
   const routes: Routes = {};
   netsOf(kernel).forEach(({ source }, net) => {
     routes[source] = (trees[net] ?? []).flatMap((link) => graph.links[link]?.id ?? []);

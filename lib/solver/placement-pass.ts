@@ -1,6 +1,7 @@
 /** Bounds the objective by the placement model, and takes every placement the engine meets as a candidate. */
 import { attemptsFor } from './engines/choose-engine';
 import type { Engine, EngineOutcome } from './engines/engine';
+import { noPlacementReason } from './explain/proved-reasons';
 import { type PlacementInstance, tilingOf } from './instance';
 import type { IntegerProgram } from './integer-program/integer-program';
 import { estimateEntries, placementProgram } from './integer-program/placement-program';
@@ -42,7 +43,7 @@ export function placementPass(input: PassInput & { star: Float64Array | null }):
       const legal = legalMapping(problem, found, 0, state.shouldStop);
       if (legal.ok) state.offer(legal.mapping);
     },
-    infeasible: () => provedBySearch(problem),
+    infeasible: () => noPlacementReason(problem),
   });
 }
 
@@ -93,16 +94,4 @@ function take(outcome: EngineOutcome, state: SolveState, handling: PointHandling
       if (outcome.best) handling.onPoint(outcome.best.values);
       return null;
   }
-}
-
-function provedBySearch(problem: CheckedProblem): InfeasibleReason {
-  const { maxHops } = problem.graph;
-  const limit = maxHops === null ? 'joined by links' : `within the clock's ${maxHops} hops`;
-  return {
-    code: 'proved by search',
-    message: `Proved by exhaustive search: no placement puts every op on a PE of its own that can hold it with all connections ${limit}. ${maxHops === null ? 'Add links' : 'Lengthen the clock period'}, add units, or remove pins.`,
-    opIds: [],
-    tileIds: [],
-    edgeIds: [],
-  };
 }

@@ -1,10 +1,8 @@
 /** Closes the gap that congestion and large nets leave, by the full model of placement and routes, where it is small. */
-import type { LinkId } from '../fabric/fabric';
 import type { OpId } from '../graph/kernel';
-import type { Routes } from '../mapping/mapping';
 import { placementOf, tilingOf } from './instance';
 import { type RoutedMappingPoint, routedColumnCount, routedProgram } from './integer-program/routed-program';
-import { verifiedMapping } from './legal-mapping';
+import { routesOf, verifiedMapping } from './legal-mapping';
 import type { BestMapping } from './outcome';
 import { type PassInput, type PassResult, runEngines } from './placement-pass';
 import type { CheckedProblem } from './problem';
@@ -26,7 +24,7 @@ export function routedPass(input: PassInput): PassResult {
       const point = built.decode(values);
       if (!point) return;
       const placement = placementOf(problem.kernel, problem.graph, point.tiling);
-      const mapping = verifiedMapping(problem, placement, routesOf(input, point));
+      const mapping = verifiedMapping(problem, placement, routesOf(problem, point.netLinks));
       if (mapping) state.offer(mapping);
     },
     infeasible: () => ({
@@ -41,16 +39,6 @@ export function routedPass(input: PassInput): PassResult {
 }
 
 const sourceId = (problem: CheckedProblem, op: number): OpId => problem.kernel.ops[op]?.id as OpId;
-
-function routesOf({ problem, instance }: PassInput, point: RoutedMappingPoint): Routes {
-  const routes: Routes = {};
-  instance.nets.forEach((net, n) => {
-    routes[sourceId(problem, net.source)] = (point.netLinks[n] ?? []).map(
-      (link) => problem.graph.links[link]?.id as LinkId,
-    );
-  });
-  return routes;
-}
 
 function pointOf({ problem, instance }: PassInput, best: BestMapping): RoutedMappingPoint | null {
   const tiling = tilingOf(problem.kernel, problem.graph, best.placement);

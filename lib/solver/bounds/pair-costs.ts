@@ -32,6 +32,17 @@ export function pairCosts(instance: PlacementInstance): WeightedPair[] {
   return [...wire, ...instance.pairs.map(({ from, to }) => ({ a: from, b: to, weight: 1, table }))];
 }
 
+/** For each op the others that it has a cost with, for the price of a look at the pairs or nets: no table is made. */
+export function neighboursOf(instance: PlacementInstance): Set<number>[] {
+  const neighbours = Array.from({ length: instance.opCount }, () => new Set<number>());
+  const terms =
+    instance.objective === 'path'
+      ? instance.pairs.map(({ from, to }) => [from, to])
+      : instance.nets.map(({ source, consumers }) => [source, ...consumers]);
+  for (const ops of terms) for (const a of ops) for (const b of ops) if (a !== b) neighbours[a]?.add(b);
+  return neighbours;
+}
+
 const reachTable = (instance: PlacementInstance, cost: (hops: number) => number): TileTable =>
   Float64Array.from(instance.distance, (hops) =>
     withinReach(instance, hops) ? cost(hops) : Number.POSITIVE_INFINITY,

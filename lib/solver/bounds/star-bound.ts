@@ -9,7 +9,7 @@
  */
 import type { PlacementInstance } from '../instance';
 import { leastAssignment } from './assignment';
-import { pairCosts, type TileTable, transposed, type WeightedPair } from './pair-costs';
+import { neighboursOf, pairCosts, type TileTable, transposed, type WeightedPair } from './pair-costs';
 
 export interface StarBound {
   /** No legal mapping has a smaller objective; Infinity where no placement exists. */
@@ -67,19 +67,12 @@ function neighbourCosts(instance: PlacementInstance, pairs: readonly WeightedPai
 
 /** Steps that the stars take, about 5 ns each: costs looked up, and the small assignments. */
 export function starWork(instance: PlacementInstance): number {
-  const neighbours = Array.from({ length: instance.opCount }, () => new Set<number>());
-  const terms =
-    instance.objective === 'path' ? instance.pairs.map(({ from, to }) => [from, to]) : netOps(instance);
-  for (const ops of terms) for (const a of ops) for (const b of ops) if (a !== b) neighbours[a]?.add(b);
-  return neighbours.reduce((sum, others, op) => {
+  return neighboursOf(instance).reduce((sum, others, op) => {
     const lookups = [...others].reduce((all, other) => all + (instance.candidates[other]?.length ?? 0), 0);
     const assignment = others.size ** 2 * Math.min(others.size ** 2, instance.tileCount);
     return sum + (instance.candidates[op]?.length ?? 0) * (lookups + assignment);
   }, 0);
 }
-
-const netOps = (instance: PlacementInstance): number[][] =>
-  instance.nets.map(({ source, consumers }) => [source, ...consumers]);
 
 function starCosts(instance: PlacementInstance, pairs: readonly WeightedPair[]): Float64Array {
   const { opCount, tileCount, candidates } = instance;

@@ -6,14 +6,14 @@
  * Sources: Gilmore 1962 and Lawler 1963 (stars), Hahn and Grant 1998 (dual ascent by passing reduced costs between the
  * inner assignments and the outer one), here on pairs that cost something only.
  */
+import { type AssignmentSolver, assignmentSolver } from '../bounds/assignment';
 import { type ReassignScratch, reassign, reassignScratch } from './reassign';
 import type { PairTable, Relaxation } from './relaxation';
-import { type StarAssignment, starAssignment } from './star-assignment';
 
 const EPSILON = 1e-6;
 
 export interface AscentScratch extends ReassignScratch {
-  star: StarAssignment;
+  star: AssignmentSolver;
   least: Float64Array;
   leastTile: Int32Array;
   /** Marks the places of a domain that were gathered. */
@@ -22,7 +22,7 @@ export interface AscentScratch extends ReassignScratch {
 
 export const ascentScratch = (opCount: number, tileCount: number): AscentScratch => ({
   ...reassignScratch(tileCount),
-  star: starAssignment(Math.max(1, opCount), tileCount),
+  star: assignmentSolver(Math.max(1, opCount), tileCount),
   least: new Float64Array(opCount),
   leastTile: new Int32Array(opCount),
   gathered: new Uint8Array(tileCount),
@@ -145,7 +145,7 @@ function takeCrowdedStar(relaxation: Relaxation, op: number, p: number, { star }
   const value = star.solve(pairs.length);
   if (value === Number.POSITIVE_INFINITY || value === 0) return value;
   for (let r = 0; r < pairs.length; r++) {
-    lowerRow(relaxation, pairs[r] as PairTable, op, p, star.rowDual[r] as number, star.tileDual);
+    lowerRow(relaxation, pairs[r] as PairTable, op, p, star.rowDual[r] as number, star.columnDual);
   }
   return value;
 }

@@ -96,6 +96,7 @@ export function exactSearch(
   const root = rootRelaxation(instance);
   if (!root) return { kind: 'infeasible', bound: Number.POSITIVE_INFINITY, nodes: 0, isCongested: false };
   const router = fabric && jointRouter(fabric, instance.objective);
+  const step = costStep(instance);
   const search: Search = {
     instance,
     hooks,
@@ -105,8 +106,8 @@ export function exactSearch(
     tightening: netTightening(instance, router),
     tileOf: new Int32Array(instance.opCount).fill(-1),
     pairCountOf: Int32Array.from(root.pairsOf, (pairs) => pairs.length),
-    step: costStep(instance),
-    margin: MARGIN * costStep(instance),
+    step,
+    margin: MARGIN * step,
     nodes: 0,
     stopped: false,
     openAt: Number.POSITIVE_INFINITY,

@@ -6,7 +6,8 @@
  */
 import type { LinkGraph } from '../../fabric/link-graph';
 import type { Objective } from '../../mapping/mapping';
-import { DEFAULT_EXACT_WORK, shortestPathsTree, steinerTree } from '../routing/steiner-tree';
+import { walkLinks } from '../routing/link-tree';
+import { isWithinExactWork, shortestPathsTree, steinerTree } from '../routing/steiner-tree';
 
 export interface RoutingFabric extends LinkGraph {
   maxHops: number | null;
@@ -83,19 +84,17 @@ function wireTree(fabric: RoutingFabric, net: StandingNet, cost: Float64Array): 
     return { cost: weight * found.links.length, links: found.links, exact: found.exact };
   }
   // A net too large for the exact methods may have a tree that they do not find: its own one stays, and stays in conflict.
-  if (net.own && !isExactSize(fabric, targets.length)) return { ...net.own, exact: false };
+  if (net.own && !isWithinExactWork(fabric, targets.length, fabric.maxHops))
+    return { ...net.own, exact: false };
   return null;
 }
-
-const isExactSize = ({ tileCount, maxHops }: RoutingFabric, targets: number): boolean =>
-  tileCount * 3 ** targets * (maxHops ?? 1) <= DEFAULT_EXACT_WORK;
 
 /** Every path is a shortest one, so the sum of their hops cannot be less. */
 function pathTree(fabric: RoutingFabric, net: StandingNet, cost: Float64Array): LeastTree | null {
   const [source, ...targets] = net.tiles as readonly [number, ...number[]];
   const links = shortestPathsTree(barredGraph(fabric, cost), source, targets, cost);
   if (!links) return null;
-  const hops = hopsInTree(fabric, source, links);
+  const { hops } = walkLinks(fabric, source, links);
   let total = 0;
   for (const [i, target] of targets.entries()) {
     const path = hops.get(target);
@@ -111,23 +110,6 @@ function barredGraph(fabric: RoutingFabric, cost: Float64Array): LinkGraph {
   const open = (lists: LinkGraph['outLinks']) =>
     lists.map((links) => links.filter((link) => Number.isFinite(cost[link])));
   return { ...fabric, outLinks: open(fabric.outLinks), inLinks: open(fabric.inLinks) };
-}
-
-function hopsInTree(fabric: RoutingFabric, source: number, links: readonly number[]): Map<number, number> {
-  const hops = new Map([[source, 0]]);
-  const open = new Set(links);
-  for (let grew = true; grew; ) {
-    grew = false;
-    for (const link of open) {
-      const { from, to } = fabric.links[link] as RoutingFabric['links'][number];
-      const before = hops.get(from);
-      if (before === undefined) continue;
-      hops.set(to, before + 1);
-      open.delete(link);
-      grew = true;
-    }
-  }
-  return hops;
 }
 
 interface Task {

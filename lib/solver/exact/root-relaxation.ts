@@ -1,5 +1,5 @@
 /** The relaxation of the whole problem: the pairs' costs of the instance, nothing yet moved. */
-import { pairCosts, type WeightedPair } from '../bounds/pair-costs';
+import { neighboursOf, pairCosts, type WeightedPair } from '../bounds/pair-costs';
 import type { PlacementInstance } from '../instance';
 import { matchOps } from '../search/matching';
 import { listPairs, NOBODY, type PairTable, type Relaxation } from './relaxation';
@@ -7,7 +7,11 @@ import { listPairs, NOBODY, type PairTable, type Relaxation } from './relaxation
 /** Entries of all tables together, before anything is struck out. */
 export function tableEntries(instance: PlacementInstance): number {
   const size = (op: number) => instance.candidates[op]?.length ?? 0;
-  return joined(pairCosts(instance)).reduce((sum, { a, b }) => sum + size(a) * size(b), 0);
+  const both = neighboursOf(instance).reduce(
+    (sum, others, op) => sum + [...others].reduce((all, other) => all + size(op) * size(other), 0),
+    0,
+  );
+  return both / 2;
 }
 
 /** Null where not even one tile for each op can be found. */

@@ -24,7 +24,7 @@ export interface SteinerOptions {
 }
 
 /** Up to ten targets on 8 × 8 tiles, six on 64 × 64. */
-export const DEFAULT_EXACT_WORK = 4e6;
+const DEFAULT_EXACT_WORK = 4e6;
 
 /**
  * The cheapest tree from `source` to the `targets`, by `linkCost` for each link index: positive numbers, Infinity
@@ -41,17 +41,25 @@ export function steinerTree(
   if (ends.length === 0) return { links: [], cost: 0, exact: true };
   const limit = options.maxDepthHops ?? null;
   const work = options.exactWork ?? DEFAULT_EXACT_WORK;
-  const exact = graph.tileCount * 3 ** ends.length <= work;
+  const exact = isWithinExactWork(graph, ends.length, null, work);
   const free = exact ? subsetTree(graph, source, ends, linkCost) : attachTree(graph, source, ends, linkCost);
   if (free === null) return null;
   if (limit === null || treeDepth(graph, source, ends, free) <= limit) return finished(free, linkCost, exact);
-  const boundedExact = graph.tileCount * 3 ** ends.length * limit <= work;
+  const boundedExact = isWithinExactWork(graph, ends.length, limit, work);
   const bounded = boundedExact
     ? boundedTree(graph, source, ends, linkCost, limit)
     : shortestPathsTree(graph, source, ends, linkCost, options);
   if (bounded === null || treeDepth(graph, source, ends, bounded) > limit) return null;
   return finished(bounded, linkCost, boundedExact);
 }
+
+/** Whether the exact method takes on a tree to so many targets, within a limit on the hops of its paths or without one. */
+export const isWithinExactWork = (
+  graph: LinkGraph,
+  targets: number,
+  maxDepthHops: number | null,
+  work = DEFAULT_EXACT_WORK,
+): boolean => graph.tileCount * 3 ** targets * (maxDepthHops ?? 1) <= work;
 
 const finished = (links: number[], linkCost: ArrayLike<number>, exact: boolean): SteinerTree => ({
   links,
