@@ -1,5 +1,13 @@
 import type { Page } from '@playwright/test';
-import { checkAccessible, checkNoSidewaysScroll, demoWorkspace, dragTo, expect, test } from './support';
+import {
+  checkAccessible,
+  checkNoSidewaysScroll,
+  demoWorkspace,
+  dragTo,
+  expect,
+  openBench,
+  test,
+} from './support';
 
 const base = `/w/${demoWorkspace}/mappings`;
 const ownName = (what: string) => `${what} ${Date.now().toString(36)}`;
@@ -9,25 +17,6 @@ const tile = (page: Page, row: number, col: number) =>
   page.getByRole('gridcell', { name: new RegExp(`^Row ${row}, column ${col},`) });
 const figures = (page: Page) => page.getByRole('region', { name: 'Figures' });
 const said = (page: Page) => page.getByRole('status').filter({ hasText: /\S/ }).first();
-
-interface BenchOf {
-  kernel: string;
-  fabric: string;
-}
-/**
- * "Scale and clamp" has five ops; the 4 × 4 fabric's tiles are M S A M / M A X M / M A A M / M X A M
- * (memory, scratchpad, arithmetic, multiplier).
- */
-const small: BenchOf = { kernel: 'Gauge: scale and clamp · 5 ops', fabric: 'Gauge node, 4 × 4 · 4×4' };
-
-async function openBench(page: Page, name: string, of: BenchOf = small): Promise<void> {
-  await page.goto(`${base}/new`);
-  await page.getByLabel('Kernel').selectOption({ label: of.kernel });
-  await page.getByLabel('Fabric').selectOption({ label: of.fabric });
-  await page.getByLabel('Name').fill(name);
-  await page.getByRole('button', { name: 'Open the bench' }).click();
-  await expect(page.getByRole('heading', { level: 1, name })).toBeVisible();
-}
 
 async function pickAndPut(page: Page, name: string, row: number, col: number): Promise<void> {
   await op(page, name).click();

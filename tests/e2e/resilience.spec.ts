@@ -6,7 +6,7 @@ import { spawnSync } from 'node:child_process';
 import { readdirSync, readFileSync } from 'node:fs';
 import type { Page } from '@playwright/test';
 import { z } from 'zod';
-import { demoWorkspace, expect, test } from './support';
+import { demoWorkspace, expect, openBench, test } from './support';
 
 const w = `/w/${demoWorkspace}`;
 /** Of its own for each run, so that a run finds nothing of an earlier one. */
@@ -71,15 +71,6 @@ function solvesToldTo(page: Page): Solve[] {
   return told;
 }
 
-async function openBench(page: Page, name: string, kernel: string, fabric: string): Promise<void> {
-  await page.goto(`${w}/mappings/new`);
-  await page.getByLabel('Kernel').selectOption({ label: kernel });
-  await page.getByLabel('Fabric').selectOption({ label: fabric });
-  await page.getByLabel('Name').fill(name);
-  await page.getByRole('button', { name: 'Open the bench' }).click();
-  await expect(page.getByRole('heading', { level: 1, name })).toBeVisible();
-}
-
 const panel = (page: Page) => page.getByRole('region', { name: 'Auto-place' });
 const figures = (page: Page) => page.getByRole('region', { name: 'Figures' });
 const nodes = (page: Page) => page.locator('.react-flow__node');
@@ -122,12 +113,10 @@ test('a worker that is killed in the middle of a solve is replaced; the solve go
   const page = await pageOf('architect');
   const told = solvesToldTo(page);
   const last = () => told.at(-1);
-  await openBench(
-    page,
-    ownName('Worker lost'),
-    'Tiltmeter: size and direction · 30 ops',
-    'Slope tiltmeter, 8 × 8 · 8×8',
-  );
+  await openBench(page, ownName('Worker lost'), {
+    kernel: 'Tiltmeter: size and direction · 30 ops',
+    fabric: 'Slope tiltmeter, 8 × 8 · 8×8',
+  });
   await page.getByRole('button', { name: 'Auto-place the rest' }).click();
   await expect(panel(page)).toContainText(/Best\s*\d+/, { timeout: 60_000 });
 
@@ -199,12 +188,7 @@ test('the database is restarted under the editor: what was acknowledged stays, t
   await saved(page);
 
   // Queue and worker have found the database again too.
-  await openBench(
-    page,
-    ownName('Database back'),
-    'Gauge: scale and clamp · 5 ops',
-    'Gauge node, 4 × 4 · 4×4',
-  );
+  await openBench(page, ownName('Database back'));
   await page.getByRole('button', { name: 'Auto-place the rest' }).click();
   await expect(page.getByText(/Proved optimal/)).toBeVisible({ timeout: 60_000 });
 });

@@ -202,3 +202,28 @@ export async function freshWorkspace(page: Page, name: string): Promise<FreshWor
   if (!slug) throw new Error(`No workspace in ${page.url()}`);
   return { slug, email };
 }
+
+export interface BenchOf {
+  /** As the choices of the form read. */
+  kernel: string;
+  fabric: string;
+}
+
+/**
+ * "Scale and clamp" has five ops; the 4 × 4 fabric's tiles are M S A M / M A X M / M A A M / M X A M
+ * (memory, scratchpad, arithmetic, multiplier).
+ */
+export const smallBench: BenchOf = {
+  kernel: 'Gauge: scale and clamp · 5 ops',
+  fabric: 'Gauge node, 4 × 4 · 4×4',
+};
+
+/** Makes a bench of that name in the demo workspace and opens it. */
+export async function openBench(page: Page, name: string, of = smallBench): Promise<void> {
+  await page.goto(`/w/${demoWorkspace}/mappings/new`);
+  await page.getByLabel('Kernel').selectOption({ label: of.kernel });
+  await page.getByLabel('Fabric').selectOption({ label: of.fabric });
+  await page.getByLabel('Name').fill(name);
+  await page.getByRole('button', { name: 'Open the bench' }).click();
+  await expect(page.getByRole('heading', { level: 1, name })).toBeVisible();
+}
