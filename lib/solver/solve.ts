@@ -1,8 +1,7 @@
 /**
- * Places a kernel on a fabric: presolve → search → bound by an integer program → exact routes, with every mapping
- * routed and verified before it counts. One pass a function; each may end the solve by proving the best optimal.
+ * Places a kernel on a fabric: presolve → search → exact search, or in its place the integer programs, with every
+ * mapping routed and verified before it counts. One pass a function; each may end the solve by proving the best optimal.
  */
-
 import { ok, type Result } from '../result';
 import { starBound, starWork, trivialBound } from './bounds/star-bound';
 import type { Engine } from './engines/engine';
@@ -24,17 +23,17 @@ import { type SolveClock, type SolveState, solveState } from './solve-state';
 
 export interface SolveHooks extends SolveClock {
   onProgress(progress: SolveProgress): void;
-  /** The integer-program engines at hand. Without any, the search's answer and the star bound stand alone. */
+  /** The integer-program engines at hand, for the choices that name them. */
   engines: readonly Engine[];
 }
 
 /** Work of the star bound above which it is left out: it comes before the first mapping, so within about half a second. */
 const STAR_WORK_LIMIT = 2e7;
-/** The part of the time that the search may take before an engine takes over; more as long as nothing is found. */
+/** The part of the time that the search may take before the proof takes over; more as long as nothing is found. */
 const SEARCH_SHARE = 0.1;
+const FIRST_MAPPING_SHARE = 0.6;
 /** Slices without a better mapping after which the proof begins; it lets the search go on now and then. */
 const FIRST_STALE_ROUNDS = 4;
-const FIRST_MAPPING_SHARE = 0.6;
 
 /**
  * Blocks until done: run it in a thread (see worker/). Same problem, options and seed give the same answer as long
