@@ -18,6 +18,8 @@ export interface AscentScratch extends ReassignScratch {
   leastTile: Int32Array;
   /** Marks the places of a domain that were gathered. */
   gathered: Uint8Array;
+  /** Counts the choices of a tile for an op that were struck out because they cost too much. */
+  struck: number;
 }
 
 export const ascentScratch = (opCount: number, tileCount: number): AscentScratch => ({
@@ -26,6 +28,7 @@ export const ascentScratch = (opCount: number, tileCount: number): AscentScratch
   least: new Float64Array(opCount),
   leastTile: new Int32Array(opCount),
   gathered: new Uint8Array(tileCount),
+  struck: 0,
 });
 
 export interface AscentLimits {
@@ -75,8 +78,10 @@ export function gatherOp(
   const slack = cutoff + EPSILON - relaxation.constant;
   if (slack < 0) return false;
   for (let p = 0; p < domain.length; p++) {
-    if (gathered[p] && (residual[base + (domain[p] as number)] as number) > slack)
+    if (gathered[p] && (residual[base + (domain[p] as number)] as number) > slack) {
       strikeTile(relaxation, op, p);
+      scratch.struck++;
+    }
   }
   return true;
 }

@@ -39,6 +39,16 @@ export interface ExactResult {
   nodes: number;
   /** On the last level, some placement was refused because its nets cannot be routed together at that cost. */
   isCongested: boolean;
+  /** The levels that were searched through, in their order. */
+  levels: readonly ExactLevel[];
+  /** Choices of a tile for an op that were struck out because their bound exceeded a cutoff. */
+  struckTiles: number;
+}
+
+/** No legal mapping costs at most `cutoff`, or the incumbent is the cheapest: what `nodes` nodes have shown. */
+export interface ExactLevel {
+  cutoff: number;
+  nodes: number;
 }
 
 /** Entries of all pair tables above which the search is left out: a node keeps its own. */
@@ -62,6 +72,8 @@ interface Decided {
   fabric: readonly Int32Array[];
   kernel: readonly Int32Array[];
 }
+
+const NOTHING_DONE = { nodes: 0, isCongested: false, levels: [], struckTiles: 0 } as const;
 
 interface Search {
   instance: PlacementInstance;
@@ -91,10 +103,9 @@ export function exactSearch(
   fabric: RoutingFabric | null,
   hooks: ExactHooks,
 ): ExactResult {
-  if (tableEntries(instance) > TABLE_ENTRIES_LIMIT)
-    return { kind: 'too large', bound: 0, nodes: 0, isCongested: false };
+  if (tableEntries(instance) > TABLE_ENTRIES_LIMIT) return { kind: 'too large', bound: 0, ...NOTHING_DONE };
   const root = rootRelaxation(instance);
-  if (!root) return { kind: 'infeasible', bound: Number.POSITIVE_INFINITY, nodes: 0, isCongested: false };
+  if (!root) return { kind: 'infeasible', bound: Number.POSITIVE_INFINITY, ...NOTHING_DONE };
   const router = fabric && jointRouter(fabric, instance.objective);
   const step = costStep(instance);
   const search: Search = {
@@ -124,11 +135,14 @@ export function exactSearch(
 /** Raises the cutoff until nothing below the incumbent is left to try. */
 function deepen(search: Search, root: Relaxation, decided: Decided, most: number): ExactResult {
   const { hooks, step, margin } = search;
+  const levels: ExactLevel[] = [];
   const result = (kind: ExactResult['kind'], bound: number): ExactResult => ({
     kind,
     bound,
     nodes: search.nodes,
     isCongested: search.isCongested,
+    levels,
+    struckTiles: search.scratch.struck,
   });
   const limits = { cutoff: Math.min(most, hooks.incumbent()), sweeps: ROOT_SWEEPS, leastGain: LEAST_GAIN };
   if (!raiseConstant(root, limits, search.scratch)) {
@@ -149,6 +163,7 @@ function deepen(search: Search, root: Relaxation, decided: Decided, most: number
     visit(search, copyOf(root), cutoff, decided);
     if (search.stopped) return result('stopped', bound);
     if (search.openAt <= cutoff + margin) return result('unresolved', Math.min(bound, hooks.incumbent()));
+    levels.push({ cutoff, nodes: search.nodes - startNodes });
     bound = Math.min(cutoff + step, hooks.incumbent());
     hooks.onBound(bound);
     // A level that cost little, or hardly more than the one before, was too low to be worth a pass of its own.
