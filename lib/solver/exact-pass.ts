@@ -3,6 +3,7 @@ import { exactSearch } from './exact/exact-search';
 import { noPlacementReason } from './explain/proved-reasons';
 import { type PlacementInstance, placementOf } from './instance';
 import { routesOf, verifiedMapping } from './legal-mapping';
+import type { SolveOptions } from './options';
 import type { InfeasibleReason, StopReason } from './outcome';
 import type { CheckedProblem } from './problem';
 import type { SolveState } from './solve-state';
@@ -19,19 +20,22 @@ const FIRST_STRETCH_NODES = 2000;
 export function exactPass(
   problem: CheckedProblem,
   instance: PlacementInstance,
+  { nodeLimit }: Pick<SolveOptions, 'nodeLimit'>,
   state: SolveState,
   improve: (stretch: number) => void,
 ): ExactPassResult {
   let stretches = 0;
+  let atNodeLimit = false;
   state.setPhase('exact');
   state.noteEngine('exact');
   const result = exactSearch(instance, problem.graph, {
     incumbent: () => state.best()?.objectiveValue ?? Number.POSITIVE_INFINITY,
-    shouldStop: state.shouldStop,
+    shouldStop: () => atNodeLimit || state.shouldStop(),
     onBound: (bound) => void state.raise(bound),
     onNodes: (nodes) => {
       state.noteNodes(nodes);
-      if (nodes < FIRST_STRETCH_NODES * 2 ** stretches) return;
+      atNodeLimit = nodeLimit !== null && nodes >= nodeLimit;
+      if (atNodeLimit || nodes < FIRST_STRETCH_NODES * 2 ** stretches) return;
       stretches++;
       improve(stretches);
     },
@@ -60,7 +64,7 @@ export function exactPass(
     case 'too large':
       return { kind: 'unfinished', stop: 'model too large' };
     case 'stopped':
-      return { kind: 'unfinished', stop: 'time limit' };
+      return { kind: 'unfinished', stop: atNodeLimit ? 'node limit' : 'time limit' };
   }
 }
 

@@ -6,6 +6,7 @@ import type { Objective, Placement, Routes } from '../mapping/mapping';
 /** Why a solve that proved nothing more has ended. */
 export type StopReason =
   | 'time limit'
+  | 'node limit'
   | 'stopped'
   | 'memory limit'
   | 'model too large'

@@ -147,6 +147,8 @@ function found(best: BestMapping, bound: number, stopReason: StopReason, common:
 function nothing(bound: number, stopReason: StopReason, common: Common): SolveOutcome {
   const why: Record<StopReason, string> = {
     'time limit': 'No legal mapping was found within the time limit: allow more time.',
+    'node limit':
+      'The exact search reached its node limit before a legal mapping was found: allow more nodes.',
     stopped: 'The solve was stopped before a legal mapping was found.',
     'memory limit':
       'The solve reached its memory limit before a legal mapping was found: use a smaller fabric.',

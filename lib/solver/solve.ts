@@ -36,8 +36,8 @@ const FIRST_MAPPING_SHARE = 0.6;
 const FIRST_STALE_ROUNDS = 4;
 
 /**
- * Blocks until done: run it in a thread (see worker/). Same problem, options and seed give the same answer as long
- * as neither the time limit nor a stop ends it. Bad input is a value, not a throw.
+ * Blocks until done: run it in a thread (see worker/). Under a node limit, same problem, options and seed give the same
+ * answer as long as neither the time limit nor a stop ends it. Bad input is a value, not a throw.
  */
 export function solve(
   problem: PlacementProblem,
@@ -75,7 +75,7 @@ function runPasses(
   searchPass(problem, instance, options, state);
   if (options.engine === 'search' || state.shouldStop()) return state.finish('search complete');
   if (options.engine === 'auto') {
-    const exact = exactPass(problem, instance, state, (stretch) =>
+    const exact = exactPass(problem, instance, options, state, (stretch) =>
       improve(problem, instance, options, state, stretch),
     );
     if (exact.kind === 'infeasible') return state.infeasible(exact.explanation);
@@ -115,11 +115,12 @@ function searchPass(
 ): void {
   state.setPhase('search');
   state.noteEngine('search');
-  // Where nothing can follow, the search has all the time.
+  // Where nothing can follow, the search has all the time; under a node limit no share of time ends it.
   const alone = options.engine === 'search' || !canProve(options, instance);
   const startMs = state.elapsedMs();
   const spentRatio = () => (state.elapsedMs() - startMs) / (options.timeLimitMs - startMs);
-  const isOver = () => !alone && spentRatio() >= (state.best() ? SEARCH_SHARE : FIRST_MAPPING_SHARE);
+  const hasShare = !alone && options.nodeLimit === null;
+  const isOver = () => hasShare && spentRatio() >= (state.best() ? SEARCH_SHARE : FIRST_MAPPING_SHARE);
   const limits = alone ? { rounds: 400, staleRounds: 120 } : { rounds: 60, staleRounds: FIRST_STALE_ROUNDS };
   runSearch(
     problem,

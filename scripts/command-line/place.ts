@@ -12,7 +12,16 @@ import type { Faults } from './read-document';
 import { inputFaultLine, readProblem } from './read-problem';
 import { usage } from './usage';
 
-const names = ['kernel', 'fabric', 'pins', 'objective', 'engine', 'time-limit-ms', 'seed'] as const;
+const names = [
+  'kernel',
+  'fabric',
+  'pins',
+  'objective',
+  'engine',
+  'time-limit-ms',
+  'node-limit',
+  'seed',
+] as const;
 type Given = Partial<Record<(typeof names)[number], string>>;
 
 export async function place(args: readonly string[]): Promise<0 | 2 | 3 | 4> {
@@ -44,15 +53,19 @@ export async function place(args: readonly string[]): Promise<0 | 2 | 3 | 4> {
 }
 
 function readOptions(given: Given): Result<SolveOptions, Faults> {
+  const nodeLimit = given['node-limit'];
   const parsed = solveOptionsSchema.safeParse({
     engine: given.engine ?? defaultSolveOptions.engine,
     timeLimitMs: wholeNumber(given['time-limit-ms'] ?? String(defaultSolveOptions.timeLimitMs)),
     seed: wholeNumber(given.seed ?? String(defaultSolveOptions.seed)),
+    // What is no whole number becomes NaN, which the schema refuses; null is no limit.
+    nodeLimit: nodeLimit === undefined ? null : (wholeNumber(nodeLimit) ?? Number.NaN),
   });
   if (parsed.success) return ok(parsed.data);
   const optionOf: Record<string, string> = {
     engine: '--engine',
     timeLimitMs: '--time-limit-ms',
+    nodeLimit: '--node-limit',
     seed: '--seed',
   };
   return err(parsed.error.issues.map((issue) => `${optionOf[String(issue.path[0])]}: ${issue.message}`));

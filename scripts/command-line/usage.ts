@@ -7,7 +7,9 @@ npm run -s pinloom -- place --kernel K --fabric F [options]
   --objective O       wire (default): links of all nets; path: links of all paths
   --engine E          auto (default), program, highs, simplex or search
   --time-limit-ms N   30000 by default
-  --seed N            1 by default; the same seed gives the same answer, within the time limit
+  --node-limit N      nodes after which the exact search ends; then the answer does not depend on the machine's
+                      speed, as long as the time limit is not reached. Only for --engine auto
+  --seed N            1 by default; with a node limit the same seed gives the same answer
 
 npm run -s pinloom -- verify --kernel K --fabric F --mapping M
   Checks the mapping by rules R1 to R7 and names each one that it breaks.

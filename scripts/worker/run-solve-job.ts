@@ -83,7 +83,7 @@ async function solveTaken(
         objective: settings.objective,
         ...(startPlacement ? { start: startPlacement } : {}),
       },
-      { engine: settings.engine, timeLimitMs, seed: settings.seed },
+      { engine: settings.engine, timeLimitMs, seed: settings.seed, nodeLimit: null },
       { signal, memoryLimitMb: MEMORY_LIMIT_MB, onProgress: ledger.take },
     );
     return { ok: true, outcome };

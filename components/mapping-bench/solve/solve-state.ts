@@ -110,6 +110,7 @@ export const phaseText = (phase: string): string => phases[phase] ?? 'Waiting fo
 
 const stops: Record<string, string> = {
   'time limit': 'the time was up',
+  'node limit': 'the exact search reached its node limit',
   stopped: 'it was stopped',
   'memory limit': 'memory ran out',
   'model too large': 'the model is too large for the engine',

@@ -98,6 +98,9 @@ describe('pinloom place', { timeout: 60_000 }, () => {
     [['place'], /--kernel is missing/],
     [['place', ...chain, '--objective', 'area'], /--objective/],
     [['place', ...chain, '--time-limit-ms', 'soon'], /--time-limit-ms/],
+    [['place', ...chain, '--node-limit', '0'], /--node-limit/],
+    [['place', ...chain, '--node-limit', 'few'], /--node-limit/],
+    [['place', ...chain, '--node-limit', '9', '--engine', 'program'], /--node-limit: .* engine auto/],
     [['place', ...chain, '--colour', 'red'], /--colour/],
     [
       ['place', '--kernel', 'no-such-file.json', '--fabric', fixture('hive.fabric.json')],
