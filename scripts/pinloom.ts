@@ -1,4 +1,5 @@
 /** The command line's entry: exit codes are 0 done, 2 bad input, 3 infeasible or illegal, 4 nothing found. */
+import { printPinPrice } from './command-line/pin-price';
 import { place } from './command-line/place';
 import { usage } from './command-line/usage';
 import { verify } from './command-line/verify';
@@ -12,6 +13,7 @@ const allUsage = `${usage}${modelUsage}${qapUsage}`;
 async function run(args: readonly string[]): Promise<ExitCode> {
   const [command, ...rest] = args;
   if (command === 'place') return place(rest);
+  if (command === 'pin-price') return printPinPrice(rest);
   if (command === 'verify') return verify(rest);
   if (command === 'model') return model(rest);
   if (command === 'qap') return qap(rest);

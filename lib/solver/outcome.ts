@@ -11,6 +11,7 @@ export type StopReason =
   | 'memory limit'
   | 'model too large'
   | 'search complete'
+  | 'another found'
   | 'routing gap'
   | 'thread failed';
 
@@ -19,7 +20,8 @@ export type InfeasibleCode =
   | 'pin conflict'
   | 'out of reach'
   | 'too few channels'
-  | 'proved by search';
+  | 'proved by search'
+  | 'no other';
 
 /** Why no legal mapping exists, in words that tell a person what to change. */
 export interface InfeasibleReason {

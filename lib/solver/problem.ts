@@ -1,4 +1,5 @@
 /** What is to be placed, and whether it can be tried at all. */
+import { z } from 'zod';
 import { compileFabric, type FabricGraph } from '../fabric/compile';
 import { type Fabric, fabricSchema } from '../fabric/fabric';
 import { type UnitLibrary, type UnitSpec, unitLibrary } from '../fabric/unit-library';
@@ -21,9 +22,24 @@ export interface PlacementProblem {
   objective: Objective;
   /** A placement to start from, whole or partial. Parts that are not legal are left out. */
   start?: Placement;
+  /** Asks for another mapping than these instead of for the best one. */
+  another?: AnotherAsk;
+  /** No legal mapping is cheaper, as was proved before for this kernel, fabric and objective and no more than these pins. */
+  provenBound?: number;
   /** The workspace's own units, besides the built-in ones. */
   units?: readonly UnitSpec[];
 }
+
+/** Each is held against everything that is found. */
+export const MOST_AVOIDED = 50;
+
+export const anotherSchema = z.strictObject({
+  /** The other mapping costs at most this. */
+  objectiveValue: z.number().nonnegative(),
+  /** Whole placements: neither they nor their mirror images are an answer. */
+  than: z.array(placementSchema).max(MOST_AVOIDED),
+});
+export type AnotherAsk = z.infer<typeof anotherSchema>;
 
 export interface CheckedProblem extends PlacementProblem {
   graph: FabricGraph;
@@ -41,7 +57,7 @@ export interface BadInput {
 }
 
 export interface InputFault {
-  part: 'kernel' | 'fabric' | 'pins' | 'start' | 'objective';
+  part: 'kernel' | 'fabric' | 'pins' | 'start' | 'objective' | 'another' | 'provenBound';
   message: string;
   /** The op or connection that is at fault, where it is one. */
   id: string | null;
@@ -77,6 +93,7 @@ export function checkProblem(problem: PlacementProblem): Result<CheckedProblem, 
       pinFault(`${id} is pinned to ${tile}, but the fabric has ${size}: pin it to a tile of the fabric.`);
     }
   }
+  faults.push(...anotherFaults(problem, graph));
   if (graph.tileCount * kernel.ops.length > PROBLEM_LIMITS.candidates) {
     const message = `${kernel.ops.length} ops on ${graph.tileCount} tiles are more than the solver takes on: use a smaller fabric or kernel.`;
     faults.push({ part: 'kernel', message, id: null });
@@ -85,12 +102,26 @@ export function checkProblem(problem: PlacementProblem): Result<CheckedProblem, 
   return ok({ ...problem, graph, library: unitLibrary(problem.units ?? []) });
 }
 
+/** What is to be avoided has to be whole: a part of a placement is no placement that could be found again. */
+function anotherFaults({ kernel, another }: PlacementProblem, graph: FabricGraph): InputFault[] {
+  return (another?.than ?? []).flatMap((placement, i) => {
+    const missing = kernel.ops.find((op) => graph.tileIndex(placement[op.id] ?? '') < 0);
+    if (!missing) return [];
+    const at = placement[missing.id];
+    const why = at === undefined ? 'gives it no tile' : `puts it on ${at}, which the fabric does not have`;
+    const message = `${missing.id}: placement ${i + 1} of those to avoid ${why}: give whole placements of this kernel on this fabric.`;
+    return [{ part: 'another' as const, message, id: missing.id }];
+  });
+}
+
 function shapeFaults(problem: PlacementProblem): InputFault[] {
   const parts = [
     ['kernel', kernelSchema.safeParse(problem.kernel)],
     ['fabric', fabricSchema.safeParse(problem.fabric)],
     ['pins', pinsSchema.safeParse(problem.pins)],
     ['start', placementSchema.safeParse(problem.start ?? {})],
+    ['another', anotherSchema.optional().safeParse(problem.another)],
+    ['provenBound', z.number().nonnegative().optional().safeParse(problem.provenBound)],
   ] as const;
   const faults: InputFault[] = parts.flatMap(([part, parsed]) =>
     parsed.success

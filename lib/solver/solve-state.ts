@@ -155,6 +155,7 @@ function nothing(bound: number, stopReason: StopReason, common: Common): SolveOu
     'model too large':
       'The search found no legal mapping, and the integer program would be too large to prove more.',
     'search complete': 'The search ended without a legal mapping: allow more time, or add channels or units.',
+    'another found': 'The solve ended without a legal mapping.',
     'routing gap':
       'Placements exist, but none that was tried could be routed: add channels to the links or allow more time.',
     'thread failed': 'The solver thread ended unexpectedly before a legal mapping was found: try again.',

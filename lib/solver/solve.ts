@@ -1,8 +1,10 @@
 /**
  * Places a kernel on a fabric: presolve → search → exact search, or in its place the integer programs, with every
  * mapping routed and verified before it counts. One pass a function; each may end the solve by proving the best optimal.
+ * Where the problem asks for another mapping than given ones, one pass of its own does that: another-pass.ts.
  */
 import { ok, type Result } from '../result';
+import { anotherPass } from './another-pass';
 import { starBound, starWork, trivialBound } from './bounds/star-bound';
 import type { Engine } from './engines/engine';
 import { TABLE_ENTRIES_LIMIT } from './exact/exact-search';
@@ -65,13 +67,14 @@ function runPasses(
   );
   const explanation = explainInfeasible(problem, instance);
   if (explanation) return state.infeasible(explanation);
-  state.raise(trivialBound(instance));
+  state.raise(Math.max(trivialBound(instance), problem.provenBound ?? 0));
   const star = starsWithinWork(instance);
   if (star) {
     const tooFar = explainStars(problem, instance, star.star);
     if (tooFar) return state.infeasible(tooFar);
     state.raise(Math.ceil(star.bound - 1e-6));
   }
+  if (problem.another) return anotherPass(problem, instance, options, state, problem.another);
   searchPass(problem, instance, options, state);
   if (options.engine === 'search' || state.shouldStop()) return state.finish('search complete');
   if (options.engine === 'auto') {

@@ -1,7 +1,9 @@
 /** Reads the files that the commands name; a fault is told as file:line:column. */
 import { readFileSync, statSync } from 'node:fs';
+import { z } from 'zod';
 import type { Fabric } from '../../lib/fabric/fabric';
 import { parseFabricJson } from '../../lib/formats/fabric-json';
+import { parseJsonDocument } from '../../lib/formats/json-document';
 import { parseKernelDot } from '../../lib/formats/kernel-dot';
 import { parseKernelJson } from '../../lib/formats/kernel-json';
 import { parseMappingJson } from '../../lib/formats/mapping-json';
@@ -9,7 +11,7 @@ import { type ParseResult, positionAt } from '../../lib/formats/parse-result';
 import { parsePinsJson } from '../../lib/formats/pins-json';
 import { parseQaplib, type QaplibDocument } from '../../lib/formats/qaplib';
 import type { Kernel } from '../../lib/graph/kernel';
-import type { MappingDocument, Pins } from '../../lib/mapping/mapping';
+import { type MappingDocument, type Pins, placementSchema, routesSchema } from '../../lib/mapping/mapping';
 import { err, ok, type Result } from '../../lib/result';
 
 /** Lines for standard error. */
@@ -40,6 +42,22 @@ export const readKernel = (path: string): Result<Kernel, Faults> =>
 export const readFabric = (path: string): Result<Fabric, Faults> => read(path, parseFabricJson);
 export const readPins = (path: string): Result<Pins, Faults> => read(path, parsePinsJson);
 export const readQaplib = (path: string): Result<QaplibDocument, Faults> => read(path, parseQaplib);
+/** What `place` prints, as far as it says where everything is. */
+const placedSchema = z.object({ placement: placementSchema, routes: routesSchema });
+
+/** A mapping document, or what `place` has printed. */
+export const readPlaced = (path: string): Result<Pick<MappingDocument, 'placement' | 'routes'>, Faults> =>
+  read(path, (text) => (isOutcome(text) ? parseJsonDocument(text, placedSchema) : parseMappingJson(text)));
+
+function isOutcome(text: string): boolean {
+  try {
+    const document: unknown = JSON.parse(text);
+    return typeof document === 'object' && document !== null && 'status' in document;
+  } catch {
+    return false;
+  }
+}
+
 export const readMapping = (path: string): Result<MappingDocument, Faults> => read(path, parseMappingJson);
 
 /** line:column of the first word that is the id; 1:1 without an id. */

@@ -10,11 +10,18 @@ npm run -s pinloom -- place --kernel K --fabric F [options]
   --node-limit N      nodes after which the exact search ends; then the answer does not depend on the machine's
                       speed, as long as the time limit is not reached. Only for --engine auto
   --seed N            1 by default; with a node limit the same seed gives the same answer
+  --another-than M    a mapping, .json, or what place has printed: looks for another one that costs no more
+                      and is no mirror image of it. Given several times, for one that is none of them and
+                      costs no more than the first
+
+npm run -s pinloom -- pin-price --kernel K --fabric F --pins P --op OP [options]
+  Solves with and without the pin of the op OP and tells what it costs: exact where both are proved, else
+  from least to most. Options as for place; the limits are for each of the two.
 
 npm run -s pinloom -- verify --kernel K --fabric F --mapping M
   Checks the mapping by rules R1 to R7 and names each one that it breaks.
 
-Both print one JSON document on standard output and nothing else there.
+Each prints one JSON document on standard output and nothing else there.
 Exit codes: 0 placed or legal, 2 bad input (file:line:column on standard error),
-3 no legal mapping exists or rules are broken, 4 nothing found.
+3 no legal mapping exists, or no other one, or rules are broken, 4 nothing found.
 `;

@@ -5,7 +5,7 @@
 import type { Fabric } from '@/lib/fabric/fabric';
 import { canHost } from '@/lib/fabric/unit-library';
 import type { Kernel } from '@/lib/graph/kernel';
-import type { Objective, Pins } from '@/lib/mapping/mapping';
+import type { Objective, Pins, Placement } from '@/lib/mapping/mapping';
 
 interface Link {
   from: string;
@@ -50,6 +50,36 @@ export function exhaustiveOptimum(
   pins: Pins,
   objective: Objective,
 ): number | null {
+  let best: number | null = null;
+  tryEverything(kernel, fabric, pins, objective, (_, leastBelow) => {
+    best = leastBelow(best ?? Number.POSITIVE_INFINITY) ?? best;
+  });
+  return best;
+}
+
+/** Every legal placement, op to tile, with the least objective that it can be routed at. */
+export function everyPlacement(
+  kernel: Kernel,
+  fabric: Fabric,
+  pins: Pins,
+  objective: Objective,
+): { placement: Placement; cost: number }[] {
+  const found: { placement: Placement; cost: number }[] = [];
+  tryEverything(kernel, fabric, pins, objective, (placement, leastBelow) => {
+    const cost = leastBelow(Number.POSITIVE_INFINITY);
+    if (cost !== null) found.push({ placement: Object.fromEntries(placement) as Placement, cost });
+  });
+  return found;
+}
+
+/** Calls `meet` with each placement that keeps R1 to R4, and what tells its least objective below a number, if any. */
+function tryEverything(
+  kernel: Kernel,
+  fabric: Fabric,
+  pins: Pins,
+  objective: Objective,
+  meet: (placement: ReadonlyMap<string, string>, leastBelow: (below: number) => number | null) => void,
+): void {
   const links = linksOf(fabric);
   const { clock } = fabric;
   const limit = clock ? Math.floor((clock.periodPs - clock.entryDelayPs) / clock.hopDelayPs) : links.length;
@@ -59,7 +89,6 @@ export function exhaustiveOptimum(
   const nets = [...new Set(kernel.edges.map((edge) => edge.from))]
     .map((source) => ({ source, edges: kernel.edges.filter((e) => e.from === source && e.to !== source) }))
     .filter((net) => net.edges.length > 0);
-  let best: number | null = null;
   const placement = new Map<string, string>();
   const placeFrom = (next: number): void => {
     const op = kernel.ops[next];
@@ -68,8 +97,7 @@ export function exhaustiveOptimum(
         const targets = edges.map((edge) => placement.get(edge.to) as string);
         return usefulTrees(treesFrom.get(placement.get(source) as string) ?? [], links, targets, objective);
       });
-      const cost = leastWithinChannels(choices, links, best ?? Number.POSITIVE_INFINITY);
-      if (cost !== null && (best === null || cost < best)) best = cost;
+      meet(placement, (below) => leastWithinChannels(choices, links, below));
       return;
     }
     tiles.forEach((tile, i) => {
@@ -81,7 +109,6 @@ export function exhaustiveOptimum(
     });
   };
   placeFrom(0);
-  return best;
 }
 
 /** Every tree of links out of a tile with no path beyond the limit, as tile → depth; its links are in `treeLinks`. */

@@ -1,0 +1,195 @@
+/**
+ * Looks for a legal mapping that costs no more than asked and is none of the given placements, nor a mirror image of
+ * one: one step from the given ones first, then among the search's results, then by the exact search, which also proves
+ * that there is none.
+ *
+ * The exact search is told of an objective just above the one asked for, so that everything up to it is of interest, and
+ * does not learn of what it finds. Of placements that are symmetric to each other it shows one; where that is an image of
+ * an avoided one, all of them are.
+ */
+import { exactSearch, TABLE_ENTRIES_LIMIT } from './exact/exact-search';
+import { tableEntries } from './exact/root-relaxation';
+import { costStep } from './exact/standing-nets';
+import { noOtherReason, noOtherYet } from './explain/no-other';
+import { type PlacementInstance, placementOf, type Tiling, tilingOf } from './instance';
+import { legalMapping, routesOf, startTiles, verifiedMapping } from './legal-mapping';
+import { imageTest } from './mirror-images';
+import { nearPlacements } from './near-placements';
+import type { SolveOptions } from './options';
+import type { BestMapping, SolveOutcome, StopReason } from './outcome';
+import type { AnotherAsk, CheckedProblem } from './problem';
+import { searchPlacements } from './search/search';
+import type { SolveState } from './solve-state';
+
+/** The part of the time that may be spent one step from the given placements, and how many of each one's are routed. */
+const NEAR_SHARE = 0.1;
+const MOST_NEAR = 100;
+/** The part of the time that the search may take before the exact search begins. */
+const SEARCH_SHARE = 0.15;
+const FIRST_STALE_ROUNDS = 4;
+/** Nodes after which the search has another try for the first time; each later time after twice as many. */
+const FIRST_STRETCH_NODES = 2000;
+/** Far above rounding, far below the step between two costs. */
+const TOLERANCE = 1e-6;
+
+interface Hunt {
+  problem: CheckedProblem;
+  instance: PlacementInstance;
+  options: SolveOptions;
+  state: SolveState;
+  asked: AnotherAsk;
+  isAvoided(tiling: Tiling): boolean;
+  /** Objective of the cheapest avoided mapping that was met: bounds of the others hold for all mappings up to it. */
+  leastAvoided: number;
+  taken: boolean;
+}
+
+/** Preconditions: reasons for infeasibility are ruled out. `feasible` says that the proof of the bound is not finished. */
+export function anotherPass(
+  problem: CheckedProblem,
+  instance: PlacementInstance,
+  options: SolveOptions,
+  state: SolveState,
+  asked: AnotherAsk,
+): SolveOutcome {
+  const avoided = asked.than.flatMap((placement) => tilingOf(problem.kernel, problem.graph, placement) ?? []);
+  const hunt: Hunt = {
+    problem,
+    instance,
+    options,
+    state,
+    asked,
+    isAvoided: imageTest(instance, problem.graph.links, avoided),
+    leastAvoided: Number.POSITIVE_INFINITY,
+    taken: false,
+  };
+  const isAlone = options.engine === 'search' || tableEntries(instance) > TABLE_ENTRIES_LIMIT;
+  state.setPhase('search');
+  state.noteEngine('search');
+  lookNear(hunt, avoided);
+  if (!hunt.taken) searchFirst(hunt, avoided.at(-1) ?? null, isAlone);
+  if (hunt.taken) return state.finish('another found');
+  if (options.engine === 'search' || state.remainingMs() <= 0 || state.shouldStop()) {
+    return unknown(hunt, 'search complete');
+  }
+  return searchAll(hunt, avoided.at(-1) ?? null);
+}
+
+/** Takes the mapping if it is one that was asked for. */
+function look(hunt: Hunt, tiling: Tiling, mapping: BestMapping): void {
+  if (hunt.isAvoided(tiling)) hunt.leastAvoided = Math.min(hunt.leastAvoided, mapping.objectiveValue);
+  else if (!hunt.taken && mapping.objectiveValue <= hunt.asked.objectiveValue + TOLERANCE) {
+    hunt.state.offer(mapping);
+    hunt.taken = true;
+  }
+}
+
+/** Under a node limit no share of the time ends anything, so that the answer does not depend on the machine's speed. */
+const shareOf = ({ nodeLimit }: SolveOptions, share: number): number => (nodeLimit === null ? share : 1);
+
+const isOver = ({ taken, state }: Hunt): boolean => taken || state.shouldStop();
+
+/** On large problems there are often others nearby that the search, which starts afresh, does not come by. */
+function lookNear(hunt: Hunt, avoided: readonly Tiling[]): void {
+  const { problem, instance, options, state, asked } = hunt;
+  const endMs = state.elapsedMs() + shareOf(options, NEAR_SHARE) * state.remainingMs();
+  const shouldStop = () => isOver(hunt) || state.elapsedMs() >= endMs;
+  const limits = { mostCost: asked.objectiveValue + TOLERANCE, limit: MOST_NEAR, shouldStop };
+  for (const around of avoided.toReversed()) {
+    if (!isStandable(instance, around)) continue;
+    for (const tiling of nearPlacements(instance, around, limits)) {
+      if (shouldStop()) return;
+      if (hunt.isAvoided(tiling)) continue;
+      const legal = legalMapping(problem, tiling, options.seed, state.shouldStop);
+      if (legal.ok) look(hunt, tiling, legal.mapping);
+    }
+  }
+}
+
+function searchFirst(hunt: Hunt, around: Tiling | null, isAlone: boolean): void {
+  const { problem, instance, options, state } = hunt;
+  const endMs = state.elapsedMs() + (isAlone ? 1 : shareOf(options, SEARCH_SHARE)) * state.remainingMs();
+  const limits = isAlone
+    ? { rounds: 400, staleRounds: 120 }
+    : { rounds: 60, staleRounds: FIRST_STALE_ROUNDS };
+  const start = startTiles(problem, instance) ?? around;
+  searchAround(hunt, start, { ...limits, seed: options.seed }, () => state.elapsedMs() >= endMs);
+}
+
+/** Every legal mapping that the search meets is looked at, not only those that are better than the last. */
+function searchAround(
+  hunt: Hunt,
+  start: Tiling | null,
+  limits: { rounds: number; staleRounds: number; seed: number },
+  isSpent: () => boolean,
+): void {
+  const { problem, instance, state } = hunt;
+  const { links } = problem.graph;
+  searchPlacements(
+    instance,
+    start && isStandable(instance, start) ? start : null,
+    // No mapping costs less than 0, so none ends the search: the one that does not count may be the cheapest.
+    { ...limits, bound: -1, links },
+    {
+      shouldStop: () => isOver(hunt) || isSpent(),
+      settle: (tiling, round, trees) => {
+        const legal = legalMapping(problem, tiling, round, state.shouldStop, trees);
+        if (!legal.ok) return legal;
+        look(hunt, tiling, legal.mapping);
+        return { ok: true, objectiveValue: legal.mapping.objectiveValue };
+      },
+    },
+  );
+}
+
+/** An avoided placement may have been made under other pins. */
+const isStandable = ({ candidates }: PlacementInstance, tiling: Tiling): boolean =>
+  tiling.every((tile, op) => tile < 0 || candidates[op]?.includes(tile));
+
+function searchAll(hunt: Hunt, around: Tiling | null): SolveOutcome {
+  const { problem, instance, options, state, asked } = hunt;
+  let stretches = 0;
+  let atNodeLimit = false;
+  state.setPhase('exact');
+  state.noteEngine('exact');
+  const result = exactSearch(instance, problem.graph, {
+    incumbent: () => asked.objectiveValue + costStep(instance),
+    shouldStop: () => atNodeLimit || isOver(hunt),
+    onBound: (bound) => void state.raise(Math.min(bound, hunt.leastAvoided)),
+    onNodes: (nodes) => {
+      state.noteNodes(nodes);
+      atNodeLimit = options.nodeLimit !== null && nodes >= options.nodeLimit;
+      if (atNodeLimit || nodes < FIRST_STRETCH_NODES * 2 ** stretches) return;
+      stretches++;
+      const seed = options.seed + stretches;
+      const limits = { rounds: 60, staleRounds: FIRST_STALE_ROUNDS + stretches, seed };
+      searchAround(hunt, around, limits, () => false);
+    },
+    onMapping: (tiling, netLinks) => {
+      const placement = placementOf(problem.kernel, problem.graph, tiling);
+      const mapping = netLinks && verifiedMapping(problem, placement, routesOf(problem, netLinks));
+      if (mapping) look(hunt, tiling, mapping);
+      return mapping !== null;
+    },
+  });
+  state.noteNodes(result.nodes);
+  if (hunt.taken) return state.finish('another found');
+  switch (result.kind) {
+    case 'proved':
+    case 'infeasible':
+      return state.infeasible(noOtherReason(asked, problem.objective));
+    case 'unresolved':
+      return unknown(hunt, 'routing gap');
+    case 'too large':
+      return unknown(hunt, 'model too large');
+    case 'stopped':
+      return unknown(hunt, atNodeLimit ? 'node limit' : 'time limit');
+  }
+}
+
+/** Nothing was found, and that there is nothing is not proved. */
+function unknown({ state, asked, problem }: Hunt, stop: StopReason): SolveOutcome {
+  const outcome = state.finish(stop);
+  if (outcome.status !== 'unknown') return outcome;
+  return { ...outcome, reason: noOtherYet(asked, problem.objective, outcome.stopReason) };
+}

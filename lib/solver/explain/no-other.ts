@@ -1,0 +1,31 @@
+/** What is said where no other mapping than given ones was found, proved or not. */
+import type { Objective } from '../../mapping/mapping';
+import type { InfeasibleReason, StopReason } from '../outcome';
+import type { AnotherAsk } from '../problem';
+
+const wanted = ({ objectiveValue, than }: AnotherAsk, objective: Objective): string =>
+  `${than.length > 0 ? 'other ' : ''}placement of at most ${objectiveValue} ${objective} hops`;
+
+export function noOtherReason(asked: AnotherAsk, objective: Objective): InfeasibleReason {
+  const besides = asked.than.length > 0 ? ' besides mirror images of the ones shown' : '';
+  return {
+    code: 'no other',
+    message: `Proved by exhaustive search: no ${wanted(asked, objective)} exists${besides}.`,
+    opIds: [],
+    tileIds: [],
+    edgeIds: [],
+  };
+}
+
+const why: Partial<Record<StopReason, string>> = {
+  'time limit': 'was found within the time limit: allow more time',
+  'node limit': 'was found within the node limit: allow more nodes',
+  stopped: 'had been found when the solve was stopped',
+  'memory limit': 'had been found when the memory limit was reached',
+  'search complete': 'was met by the search, which proves nothing: use the exact search',
+  'model too large': 'was met by the search, and the problem is too large for the exact search',
+  'routing gap': 'was found, but of some placement it is not settled whether it can be routed',
+};
+
+export const noOtherYet = (asked: AnotherAsk, objective: Objective, stop: StopReason): string =>
+  `No ${wanted(asked, objective)} ${why[stop] ?? 'was found'}.`;
