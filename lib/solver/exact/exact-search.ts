@@ -4,12 +4,13 @@
  * tiles early (iterative deepening on cost: Korf 1985). At a node the dual ascent raises the relaxation's bound; nets
  * whose terminals all stand are routed together exactly, and what that costs more is part of the bound.
  */
+import { neighboursOf } from '../bounds/pair-costs';
 import type { PlacementInstance } from '../instance';
 import { type AscentScratch, ascentScratch, gatherOp, raiseConstant, strikeTile } from './dual-ascent';
 import { type JointRouter, jointRouter, type RoutingFabric } from './joint-routing';
 import { type NetTightening, netTightening } from './net-tightening';
 import { augment, reassignAll } from './reassign';
-import { NOBODY, placeOp, type Relaxation } from './relaxation';
+import { blankRelaxation, copyInto, isPossible, NOBODY, placeInto, type Relaxation } from './relaxation';
 import { rootRelaxation, tableEntries } from './root-relaxation';
 import { costStep, type NumberedNet, type StandingNets, standingNets } from './standing-nets';
 import { fabricSymmetries, kernelSymmetries } from './symmetry';
@@ -82,6 +83,9 @@ interface Search {
   router: JointRouter | null;
   nets: StandingNets;
   tightening: NetTightening;
+  /** The node of each depth, written over again and again. */
+  nodeAt: Relaxation[];
+  kept: Int32Array;
   /** Tile of each placed op, −1 for free ones. */
   tileOf: Int32Array;
   /** Pairs of each instance op, before anything is placed. */
@@ -115,8 +119,10 @@ export function exactSearch(
     router,
     nets: standingNets(instance),
     tightening: netTightening(instance, router),
+    nodeAt: [],
+    kept: new Int32Array(instance.opCount * instance.tileCount),
     tileOf: new Int32Array(instance.opCount).fill(-1),
-    pairCountOf: Int32Array.from(root.pairsOf, (pairs) => pairs.length),
+    pairCountOf: Int32Array.from(neighboursOf(instance), (others) => others.size),
     step,
     margin: MARGIN * step,
     nodes: 0,
@@ -144,12 +150,19 @@ function deepen(search: Search, root: Relaxation, decided: Decided, most: number
     levels,
     struckTiles: search.scratch.struck,
   });
-  const limits = { cutoff: Math.min(most, hooks.incumbent()), sweeps: ROOT_SWEEPS, leastGain: LEAST_GAIN };
+  const wholeBound = (constant: number) => step * Math.ceil((constant - margin) / step);
+  const limits = {
+    cutoff: Math.min(most, hooks.incumbent()),
+    sweeps: ROOT_SWEEPS,
+    leastGain: LEAST_GAIN,
+    shouldStop: hooks.shouldStop,
+    onSweep: (constant: number) => hooks.onBound(wholeBound(constant)),
+  };
   if (!raiseConstant(root, limits, search.scratch)) {
     const known = hooks.incumbent();
     return Number.isFinite(known) ? result('proved', known) : result('infeasible', Number.POSITIVE_INFINITY);
   }
-  let bound = step * Math.ceil((root.constant - margin) / step);
+  let bound = wholeBound(root.constant);
   hooks.onBound(bound);
   let stride = step;
   let before = 0;
@@ -160,7 +173,8 @@ function deepen(search: Search, root: Relaxation, decided: Decided, most: number
     const cutoff = Math.min(bound + stride - step, known - step, most);
     const startNodes = search.nodes;
     search.isCongested = false;
-    visit(search, copyOf(root), cutoff, decided);
+    copyInto(nodeAt(search, root, 0), root);
+    visit(search, 0, cutoff, decided);
     if (search.stopped) return result('stopped', bound);
     if (search.openAt <= cutoff + margin) return result('unresolved', Math.min(bound, hooks.incumbent()));
     levels.push({ cutoff, nodes: search.nodes - startNodes });
@@ -187,16 +201,16 @@ function dearestCost(
   return Math.max(1, ...nets.map((net) => net.weight)) * channels;
 }
 
-const copyOf = (root: Relaxation): Relaxation => ({
-  ...root,
-  residual: root.residual.slice(),
-  tables: root.tables.slice(),
-  emptyCost: root.emptyCost.slice(),
-  tileOf: root.tileOf.slice(),
-  holderOf: root.holderOf.slice(),
-});
+function nodeAt({ nodeAt: nodes }: Search, { graph }: Relaxation, depth: number): Relaxation {
+  const known = nodes[depth];
+  if (known) return known;
+  const made = blankRelaxation(graph);
+  nodes[depth] = made;
+  return made;
+}
 
-function visit(search: Search, node: Relaxation, levelCutoff: number, decided: Decided): void {
+function visit(search: Search, depth: number, levelCutoff: number, decided: Decided): void {
+  const node = search.nodeAt[depth] as Relaxation;
   search.nodes++;
   if (search.nodes % 16 === 0 || node.tables.length > SLOW_NODE_ENTRIES) {
     search.hooks.onNodes?.(search.nodes);
@@ -204,17 +218,23 @@ function visit(search: Search, node: Relaxation, levelCutoff: number, decided: D
   }
   if (search.stopped) return;
   const cutoff = Math.min(levelCutoff, search.hooks.incumbent() - search.step);
-  if (node.ops.length === 0) {
+  if (node.freeCount === 0) {
     settleLeaf(search, decided.nets, cutoff);
     return;
   }
   const extra = standingExtra(search, decided.nets, node.constant, cutoff);
   if (extra === null) return;
-  const limits = { cutoff: cutoff + search.margin - extra, sweeps: NODE_SWEEPS, leastGain: LEAST_GAIN };
+  const isSlow = node.tables.length > SLOW_NODE_ENTRIES;
+  const limits = {
+    cutoff: cutoff + search.margin - extra,
+    sweeps: NODE_SWEEPS,
+    leastGain: LEAST_GAIN,
+    ...(isSlow ? { shouldStop: search.hooks.shouldStop } : {}),
+  };
   if (!reassignAll(node, search.scratch) || !raiseConstant(node, limits, search.scratch)) return;
   const op = branchingOp(node, search.pairCountOf);
   if (op < 0 || !gatherOp(node, op, limits.cutoff, search.scratch)) return;
-  branch(search, node, op, levelCutoff, decided);
+  branch(search, depth, op, levelCutoff, decided);
 }
 
 /** What routing the standing nets together costs above their own trees; null where that exceeds the cutoff. */
@@ -237,16 +257,18 @@ function standingExtra(
 }
 
 /** The op whose choice decides most: few tiles left for the number of its pairs, placed neighbours included. */
-function branchingOp({ ops, domains, residual, tileCount }: Relaxation, pairCountOf: Int32Array): number {
+function branchingOp(node: Relaxation, pairCountOf: Int32Array): number {
   let chosen = -1;
   let least = Number.POSITIVE_INFINITY;
-  for (let op = 0; op < ops.length; op++) {
+  for (let f = 0; f < node.freeCount; f++) {
+    const op = node.free[f] as number;
+    const base = op * node.graph.tileCount;
     let count = 0;
-    for (const tile of domains[op] as Int32Array) {
-      if (residual[op * tileCount + tile] !== Number.POSITIVE_INFINITY) count++;
+    for (let p = 0; p < (node.domainSize[op] as number); p++) {
+      if (isPossible(node, op, node.domain[base + p] as number)) count++;
     }
     if (count === 0) return -1;
-    const score = Math.log(count + 0.5) / (1 + (pairCountOf[ops[op] as number] as number));
+    const score = Math.log(count + 0.5) / (1 + (pairCountOf[op] as number));
     if (score < least) {
       least = score;
       chosen = op;
@@ -255,52 +277,54 @@ function branchingOp({ ops, domains, residual, tileCount }: Relaxation, pairCoun
   return chosen;
 }
 
-function branch(search: Search, node: Relaxation, op: number, cutoff: number, decided: Decided): void {
-  const { tileCount, residual } = node;
-  const instanceOp = node.ops[op] as number;
-  const costAt = (tile: number) => residual[op * tileCount + tile] as number;
-  const tiles = [...(node.domains[op] as Int32Array)]
-    .filter((tile) => costAt(tile) !== Number.POSITIVE_INFINITY)
+function branch(search: Search, depth: number, op: number, cutoff: number, decided: Decided): void {
+  const node = search.nodeAt[depth] as Relaxation;
+  const base = op * node.graph.tileCount;
+  const costAt = (tile: number) => node.residual[base + tile] as number;
+  const tiles = [...node.domain.subarray(base, base + (node.domainSize[op] as number))]
+    .filter((tile) => isPossible(node, op, tile))
     .sort((a, b) => costAt(a) - costAt(b) || a - b);
   for (const tile of tiles) {
-    if (costAt(tile) === Number.POSITIVE_INFINITY) continue;
-    const child = childOf(node, op, tile, search);
-    if (child) {
-      search.tileOf[instanceOp] = tile;
-      search.tightening.tighten(child, instanceOp, search.tileOf);
-      visit(search, child, cutoff, {
-        nets: [...decided.nets, ...search.nets.completedBy(instanceOp, search.tileOf)],
+    if (!isPossible(node, op, tile)) continue;
+    if (descend(search, depth, op, tile)) {
+      search.tileOf[op] = tile;
+      search.tightening.tighten(search.nodeAt[depth + 1] as Relaxation, op, search.tileOf);
+      visit(search, depth + 1, cutoff, {
+        nets: [...decided.nets, ...search.nets.completedBy(op, search.tileOf)],
         fabric: decided.fabric.filter((image) => image[tile] === tile),
-        kernel: decided.kernel.filter((image) => image[instanceOp] === instanceOp),
+        kernel: decided.kernel.filter((image) => image[op] === op),
       });
-      search.tileOf[instanceOp] = -1;
+      search.tileOf[op] = -1;
       if (search.stopped) return;
     }
-    strikeImages(node, instanceOp, tile, decided);
+    strikeImages(node, op, tile, decided);
   }
 }
 
-function childOf(node: Relaxation, op: number, tile: number, { scratch }: Search): Relaxation | null {
-  const holder = node.holderOf[tile] as number;
+/** Writes the child with the op on the tile one depth below; false where nothing is left. */
+function descend(search: Search, depth: number, op: number, tile: number): boolean {
+  const node = search.nodeAt[depth] as Relaxation;
+  const child = nodeAt(search, node, depth + 1);
+  const mover = node.holderOf[tile] as number;
   const left = node.tileOf[op] as number;
-  const child = placeOp(node, op, tile);
-  if (!child || left === tile) return child;
+  if (!placeInto(child, node, op, tile, search.kept)) return false;
+  if (left === tile) return true;
   // The op leaves a tile that it held; whoever held the new one, an op or nobody, goes where it is cheapest.
-  const mover = holder === NOBODY ? NOBODY : holder > op ? holder - 1 : holder;
   child.holderOf[left] = NOBODY;
-  return augment(child, mover, left, scratch) ? child : null;
+  return augment(child, mover, left, search.scratch);
 }
 
 /** The op on this tile is searched through, and so is every symmetric choice: none of them need be tried below. */
-function strikeImages(node: Relaxation, instanceOp: number, tile: number, { fabric, kernel }: Decided): void {
+function strikeImages(node: Relaxation, op: number, tile: number, { fabric, kernel }: Decided): void {
   const tiles = new Set(fabric.map((image) => image[tile] as number));
-  const ops = new Set([instanceOp, ...kernel.map((image) => image[instanceOp] as number)]);
-  for (const other of ops) {
-    const position = node.ops.indexOf(other);
-    if (position < 0) continue;
-    (node.domains[position] as Int32Array).forEach((at, p) => {
-      if (tiles.has(at)) strikeTile(node, position, p);
-    });
+  const ops = new Set([op, ...kernel.map((image) => image[op] as number)]);
+  for (let f = 0; f < node.freeCount; f++) {
+    const other = node.free[f] as number;
+    if (!ops.has(other)) continue;
+    const base = other * node.graph.tileCount;
+    for (let p = 0; p < (node.domainSize[other] as number); p++) {
+      if (tiles.has(node.domain[base + p] as number)) strikeTile(node, other, p);
+    }
   }
 }
 

@@ -6,7 +6,7 @@
 import { undirectedDistance } from '../bounds/pair-costs';
 import type { PlacementInstance } from '../instance';
 import type { JointRouter, StandingNet } from './joint-routing';
-import type { PairTable, Relaxation } from './relaxation';
+import type { Relaxation } from './relaxation';
 
 interface LooseNet {
   /** The source first. */
@@ -50,9 +50,9 @@ export function netTightening(instance: PlacementInstance, router: JointRouter |
   };
 
   const tightenLast = (relaxation: Relaxation, net: LooseNet, free: number, tileOf: Int32Array) => {
-    const at = relaxation.ops.indexOf(free);
-    const base = at * relaxation.tileCount;
-    for (const tile of relaxation.domains[at] as Int32Array) {
+    const base = free * instance.tileCount;
+    const size = relaxation.domainSize[free] as number;
+    for (const tile of relaxation.domain.subarray(base, base + size)) {
       const known = relaxation.residual[base + tile] as number;
       if (known === Number.POSITIVE_INFINITY) continue;
       const place = (op: number) => (op === free ? tile : (tileOf[op] as number));
@@ -66,21 +66,21 @@ export function netTightening(instance: PlacementInstance, router: JointRouter |
 
   const meeting = meetingCosts(instance);
   const tightenTwo = (relaxation: Relaxation, net: LooseNet, free: readonly number[], tileOf: Int32Array) => {
-    const [first, second] = free.map((op) => relaxation.ops.indexOf(op)).sort((a, b) => a - b) as [
-      number,
-      number,
-    ];
-    const pair = (relaxation.pairsOf[first] as PairTable[]).find(({ a, b }) => a === first && b === second);
-    if (!pair) return;
-    const opA = relaxation.ops[first] as number;
-    const opB = relaxation.ops[second] as number;
-    let entry = pair.offset;
-    for (const p of relaxation.domains[first] as Int32Array) {
-      for (const q of relaxation.domains[second] as Int32Array) {
+    const [opA, opB] = [...free].sort((a, b) => a - b) as [number, number];
+    const { graph, domain, domainSize, tableAt, tables } = relaxation;
+    const pair = (graph.pairsOf[opA] as Int32Array).find((each) => graph.second[each] === opB);
+    if (pair === undefined) return;
+    const tilesOf = (op: number) => {
+      const base = op * instance.tileCount;
+      return domain.subarray(base, base + (domainSize[op] as number));
+    };
+    let entry = tableAt[pair] as number;
+    for (const p of tilesOf(opA)) {
+      for (const q of tilesOf(opB)) {
         const place = (op: number) => (op === opA ? p : op === opB ? q : (tileOf[op] as number));
         const [source, left, right] = net.ops.map(place) as [number, number, number];
         const more = net.weight * meeting(source, left, right) - shareOf(net, place);
-        if (more > 0) relaxation.tables[entry] = (relaxation.tables[entry] as number) + more;
+        if (more > 0) tables[entry] = (tables[entry] as number) + more;
         entry++;
       }
     }

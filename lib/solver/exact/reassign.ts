@@ -26,9 +26,10 @@ export const ROUNDING = 1e-9;
 
 /** Restores the assignment for every op; false where none exists. */
 export function reassignAll(relaxation: Relaxation, scratch: ReassignScratch): boolean {
-  for (let op = 0; op < relaxation.ops.length; op++) {
-    const tile = relaxation.tileOf[op] as number;
-    if ((relaxation.residual[op * relaxation.tileCount + tile] as number) > ROUNDING) {
+  const { free, freeCount, tileOf, residual, graph } = relaxation;
+  for (let f = 0; f < freeCount; f++) {
+    const op = free[f] as number;
+    if ((residual[op * graph.tileCount + (tileOf[op] as number)] as number) > ROUNDING) {
       if (!reassign(relaxation, op, scratch)) return false;
     }
   }
@@ -50,7 +51,8 @@ export function augment(
   target: number,
   scratch: ReassignScratch,
 ): boolean {
-  const { tileCount, residual, emptyCost, holderOf } = relaxation;
+  const { residual, emptyCost, holderOf } = relaxation;
+  const { tileCount } = relaxation.graph;
   const { slack, via, settled } = scratch;
   slack.fill(Number.POSITIVE_INFINITY);
   settled.fill(0);
@@ -97,7 +99,7 @@ export function augment(
 
 /** The dual step: rows on the path pay, tiles on it become dearer for all others. */
 function shiftCosts(
-  { tileCount, ops, residual, emptyCost, holderOf }: Relaxation,
+  { graph: { tileCount }, free, freeCount, residual, emptyCost, holderOf }: Relaxation,
   op: number,
   target: number,
   total: number,
@@ -118,8 +120,10 @@ function shiftCosts(
     if (by <= 0) continue;
     const holder = holderOf[tile] as number;
     if (holder !== NOBODY) lower(holder, by);
-    for (let at = tile; at < ops.length * tileCount; at += tileCount)
+    for (let f = 0; f < freeCount; f++) {
+      const at = (free[f] as number) * tileCount + tile;
       residual[at] = (residual[at] as number) + by;
+    }
     emptyCost[tile] = (emptyCost[tile] as number) + by;
   }
 }

@@ -2,35 +2,33 @@
  * The relaxation of one node of the exact search: what the ops that are not yet placed must at least cost.
  *
  * A tiling of the free ops costs
- *   constant + Σ residual[op, its tile] + Σ tables[pair, both tiles] + Σ emptyCost[tiles left over]
- * or more; all terms but the constant are never negative, so the constant is a bound. The dual ascent only moves cost
- * between the terms. Infinity says that an op cannot stand on a tile, or two not on theirs.
+ *   constant + Σ residual[op, its tile] + Σ tables[pair, both tiles] + Σ tables[triple, each two of its tiles]
+ *   + Σ emptyCost[tiles left over]
+ * or more. All terms but the constant are never negative (of a triple's three tables, their sum), so the constant is a
+ * bound. The dual ascent only moves cost between the terms. Infinity says that an op cannot stand on a tile, or two not
+ * on theirs.
+ *
+ * Nodes are kept, one a depth, and written over: the search makes no garbage.
  */
+import type { CostGraph } from './cost-graph';
 
 /** Who holds a tile in the cheapest assignment of ops to tiles. */
 export const NOBODY = -1;
 
-/** Two free ops whose tiles cost something together. */
-export interface PairTable {
-  /** Free ops, a < b, as positions in `ops`. */
-  a: number;
-  b: number;
-  /** In `tables`: the entry for the p-th tile of a and the q-th of b is at offset + p · (tiles of b) + q. */
-  offset: number;
-}
-
 export interface Relaxation {
-  tileCount: number;
-  /** Instance ops that are free. */
-  ops: Int32Array;
-  /** Tiles of each free op, ascending. Some may have become impossible since (residual Infinity). */
-  domains: Int32Array[];
+  graph: CostGraph;
+  /** Ops that are free, ascending; the first `freeCount` entries count. */
+  free: Int32Array;
+  freeCount: number;
+  /** Tiles of each free op, ascending, from op · tileCount on. Some may have become impossible since (residual Infinity). */
+  domain: Int32Array;
+  domainSize: Int32Array;
   /** [op · tileCount + tile]; Infinity outside the domain. */
   residual: Float64Array;
-  pairs: PairTable[];
+  /** Where each table begins; −1 where one of its ops is placed. */
+  tableAt: Int32Array;
+  /** The entry for the p-th tile of the lower op and the q-th of the other is at tableAt + p · (tiles of the other) + q. */
   tables: Float64Array;
-  /** Pairs of each free op. */
-  pairsOf: PairTable[][];
   /** What it costs to leave a tile empty; Infinity for tiles of placed ops. */
   emptyCost: Float64Array;
   /** The cheapest assignment: residuals there are 0, and so is the empty cost of tiles that nobody holds. */
@@ -39,127 +37,218 @@ export interface Relaxation {
   constant: number;
 }
 
-/** Lists each op's pairs; call after `pairs` has changed. */
-export function listPairs(pairs: readonly PairTable[], opCount: number): PairTable[][] {
-  const lists: PairTable[][] = Array.from({ length: opCount }, () => []);
-  for (const pair of pairs) {
-    lists[pair.a]?.push(pair);
-    lists[pair.b]?.push(pair);
-  }
-  return lists;
+/** A relaxation to be written over. */
+export function blankRelaxation(graph: CostGraph): Relaxation {
+  const { opCount, tileCount, tableCount } = graph;
+  return {
+    graph,
+    free: new Int32Array(opCount),
+    freeCount: 0,
+    domain: new Int32Array(opCount * tileCount),
+    domainSize: new Int32Array(opCount),
+    residual: new Float64Array(opCount * tileCount),
+    tableAt: new Int32Array(tableCount),
+    tables: new Float64Array(0),
+    emptyCost: new Float64Array(tileCount),
+    tileOf: new Int32Array(opCount),
+    holderOf: new Int32Array(tileCount),
+    constant: 0,
+  };
 }
+
+export function copyInto(target: Relaxation, from: Relaxation): void {
+  target.free.set(from.free);
+  target.freeCount = from.freeCount;
+  target.domain.set(from.domain);
+  target.domainSize.set(from.domainSize);
+  target.residual.set(from.residual);
+  target.tableAt.set(from.tableAt);
+  if (target.tables.length < from.tables.length) target.tables = new Float64Array(from.tables.length);
+  target.tables.set(from.tables);
+  target.emptyCost.set(from.emptyCost);
+  target.tileOf.set(from.tileOf);
+  target.holderOf.set(from.holderOf);
+  target.constant = from.constant;
+}
+
+/** Whether the op can still stand on the tile. */
+export const isPossible = ({ residual, graph }: Relaxation, op: number, tile: number): boolean =>
+  residual[op * graph.tileCount + tile] !== Number.POSITIVE_INFINITY;
 
 /**
- * Places the op at position `op` on `tile` and returns the relaxation of the rest; null where no tiling is left.
- * Tiles that have become impossible are left out of the domains. Cost: the size of the tables.
+ * Writes into `child` what is left of `from` when `op` stands on `tile`; false where no tiling is. Tiles that have become
+ * impossible are left out of the domains. `kept` is a buffer of ops × tiles. Cost: the size of the tables.
  */
-export function placeOp(from: Relaxation, op: number, tile: number): Relaxation | null {
-  const kept = keptTiles(from, op, tile);
-  if (!kept) return null;
-  const { tileCount } = from;
-  const count = from.ops.length - 1;
-  const was = Int32Array.from({ length: count }, (_, i) => (i < op ? i : i + 1));
-  const now = (position: number) => (position < op ? position : position - 1);
-  const ops = was.map((i) => from.ops[i] as number);
-  const domains = Array.from(was, (i) => {
-    const domain = from.domains[i] as Int32Array;
-    return (kept[i] as Int32Array).map((p) => domain[p] as number);
-  });
-  const residual = new Float64Array(count * tileCount).fill(Number.POSITIVE_INFINITY);
-  domains.forEach((domain, i) => {
-    const base = (was[i] as number) * tileCount;
-    for (let p = 0; p < domain.length; p++) {
-      const at = domain[p] as number;
-      residual[i * tileCount + at] = from.residual[base + at] as number;
-    }
-  });
-  const { pairs, tables } = remainingTables(from, op, kept, now);
-  const emptyCost = from.emptyCost.slice();
-  emptyCost[tile] = Number.POSITIVE_INFINITY;
-  const child: Relaxation = {
-    tileCount,
-    ops,
-    domains,
-    residual,
-    pairs,
-    tables,
-    pairsOf: listPairs(pairs, count),
-    emptyCost,
-    tileOf: was.map((i) => from.tileOf[i] as number),
-    holderOf: from.holderOf.map((holder) => (holder > op ? holder - 1 : holder)),
-    constant: from.constant + (from.residual[op * tileCount + tile] as number),
-  };
-  child.holderOf[tile] = NOBODY;
-  takeRow(from, child, op, tile, now);
-  return child;
-}
-
-/** Positions in each domain that stay possible; null where an op has none. */
-function keptTiles(from: Relaxation, op: number, tile: number): Int32Array[] | null {
-  const kept: Int32Array[] = [];
-  for (let i = 0; i < from.ops.length; i++) {
-    const domain = from.domains[i] as Int32Array;
-    const list = new Int32Array(domain.length);
-    let length = 0;
-    if (i !== op) {
-      for (let p = 0; p < domain.length; p++) {
-        const at = domain[p] as number;
-        if (at === tile || from.residual[i * from.tileCount + at] === Number.POSITIVE_INFINITY) continue;
-        list[length++] = p;
-      }
-      if (length === 0) return null;
-    }
-    kept.push(list.subarray(0, length));
-  }
-  return kept;
-}
-
-function remainingTables(
+export function placeInto(
+  child: Relaxation,
   from: Relaxation,
   op: number,
-  kept: readonly Int32Array[],
-  now: (position: number) => number,
-): { pairs: PairTable[]; tables: Float64Array } {
-  const pairs: PairTable[] = [];
-  const stay = from.pairs.filter(({ a, b }) => a !== op && b !== op);
+  tile: number,
+  kept: Int32Array,
+): boolean {
+  const { tileCount } = from.graph;
+  child.freeCount = 0;
+  for (let f = 0; f < from.freeCount; f++) {
+    const other = from.free[f] as number;
+    if (other === op) continue;
+    child.free[child.freeCount++] = other;
+    if (!keepTiles(child, from, other, tile, kept)) return false;
+  }
+  child.domainSize[op] = 0;
+  child.emptyCost.set(from.emptyCost);
+  child.emptyCost[tile] = Number.POSITIVE_INFINITY;
+  child.tileOf.set(from.tileOf);
+  child.holderOf.set(from.holderOf);
+  child.holderOf[tile] = NOBODY;
+  child.constant = from.constant + (from.residual[op * tileCount + tile] as number);
+  keepTables(child, from, op, kept);
+  const place = placeOf(from, op, tile);
+  settlePairs(child, from, op, place);
+  settleTriples(child, from, op, place, kept);
+  return true;
+}
+
+function placeOf({ domain, domainSize, graph }: Relaxation, op: number, tile: number): number {
+  const base = op * graph.tileCount;
+  for (let p = 0; p < (domainSize[op] as number); p++) if (domain[base + p] === tile) return p;
+  throw new Error('An op is to be placed on a tile that is not in its domain.');
+}
+
+/** The op's domain without the tile and what is impossible; false where nothing is left. */
+function keepTiles(
+  child: Relaxation,
+  { domain, domainSize, residual, graph: { tileCount } }: Relaxation,
+  op: number,
+  tile: number,
+  kept: Int32Array,
+): boolean {
+  const base = op * tileCount;
+  child.residual.fill(Number.POSITIVE_INFINITY, base, base + tileCount);
   let size = 0;
-  for (const { a, b } of stay) size += (kept[a] as Int32Array).length * (kept[b] as Int32Array).length;
-  const tables = new Float64Array(size);
-  let at = 0;
-  for (const { a, b, offset } of stay) {
-    const rows = kept[a] as Int32Array;
-    const columns = kept[b] as Int32Array;
-    const width = (from.domains[b] as Int32Array).length;
-    pairs.push({ a: now(a), b: now(b), offset: at });
-    for (let p = 0; p < rows.length; p++) {
-      const base = offset + (rows[p] as number) * width;
-      for (let q = 0; q < columns.length; q++) {
-        tables[at++] = from.tables[base + (columns[q] as number)] as number;
-      }
+  for (let p = 0; p < (domainSize[op] as number); p++) {
+    const at = domain[base + p] as number;
+    const cost = residual[base + at] as number;
+    if (at === tile || cost === Number.POSITIVE_INFINITY) continue;
+    child.residual[base + at] = cost;
+    child.domain[base + size] = at;
+    kept[base + size++] = p;
+  }
+  child.domainSize[op] = size;
+  return size > 0;
+}
+
+/** Copies the tables between free ops, for the tiles that they keep. */
+function keepTables(child: Relaxation, from: Relaxation, op: number, kept: Int32Array): void {
+  const { first, second, triples } = child.graph;
+  const { domainSize, tableAt } = child;
+  let size = 0;
+  const lay = (table: number, a: number, b: number) => {
+    if (a === op || b === op || from.tableAt[table] === -1) {
+      tableAt[table] = -1;
+      return;
+    }
+    tableAt[table] = size;
+    size += (domainSize[a] as number) * (domainSize[b] as number);
+  };
+  for (let pair = 0; pair < first.length; pair++) lay(pair, first[pair] as number, second[pair] as number);
+  for (const { a, b, c, table } of triples) {
+    const isWhole = a !== op && b !== op && c !== op && from.tableAt[table] !== -1;
+    for (let k = 0; k < 3; k++) {
+      if (!isWhole) tableAt[table + k] = -1;
+      else lay(table + k, k === 2 ? b : a, k === 0 ? b : c);
     }
   }
-  return { pairs, tables };
+  if (child.tables.length < size) child.tables = new Float64Array(Math.ceil(1.25 * size));
+  const copy = (table: number, a: number, b: number) => {
+    if (tableAt[table] !== -1) copyTable(child, from, table, a, b, kept);
+  };
+  for (let pair = 0; pair < first.length; pair++) copy(pair, first[pair] as number, second[pair] as number);
+  for (const { a, b, c, table } of triples) {
+    copy(table, a, b);
+    copy(table + 1, a, c);
+    copy(table + 2, b, c);
+  }
+}
+
+function copyTable(
+  child: Relaxation,
+  from: Relaxation,
+  table: number,
+  a: number,
+  b: number,
+  kept: Int32Array,
+): void {
+  const { tileCount } = child.graph;
+  const source = from.tables;
+  const target = child.tables;
+  const rows = child.domainSize[a] as number;
+  const columns = child.domainSize[b] as number;
+  const width = from.domainSize[b] as number;
+  const start = from.tableAt[table] as number;
+  const keptA = a * tileCount;
+  const keptB = b * tileCount;
+  let at = child.tableAt[table] as number;
+  for (let p = 0; p < rows; p++) {
+    const base = start + (kept[keptA + p] as number) * width;
+    for (let q = 0; q < columns; q++) target[at++] = source[base + (kept[keptB + q] as number)] as number;
+  }
 }
 
 /** The costs of the placed op with its neighbours become costs of the neighbours alone. */
-function takeRow(
-  from: Relaxation,
-  child: Relaxation,
-  op: number,
-  tile: number,
-  now: (position: number) => number,
-): void {
-  const place = (from.domains[op] as Int32Array).indexOf(tile);
-  const { tileCount } = from;
-  for (const { a, b, offset } of from.pairsOf[op] as PairTable[]) {
-    const other = a === op ? b : a;
-    const domain = from.domains[other] as Int32Array;
-    const width = (from.domains[b] as Int32Array).length;
-    const base = now(other) * tileCount;
-    for (let q = 0; q < domain.length; q++) {
-      const entry = a === op ? offset + place * width + q : offset + q * width + place;
-      const at = base + (domain[q] as number);
+function settlePairs(child: Relaxation, from: Relaxation, op: number, place: number): void {
+  const { first, second, pairsOf, tileCount } = from.graph;
+  for (const pair of pairsOf[op] as Int32Array) {
+    const start = from.tableAt[pair] as number;
+    if (start === -1) continue;
+    const isFirst = first[pair] === op;
+    const other = (isFirst ? second[pair] : first[pair]) as number;
+    const width = from.domainSize[second[pair] as number] as number;
+    const base = other * tileCount;
+    for (let q = 0; q < (from.domainSize[other] as number); q++) {
+      const at = base + (from.domain[base + q] as number);
+      const entry = isFirst ? start + place * width + q : start + q * width + place;
       child.residual[at] = (child.residual[at] as number) + (from.tables[entry] as number);
+    }
+  }
+}
+
+/** The costs of a triple with the placed op become costs of the pair of the other two. */
+function settleTriples(
+  child: Relaxation,
+  from: Relaxation,
+  op: number,
+  place: number,
+  kept: Int32Array,
+): void {
+  const { tileCount } = from.graph;
+  const { tables, tableAt, domainSize } = from;
+  for (const { a, b, c, ab, ac, bc, table } of from.graph.triples) {
+    if ((a !== op && b !== op && c !== op) || tableAt[table] === -1) continue;
+    const sizeB = domainSize[b] as number;
+    const sizeC = domainSize[c] as number;
+    const atAB = tableAt[table] as number;
+    const atAC = tableAt[table + 1] as number;
+    const atBC = tableAt[table + 2] as number;
+    const x = op === a ? b : a;
+    const y = op === c ? b : c;
+    // The entries of the op's tables with x and y step by these, and the table of x and y has this width.
+    const [fromX, stepX] =
+      op === a ? [atAB + place * sizeB, 1] : op === b ? [atAB + place, sizeB] : [atAC + place, sizeC];
+    const [fromY, stepY] =
+      op === a ? [atAC + place * sizeC, 1] : op === b ? [atBC + place * sizeC, 1] : [atBC + place, sizeC];
+    const own = op === a ? atBC : op === b ? atAC : atAB;
+    const width = domainSize[y] as number;
+    let entry = child.tableAt[op === a ? bc : op === b ? ac : ab] as number;
+    for (let p = 0; p < (child.domainSize[x] as number); p++) {
+      const atX = kept[x * tileCount + p] as number;
+      const costX = tables[fromX + atX * stepX] as number;
+      for (let q = 0; q < (child.domainSize[y] as number); q++, entry++) {
+        const atY = kept[y * tileCount + q] as number;
+        const cost =
+          (tables[own + atX * width + atY] as number) + costX + (tables[fromY + atY * stepY] as number);
+        // A sum of the three is never negative, but for rounding.
+        if (cost > 0) child.tables[entry] = (child.tables[entry] as number) + cost;
+      }
     }
   }
 }

@@ -2,7 +2,8 @@
 import { neighboursOf, pairCosts, type WeightedPair } from '../bounds/pair-costs';
 import type { PlacementInstance } from '../instance';
 import { matchOps } from '../search/matching';
-import { listPairs, NOBODY, type PairTable, type Relaxation } from './relaxation';
+import { costGraph } from './cost-graph';
+import { blankRelaxation, NOBODY, type Relaxation } from './relaxation';
 
 /** Entries of all tables together, before anything is struck out. */
 export function tableEntries(instance: PlacementInstance): number {
@@ -14,47 +15,59 @@ export function tableEntries(instance: PlacementInstance): number {
   return both / 2;
 }
 
+/** Entries of all tables of pairs and triples together; triples beyond it are left out. */
+const TABLE_WORK = 4_000_000;
+
 /** Null where not even one tile for each op can be found. */
 export function rootRelaxation(instance: PlacementInstance): Relaxation | null {
   const { tileCount, opCount, candidates } = instance;
   const matched = matchOps(candidates, tileCount);
   if (!matched.ok) return null;
-  const domains = candidates.map((tiles) => Int32Array.from(tiles));
-  const residual = new Float64Array(opCount * tileCount).fill(Number.POSITIVE_INFINITY);
-  domains.forEach((domain, op) => {
-    for (const tile of domain) residual[op * tileCount + tile] = 0;
-  });
+  const tilesOf = (op: number) => candidates[op]?.length ?? 0;
   const groups = joined(pairCosts(instance));
-  const size = groups.reduce((sum, { a, b }) => sum + sizeOf(domains, a) * sizeOf(domains, b), 0);
-  const tables = new Float64Array(size);
-  const pairs: PairTable[] = [];
-  let offset = 0;
-  for (const group of groups) {
-    pairs.push({ a: group.a, b: group.b, offset });
-    fillTable(tables, offset, group, domains, tileCount);
-    offset += sizeOf(domains, group.a) * sizeOf(domains, group.b);
-  }
-  const tileOf = Int32Array.from(matched.tiling);
-  const holderOf = new Int32Array(tileCount).fill(NOBODY);
-  tileOf.forEach((tile, op) => {
-    holderOf[tile] = op;
+  const ends = groups.map(({ a, b }) => [a, b] as const);
+  const graph = costGraph(opCount, tileCount, ends, tilesOf, TABLE_WORK);
+  const root = blankRelaxation(graph);
+  root.freeCount = opCount;
+  root.residual.fill(Number.POSITIVE_INFINITY);
+  candidates.forEach((tiles, op) => {
+    root.free[op] = op;
+    root.domain.set(tiles, op * tileCount);
+    root.domainSize[op] = tiles.length;
+    for (const tile of tiles) root.residual[op * tileCount + tile] = 0;
   });
-  return {
-    tileCount,
-    ops: Int32Array.from({ length: opCount }, (_, op) => op),
-    domains,
-    residual,
-    pairs,
-    tables,
-    pairsOf: listPairs(pairs, opCount),
-    emptyCost: new Float64Array(tileCount),
-    tileOf,
-    holderOf,
-    constant: 0,
-  };
+  layTables(root);
+  graph.first.forEach((a, pair) => {
+    const b = graph.second[pair] as number;
+    const group = groups[pair] ?? { a, b, terms: [] };
+    fillTable(root.tables, root.tableAt[pair] as number, group, candidates, tileCount);
+  });
+  root.tileOf.set(matched.tiling);
+  root.holderOf.fill(NOBODY);
+  root.tileOf.forEach((tile, op) => {
+    root.holderOf[tile] = op;
+  });
+  return root;
 }
 
-const sizeOf = (domains: readonly Int32Array[], op: number): number => (domains[op] as Int32Array).length;
+/** A table for each pair, and three for each triple: whatever they hold at first, its pairs have. */
+function layTables(root: Relaxation): void {
+  const { first, second, triples } = root.graph;
+  let size = 0;
+  const lay = (table: number, a: number, b: number) => {
+    root.tableAt[table] = size;
+    size += (root.domainSize[a] as number) * (root.domainSize[b] as number);
+  };
+  first.forEach((a, pair) => {
+    lay(pair, a, second[pair] as number);
+  });
+  for (const { a, b, c, table } of triples) {
+    lay(table, a, b);
+    lay(table + 1, a, c);
+    lay(table + 2, b, c);
+  }
+  root.tables = new Float64Array(size);
+}
 
 interface Group {
   a: number;
@@ -79,12 +92,12 @@ function fillTable(
   tables: Float64Array,
   offset: number,
   { a, b, terms }: Group,
-  domains: readonly Int32Array[],
+  candidates: PlacementInstance['candidates'],
   tileCount: number,
 ): void {
   let at = offset;
-  for (const p of domains[a] as Int32Array) {
-    for (const q of domains[b] as Int32Array) {
+  for (const p of candidates[a] as readonly number[]) {
+    for (const q of candidates[b] as readonly number[]) {
       let cost = p === q ? Number.POSITIVE_INFINITY : 0;
       for (const { a: first, weight, table } of terms) {
         const entry = table[first === a ? p * tileCount + q : q * tileCount + p] as number;
