@@ -6,6 +6,7 @@ import type { FabricGraph } from '../fabric/compile';
 import { builtInLibrary, canHost, type UnitLibrary } from '../fabric/unit-library';
 import type { Kernel, OpId } from '../graph/kernel';
 import { netsOf } from '../graph/nets';
+import type { OpKind } from '../graph/op-catalog';
 import type { Objective, Pins, Placement } from '../mapping/mapping';
 
 export const UNREACHABLE_HOPS = 0xffff;
@@ -55,14 +56,19 @@ export function buildInstance(
   library: UnitLibrary = builtInLibrary,
 ): PlacementInstance {
   const index = new Map<OpId, number>(kernel.ops.map((op, i) => [op.id, i]));
+  // Ops of one kind share their list.
+  const hosts = new Map<OpKind, number[]>();
+  const hostsFor = (kind: OpKind): number[] => {
+    const known =
+      hosts.get(kind) ?? graph.units.flatMap((unit, tile) => (canHost(unit, kind, library) ? [tile] : []));
+    hosts.set(kind, known);
+    return known;
+  };
   const candidates = kernel.ops.map((op) => {
     const pin = pins[op.id];
-    const tiles: number[] = [];
-    for (let tile = 0; tile < graph.tileCount; tile++) {
-      if (pin !== undefined && graph.tiles[tile] !== pin) continue;
-      if (canHost(graph.units[tile] ?? null, op.kind, library)) tiles.push(tile);
-    }
-    return tiles;
+    if (pin === undefined) return hostsFor(op.kind);
+    const pinned = graph.tileIndex(pin);
+    return hostsFor(op.kind).includes(pinned) ? [pinned] : [];
   });
   const nets = netsOf(kernel).map((net) => ({
     source: index.get(net.source) as number,

@@ -10,7 +10,6 @@ import type { Engine } from './engines/engine';
 import { TABLE_ENTRIES_LIMIT } from './exact/exact-search';
 import { tableEntries } from './exact/root-relaxation';
 import { exactPass } from './exact-pass';
-import { explainInfeasible } from './explain/explain-infeasible';
 import { explainStars } from './explain/explain-stars';
 import { buildInstance, type PlacementInstance, tilingOf } from './instance';
 import { estimateEntries } from './integer-program/placement-program';
@@ -18,6 +17,7 @@ import { legalMapping, startTiles } from './legal-mapping';
 import type { SolveOptions } from './options';
 import type { SolveOutcome, SolveProgress, StopReason } from './outcome';
 import { MODEL_ENTRIES_LIMIT, placementPass } from './placement-pass';
+import { presolve } from './presolve/presolve';
 import { type BadInput, type CheckedProblem, checkProblem, type PlacementProblem } from './problem';
 import { routedPass } from './routed-pass';
 import { searchPlacements } from './search/search';
@@ -58,15 +58,11 @@ function runPasses(
   hooks: SolveHooks,
   state: SolveState,
 ): SolveOutcome {
-  const instance = buildInstance(
-    problem.kernel,
-    problem.graph,
-    problem.pins,
-    problem.objective,
-    problem.library,
-  );
-  const explanation = explainInfeasible(problem, instance);
-  if (explanation) return state.infeasible(explanation);
+  const { kernel, graph, pins, objective, library } = problem;
+  const whole = buildInstance(kernel, graph, pins, objective, library);
+  const presolved = presolve(problem, whole);
+  if (presolved.kind === 'infeasible') return state.infeasible(presolved.explanation);
+  const { instance } = presolved;
   state.raise(Math.max(trivialBound(instance), problem.provenBound ?? 0));
   const star = starsWithinWork(instance);
   if (star) {
@@ -74,7 +70,8 @@ function runPasses(
     if (tooFar) return state.infeasible(tooFar);
     state.raise(Math.ceil(star.bound - 1e-6));
   }
-  if (problem.another) return anotherPass(problem, instance, options, state, problem.another);
+  // Which placements are mirror images of each other is a matter of all candidates.
+  if (problem.another) return anotherPass(problem, whole, options, state, problem.another);
   searchPass(problem, instance, options, state);
   if (options.engine === 'search' || state.shouldStop()) return state.finish('search complete');
   if (options.engine === 'auto') {

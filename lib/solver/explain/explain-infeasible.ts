@@ -7,12 +7,14 @@ import type { OpId } from '../../graph/kernel';
 import { opSpec } from '../../graph/op-catalog';
 import { hopsBetween, type PlacementInstance, withinReach } from '../instance';
 import type { InfeasibleReason } from '../outcome';
+import { tileSets } from '../presolve/tile-sets';
+import { tilesInReach } from '../presolve/tiles-in-reach';
 import type { CheckedProblem } from '../problem';
 import { opLabel } from '../problem';
 import { explainCrowding } from './explain-crowding';
 import { explainParts } from './explain-parts';
 
-/** Cost: one matching, and for each connection its pairs of candidate tiles. */
+/** Cost: one matching, and for each connection its pairs of candidate tiles, or one spread from all of them at once. */
 export function explainInfeasible(
   problem: CheckedProblem,
   instance: PlacementInstance,
@@ -56,16 +58,26 @@ function pinConflict(problem: CheckedProblem): InfeasibleReason | null {
   return null;
 }
 
+/** Pairs of tiles up to which they are looked at one by one. */
+const PAIRS_LIMIT = 4096;
+
 /** A connection whose ends have no two candidate tiles within reach. */
 function unreachableConnection(
   problem: CheckedProblem,
   instance: PlacementInstance,
 ): InfeasibleReason | null {
   const { kernel, graph } = problem;
+  const sets = tileSets(instance.tileCount);
+  const reach = tilesInReach(sets, graph, graph.maxHops);
+  const isReachable = (from: readonly number[], to: readonly number[]): boolean => {
+    if (from.length * to.length > PAIRS_LIMIT) {
+      const near = reach.of(sets.of(from), 'after');
+      return sets.parted(sets.of(to), sets.bits(near)).within;
+    }
+    return from.some((p) => to.some((q) => q !== p && withinReach(instance, hopsBetween(instance, p, q))));
+  };
   for (const { from, to } of instance.pairs) {
-    const reachable = instance.candidates[from]?.some((p) =>
-      instance.candidates[to]?.some((q) => q !== p && withinReach(instance, hopsBetween(instance, p, q))),
-    );
+    const reachable = isReachable(instance.candidates[from] ?? [], instance.candidates[to] ?? []);
     if (reachable) continue;
     const [producer, consumer] = [kernel.ops[from]?.id as OpId, kernel.ops[to]?.id as OpId];
     const edges = kernel.edges.filter((edge) => edge.from === producer && edge.to === consumer);

@@ -4,17 +4,23 @@ import type { InfeasibleReason } from '../outcome';
 import { type CheckedProblem, opLabel } from '../problem';
 import { matchOps } from '../search/matching';
 
-/** Cost: one matching for each pair of a connected set of ops and a part of the fabric; none on a fabric in one part. */
+/** Ops × tiles looked at: about a tenth of a second. What would need more is left to the search. */
+const WORK_LIMIT = 2e7;
+
+/** Cost: one matching for each connected set of ops and part of the fabric that has room for it; none on a fabric in one part. */
 export function explainParts(problem: CheckedProblem, instance: PlacementInstance): InfeasibleReason | null {
   const { kernel, graph } = problem;
   const partOf = joined(graph.tileCount, graph.links);
-  const parts = new Set(partOf);
+  const parts = members(partOf);
   if (parts.size === 1) return null;
   const setOf = joined(instance.opCount, instance.pairs);
-  for (const set of new Set(setOf)) {
-    const ops = [...setOf.keys()].filter((op) => setOf[op] === set);
+  let work = 0;
+  for (const ops of members(setOf).values()) {
     if (ops.length === 1) continue;
-    const fits = [...parts].some((part) => {
+    const fits = [...parts].some(([part, tiles]) => {
+      if (tiles.length < ops.length) return false;
+      work += ops.length * instance.tileCount;
+      if (work > WORK_LIMIT) return true;
       const candidates = ops.map((op) =>
         (instance.candidates[op] ?? []).filter((tile) => partOf[tile] === part),
       );
@@ -51,4 +57,14 @@ function joined(count: number, pairs: readonly { from: number; to: number }[]): 
     parent[Math.max(a, b)] = Math.min(a, b);
   }
   return parent.map((_, i) => root(i));
+}
+
+function members(setOf: readonly number[]): Map<number, number[]> {
+  const sets = new Map<number, number[]>();
+  setOf.forEach((set, member) => {
+    const known = sets.get(set);
+    if (known) known.push(member);
+    else sets.set(set, [member]);
+  });
+  return sets;
 }
