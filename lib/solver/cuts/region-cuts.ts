@@ -4,7 +4,7 @@
  * through, a least cut parts more of these nets than it has channels: its inside holds the region of each such net's
  * producer, its outside that of the consumer.
  *
- * Nets looked at together: all from one region to another, all that enter a region or leave it, all that enter an op.
+ * Precondition: every op has a candidate. Nets looked at together: all from one region to another, all that enter a region or leave it, all that enter an op.
  */
 import type { FabricGraph } from '../../fabric/compile';
 import type { PlacementInstance } from '../instance';

@@ -37,7 +37,7 @@ export function forcedReason(
   const nets = crossings.length === 1 ? '1 net has' : `${crossings.length} nets have`;
   return {
     code: 'too few channels',
-    message: `${nets} to lead ${way} ${name} (from ${shown}), but ${there}: add ${more}, by links or to those there are, or move pins or units to one side.`,
+    message: `${nets} to lead ${way} ${name} (from ${shown}), but ${there}: add ${more} there, on these links or new ones, or move pins or units to one side.`,
     ...marked(problem, instance, crossings),
     tileIds: tilesAt(cut, graph, from),
   };
@@ -56,7 +56,7 @@ export function divisionReason(problem: CheckedProblem, divided: CutProblem): In
   const links =
     out + into === 0
       ? 'no link leads from one to the other'
-      : `the links between them have ${count(out, 'channel')} out of ${name} and ${into} into it`;
+      : `the links between them have ${count(out, 'channel')} out of ${name} and ${into} the other way`;
   const sides = `${name}, with PEs for ${count(own, 'op')}, and the rest of the fabric, with PEs for ${other}`;
   const crossings = least.sides
     ? [INSIDE, OUTSIDE].flatMap((from) => forcedCrossings(instance, least.sides as Int8Array, from as 1 | -1))
