@@ -13,78 +13,92 @@ export interface FlowNetwork {
   steps(): number;
 }
 
+interface Flow {
+  /** Arc 2i and its way back, 2i + 1. */
+  arcsAt: number[][];
+  heads: number[];
+  /** What every arc can still take. */
+  free: number[];
+  /** Arcs from the source, −1 where nothing gets to. */
+  layer: Int32Array;
+  /** The next arc to try at each node. */
+  nextArc: Int32Array;
+  steps: number;
+}
+
 export function flowNetwork(nodeCount: number): FlowNetwork {
-  const arcsAt: number[][] = Array.from({ length: nodeCount }, () => []);
-  const heads: number[] = [];
   const capacities: number[] = [];
-  let free: number[] = [];
-  let layer = new Int32Array(0);
-  let nextArc = new Int32Array(0);
-  let steps = 0;
-
-  /** Layers by arcs from the source, −1 where nothing gets to. */
-  const spread = (source: number): void => {
-    layer = new Int32Array(nodeCount).fill(-1);
-    layer[source] = 0;
-    const reached = [source];
-    for (const node of reached) {
-      for (const arc of arcsAt[node] ?? []) {
-        steps++;
-        const to = heads[arc] as number;
-        if (free[arc] === 0 || layer[to] !== -1) continue;
-        layer[to] = (layer[node] as number) + 1;
-        reached.push(to);
-      }
-    }
+  const flow: Flow = {
+    arcsAt: Array.from({ length: nodeCount }, () => []),
+    heads: [],
+    free: [],
+    layer: new Int32Array(nodeCount),
+    nextArc: new Int32Array(nodeCount),
+    steps: 0,
   };
-
-  /** One way to the sink along rising layers, with the units that fit through; 0 where there is none left. */
-  const push = (source: number, sink: number, limit: number): number => {
-    const way: number[] = [];
-    let node = source;
-    while (node !== sink) {
-      const arc = arcsAt[node]?.[nextArc[node] as number];
-      steps++;
-      if (arc === undefined) {
-        const last = way.pop();
-        if (last === undefined) return 0;
-        node = heads[last ^ 1] as number;
-      } else if ((free[arc] as number) > 0 && layer[heads[arc] as number] === (layer[node] as number) + 1) {
-        way.push(arc);
-        node = heads[arc] as number;
-        continue;
-      }
-      nextArc[node] = (nextArc[node] as number) + 1;
-    }
-    const units = way.reduce((least, arc) => Math.min(least, free[arc] as number), limit);
-    for (const arc of way) {
-      free[arc] = (free[arc] as number) - units;
-      free[arc ^ 1] = (free[arc ^ 1] as number) + units;
-    }
-    return units;
-  };
-
   return {
     join: (from, to, capacity, back = 0) => {
-      arcsAt[from]?.push(heads.length);
-      arcsAt[to]?.push(heads.length + 1);
-      heads.push(to, from);
+      flow.arcsAt[from]?.push(capacities.length);
+      flow.arcsAt[to]?.push(capacities.length + 1);
+      flow.heads.push(to, from);
       capacities.push(capacity, back);
     },
     maxFlow: (source, sink, limit = Number.MAX_SAFE_INTEGER) => {
-      free = [...capacities];
-      let flow = 0;
+      flow.free = [...capacities];
+      let total = 0;
       for (;;) {
-        spread(source);
-        if (flow === limit || layer[sink] === -1) return flow;
-        nextArc = new Int32Array(nodeCount);
-        for (let units = push(source, sink, limit - flow); units > 0 && flow < limit; ) {
-          flow += units;
-          units = push(source, sink, limit - flow);
+        spread(flow, source);
+        if (total === limit || flow.layer[sink] === -1) return total;
+        flow.nextArc.fill(0);
+        for (let units = -1; units !== 0 && total < limit; total += units) {
+          units = push(flow, source, sink, limit - total);
         }
       }
     },
-    sourceSide: () => Uint8Array.from(layer, (at) => (at === -1 ? 0 : 1)),
-    steps: () => steps,
+    sourceSide: () => Uint8Array.from(flow.layer, (at) => (at === -1 ? 0 : 1)),
+    steps: () => flow.steps,
   };
+}
+
+function spread(flow: Flow, source: number): void {
+  const { arcsAt, heads, free, layer } = flow;
+  layer.fill(-1);
+  layer[source] = 0;
+  const reached = [source];
+  for (const node of reached) {
+    for (const arc of arcsAt[node] ?? []) {
+      flow.steps++;
+      const to = heads[arc] as number;
+      if (free[arc] === 0 || layer[to] !== -1) continue;
+      layer[to] = (layer[node] as number) + 1;
+      reached.push(to);
+    }
+  }
+}
+
+/** One way to the sink along rising layers, with the units that fit through; 0 where there is none left. */
+function push(flow: Flow, source: number, sink: number, limit: number): number {
+  const { arcsAt, heads, free, layer, nextArc } = flow;
+  const way: number[] = [];
+  let node = source;
+  while (node !== sink) {
+    const arc = arcsAt[node]?.[nextArc[node] as number];
+    flow.steps++;
+    if (arc === undefined) {
+      const last = way.pop();
+      if (last === undefined) return 0;
+      node = heads[last ^ 1] as number;
+    } else if ((free[arc] as number) > 0 && layer[heads[arc] as number] === (layer[node] as number) + 1) {
+      way.push(arc);
+      node = heads[arc] as number;
+      continue;
+    }
+    nextArc[node] = (nextArc[node] as number) + 1;
+  }
+  const units = way.reduce((least, arc) => Math.min(least, free[arc] as number), limit);
+  for (const arc of way) {
+    free[arc] = (free[arc] as number) - units;
+    free[arc ^ 1] = (free[arc ^ 1] as number) + units;
+  }
+  return units;
 }

@@ -14,7 +14,7 @@ import type { CheckedProblem } from '../problem';
 import { divisionReason, forcedReason } from './cut-reasons';
 
 /** Nets touched by the divisions of all cuts, and of one. */
-const DIVISION_WORK = { inAll: 1_000_000, ofOneCut: 100_000 } as const;
+const DIVISION_WORK = { inAll: 400_000, ofOneCut: 50_000 } as const;
 /** Channels of a cut, both ways together, above which trying divisions is not seen to end within its work. */
 const DIVISION_CHANNELS = 32;
 

@@ -49,22 +49,20 @@ export function tileSets(tileCount: number): TileSets {
   const all: Uint32Array[] = [];
   const counts: number[] = [];
   const lists: (readonly number[] | undefined)[] = [];
-  const ofBits = (bits: Uint32Array): TileSetId => {
-    const key = String.fromCharCode(...new Uint16Array(bits.buffer, bits.byteOffset, bits.length * 2));
+  const bits = (set: TileSetId): Uint32Array => all[set] as Uint32Array;
+  const ofBits = (made: Uint32Array): TileSetId => {
+    const key = String.fromCharCode(...new Uint16Array(made.buffer, made.byteOffset, made.length * 2));
     const found = known.get(key);
     if (found !== undefined) return found;
-    const id = all.length;
-    known.set(key, id);
-    all.push(bits);
-    counts.push(commonTiles(bits, bits));
-    return id;
+    known.set(key, all.length);
+    counts.push(commonTiles(made, made));
+    return all.push(made) - 1;
   };
   const ofList = (tiles: readonly number[]): TileSetId => {
-    const bits = noTiles(tileCount);
-    for (const tile of tiles) addTile(bits, tile);
-    return ofBits(bits);
+    const made = noTiles(tileCount);
+    for (const tile of tiles) addTile(made, tile);
+    return ofBits(made);
   };
-  const bits = (set: TileSetId): Uint32Array => all[set] as Uint32Array;
   const remembered = (join: (x: number, y: number) => number) => {
     const made = new Map<number, TileSetId>();
     return (a: TileSetId, b: TileSetId): TileSetId => {
@@ -93,24 +91,19 @@ export function tileSets(tileCount: number): TileSets {
     },
     and: remembered((x, y) => x & y),
     without: remembered((x, y) => x & ~y),
-    isWithin: (a, b) => {
-      if ((counts[a] as number) > (counts[b] as number)) return false;
-      const [left, right] = [bits(a), bits(b)];
-      for (let i = 0; i < left.length; i++)
-        if (((left[i] as number) & ~(right[i] as number)) !== 0) return false;
-      return true;
-    },
-    parted: (set, by) => {
-      const own = bits(set);
-      let within = false;
-      let beyond = false;
-      for (let i = 0; i < own.length && !(within && beyond); i++) {
-        within ||= ((own[i] as number) & (by[i] as number)) !== 0;
-        beyond ||= ((own[i] as number) & ~(by[i] as number)) !== 0;
-      }
-      return { within, beyond };
-    },
+    isWithin: (a, b) => (counts[a] as number) <= (counts[b] as number) && !parted(bits(a), bits(b)).beyond,
+    parted: (set, by) => parted(bits(set), by),
   };
+}
+
+function parted(own: Uint32Array, by: Uint32Array): { within: boolean; beyond: boolean } {
+  let within = false;
+  let beyond = false;
+  for (let i = 0; i < own.length && !(within && beyond); i++) {
+    within ||= ((own[i] as number) & (by[i] as number)) !== 0;
+    beyond ||= ((own[i] as number) & ~(by[i] as number)) !== 0;
+  }
+  return { within, beyond };
 }
 
 const listed = (bits: Uint32Array, tileCount: number): number[] => {
