@@ -91,9 +91,16 @@ export function tileSets(tileCount: number): TileSets {
     },
     and: remembered((x, y) => x & y),
     without: remembered((x, y) => x & ~y),
-    isWithin: (a, b) => (counts[a] as number) <= (counts[b] as number) && !parted(bits(a), bits(b)).beyond,
+    isWithin: (a, b) => (counts[a] as number) <= (counts[b] as number) && isWithin(bits(a), bits(b)),
     parted: (set, by) => parted(bits(set), by),
   };
+}
+
+function isWithin(own: Uint32Array, other: Uint32Array): boolean {
+  for (let i = 0; i < own.length; i++) {
+    if (((own[i] as number) & ~(other[i] as number)) !== 0) return false;
+  }
+  return true;
 }
 
 function parted(own: Uint32Array, by: Uint32Array): { within: boolean; beyond: boolean } {
