@@ -2,6 +2,7 @@
 import type { BenchDocument } from '@/lib/mapping/bench-document';
 import type { Pins, Placement, Provenance } from '@/lib/mapping/mapping';
 import type { Result } from '@/lib/result';
+import type { Ask, AskKind } from '@/lib/solver/solve-ask';
 import type { SolveSettings } from './solve/solve-state';
 
 export interface CallError {
@@ -31,7 +32,11 @@ export interface BenchCalls {
   ): Answer<{ mappingId: `mapping_${string}` }>;
   renameBench(input: OfDraft & { name: string }): Answer<{ name: string }>;
   startSolve(
-    input: OfDraft & { settings: SolveSettings; pins: Pins; startPlacement: Placement | null },
-  ): Answer<{ solveId: `solve_${string}`; created: boolean }>;
+    input: OfDraft & {
+      settings: SolveSettings & { ask?: Ask };
+      pins: Pins;
+      startPlacement: Placement | null;
+    },
+  ): Answer<{ solveId: `solve_${string}`; created: boolean; asks: AskKind | null }>;
   stopSolve(input: { workspace: string; solveId: `solve_${string}` }): Answer<{ state: string }>;
 }

@@ -10,6 +10,7 @@ import { KernelGraph } from './panes/kernel-graph';
 import { OpList } from './panes/op-list';
 import { StatusLine } from './panes/status-line';
 import { useOpDrag } from './panes/use-op-drag';
+import { PinPricePanel } from './solve/pin-price-panel';
 import { SolvePanel } from './solve/solve-panel';
 import type { SolvePanelProps } from './solve/solve-panel-props';
 import { useBenchStore } from './store/bench-context';
@@ -51,7 +52,12 @@ export function BenchPanes({ shown, kernelTitle, fabricTitle, solvePanel, more }
         className={`min-h-0 space-y-5 overflow-y-auto border-rule bg-paper px-4 py-3 lg:order-3 lg:block lg:border-l ${side === 'figures' ? 'block' : 'hidden'}`}
       >
         <Figures shown={shown} />
-        {solvePanel ? <SolvePanel {...solvePanel} /> : null}
+        {solvePanel ? (
+          <>
+            <SolvePanel {...solvePanel} />
+            <PinPricePanel {...solvePanel} />
+          </>
+        ) : null}
         <BrokenRules shown={shown} />
         <UnitUse shown={shown} />
         {more}

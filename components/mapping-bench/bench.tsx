@@ -12,11 +12,13 @@ import { shortName } from '@/lib/mapping/picture/op-label';
 import type { BenchCalls } from './bench-calls';
 import { BenchPanes } from './bench-panes';
 import { NameDialog } from './keep-dialog';
-import { previewView } from './panes/bench-view';
+import { type BenchView, previewView } from './panes/bench-view';
 import { contentOf, documentOf } from './save/save-machine';
 import { SaveBanner, SaveStatus } from './save/save-status';
 import { useBenchSave } from './save/use-bench-save';
-import { useBenchSolve } from './solve/use-bench-solve';
+import { isLive } from './solve/solve-state';
+import { type BenchAsk, useBenchAsk } from './solve/use-bench-ask';
+import { type BenchSolve, useBenchSolve } from './solve/use-bench-solve';
 import type { BenchContent } from './store/bench-content';
 import { BenchProvider, useBench, useBenchStore } from './store/bench-context';
 import { createBenchStore } from './store/bench-store';
@@ -29,7 +31,9 @@ export interface BenchProps {
   content: BenchContent;
   kernel: { name: string; version: number; document: Kernel };
   fabric: { name: string; version: number; document: Fabric };
+  /** The last solve for the best mapping, and the last of other questions where none was asked for since. */
   solveId: string | null;
+  askedSolveId: string | null;
   readOnly: boolean;
   calls: BenchCalls;
 }
@@ -58,10 +62,9 @@ function BenchScreen(props: BenchProps) {
   const say = useToast();
   const fail = (message: string) => say(message, { tone: 'broken' });
   const [name, setName] = useState(props.name);
-  const [asking, setAsking] = useState<'keep' | 'rename' | null>(null);
+  const [dialog, setDialog] = useState<'keep' | 'rename' | null>(null);
   const content = useBench((state) => state.content);
   const facts = useBench((state) => state.facts);
-  const byTile = useBench((state) => state.byTile);
   const save = useBenchSave(store, {
     draftId,
     readOnly,
@@ -84,18 +87,19 @@ function BenchScreen(props: BenchProps) {
       return { type: 'conflict', theirs: { ...theirs, content: contentOf(document, provenance) } };
     },
   });
+  const job = { workspace, draftId, calls, onError: fail };
   const solving = useBenchSolve(store, {
-    workspace,
-    draftId,
+    ...job,
     firstSolveId: props.solveId,
-    calls,
-    onError: fail,
+    onOther: (id) => asking.adopt(id),
   });
-  const best = solving.previewing ? (solving.solve?.best ?? null) : null;
-  const shown = useMemo(
-    () => (best ? previewView(store, best, content.pins) : { facts, byTile, preview: false }),
-    [best, store, content.pins, facts, byTile],
-  );
+  const asking = useBenchAsk(store, {
+    ...job,
+    firstSolveId: props.askedSolveId,
+    onOther: (id) => solving.adopt(id),
+    settings: solving.settings,
+  });
+  const shown = usePreview(solving, asking);
   const keepBoth = async () => {
     const now = store.getState().content;
     const answer = await calls.saveBenchAsNew({
@@ -120,7 +124,7 @@ function BenchScreen(props: BenchProps) {
     const answer = await calls.renameBench({ workspace, draftId, name: wanted });
     if (!answer.ok) return answer.error.message;
     setName(answer.value.name);
-    setAsking(null);
+    setDialog(null);
     return null;
   };
   return (
@@ -139,7 +143,7 @@ function BenchScreen(props: BenchProps) {
               <Menu
                 label="More"
                 items={[
-                  { id: 'rename', label: 'Rename …', onSelect: () => setAsking('rename') },
+                  { id: 'rename', label: 'Rename …', onSelect: () => setDialog('rename') },
                   {
                     id: 'clear',
                     label: 'Take off all but pinned ops',
@@ -152,7 +156,7 @@ function BenchScreen(props: BenchProps) {
                 aria-disabled={!facts.legal}
                 title={facts.legal ? undefined : whyNotLegal(facts, store)}
                 onClick={() => {
-                  if (facts.legal) setAsking('keep');
+                  if (facts.legal) setDialog('keep');
                   else store.getState().say(whyNotLegal(facts, store), true);
                 }}
               >
@@ -172,35 +176,57 @@ function BenchScreen(props: BenchProps) {
           starting: solving.starting,
           previewing: solving.previewing,
           readOnly,
-          onStart: solving.start,
+          settings: solving.settings,
+          onSettings: solving.choose,
+          onStart: (settings, fromHere) => {
+            asking.adopt(null);
+            void solving.start(settings, fromHere);
+          },
           onStop: solving.stop,
           onPreview: solving.setPreviewing,
           onTake: () => {
             if (solving.result) store.getState().takeResult(solving.result);
             solving.setPreviewing(false);
           },
-          taken: solving.isTaken(content),
+          taken: solving.isTaken(content) || asking.isTaken(content),
+          asking,
+          busy: [solving.solve, asking.solve].some((solve) => solve !== null && isLive(solve)),
         }}
       />
       <NameDialog
-        open={asking === 'keep'}
+        open={dialog === 'keep'}
         title="Keep as mapping"
         text="A kept mapping is checked once more and never changes afterwards. The bench stays as it is."
         confirmLabel="Keep"
         initial={name}
-        onClose={() => setAsking(null)}
+        onClose={() => setDialog(null)}
         onConfirm={keep}
       />
       <NameDialog
-        open={asking === 'rename'}
+        open={dialog === 'rename'}
         title="Rename"
         text="The name of this draft in the list of mappings."
         confirmLabel="Rename"
         initial={name}
-        onClose={() => setAsking(null)}
+        onClose={() => setDialog(null)}
         onConfirm={rename}
       />
     </section>
+  );
+}
+
+/** The mapping that is being looked at, of a running solve or an offered one; else the bench's own. */
+function usePreview(solving: BenchSolve, asking: BenchAsk): BenchView {
+  const store = useBenchStore();
+  const facts = useBench((state) => state.facts);
+  const byTile = useBench((state) => state.byTile);
+  const ownPins = useBench((state) => state.content.pins);
+  const offered = asking.previewing ? asking.offered : null;
+  const best = offered?.result ?? (solving.previewing ? solving.solve?.best : null) ?? null;
+  const pins = offered?.pins ?? ownPins;
+  return useMemo(
+    () => (best ? previewView(store, best, pins) : { facts, byTile, preview: false }),
+    [best, store, pins, facts, byTile],
   );
 }
 

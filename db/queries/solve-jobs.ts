@@ -1,23 +1,37 @@
 /** Solves as the web process sees them. The worker's side: solve-work.ts. */
-import { and, desc, eq, inArray, sql } from 'drizzle-orm';
+import { and, desc, eq, inArray, type SQL, sql } from 'drizzle-orm';
 import type { Id } from '../../lib/ids';
 import type { Pins, Placement } from '../../lib/mapping/mapping';
 import { err, ok, type Result } from '../../lib/result';
 import type { Tx } from '../client';
 import { newId } from '../ids';
 import { mappingDrafts, solveJobs } from '../schema';
-import type { SolveBest, SolveEnd, SolveHistoryPoint, SolveSettings, SolveState } from '../schema/solve-jobs';
+import type {
+  SolveAsk,
+  SolveBest,
+  SolveEnd,
+  SolveHistoryPoint,
+  SolveSettings,
+  SolveState,
+} from '../schema/solve-jobs';
 
 interface OneSolve {
   workspaceId: Id<'workspace'>;
   solveId: Id<'solve'>;
 }
 
+type AskView<Asked> = Asked extends { than: Placement[] } ? Omit<Asked, 'than'> : Asked;
+export interface SettingsView extends Omit<SolveSettings, 'ask'> {
+  ask?: AskView<SolveAsk>;
+}
+
 export interface SolveView {
   id: Id<'solve'>;
   draftId: Id<'draft'>;
   state: SolveState;
-  settings: SolveSettings;
+  /** Without the placements that are to be avoided: they are many, and a view is read again and again. */
+  settings: SettingsView;
+  pins: Pins;
   cancelRequested: boolean;
   phase: string;
   bestObjective: number | null;
@@ -39,7 +53,8 @@ const columns = {
   id: solveJobs.id,
   draftId: solveJobs.mappingDraftId,
   state: solveJobs.state,
-  settings: solveJobs.settings,
+  settings: sql<SettingsView>`${solveJobs.settings} #- '{ask,than}'`.mapWith(solveJobs.settings),
+  pins: solveJobs.pins,
   cancelRequested: solveJobs.cancelRequested,
   phase: solveJobs.phase,
   bestObjective: solveJobs.bestObjective,
@@ -57,8 +72,8 @@ const columns = {
 const one = (s: OneSolve) => and(eq(solveJobs.workspaceId, s.workspaceId), eq(solveJobs.id, s.solveId));
 
 /**
- * Makes a solve of a bench. When the bench has one that is queued or running, that one is the answer and `created`
- * is false. The caller then hands the id to the queue.
+ * Makes a solve of a bench. When the bench has one that is queued or running, that one is the answer, whatever
+ * it was asked, and `created` is false. The caller then hands the id to the queue.
  */
 export async function createSolve(
   tx: Tx,
@@ -70,7 +85,7 @@ export async function createSolve(
     pins: Pins;
     startPlacement: Placement | null;
   },
-): Promise<Result<{ id: Id<'solve'>; created: boolean }, 'not_found'>> {
+): Promise<Result<{ id: Id<'solve'>; created: boolean; asks: SolveAsk['kind'] | null }, 'not_found'>> {
   const [draft] = await tx
     .select({
       kernelVersionId: mappingDrafts.kernelVersionId,
@@ -93,13 +108,15 @@ export async function createSolve(
     })
     .onConflictDoNothing()
     .returning({ id: solveJobs.id });
-  if (made[0]) return ok({ id: made[0].id, created: true });
+  if (made[0]) return ok({ id: made[0].id, created: true, asks: of.settings.ask?.kind ?? null });
   const [live] = await tx
-    .select({ id: solveJobs.id })
+    .select({ id: solveJobs.id, settings: solveJobs.settings })
     .from(solveJobs)
     .where(and(eq(solveJobs.mappingDraftId, of.draftId), inArray(solveJobs.state, ['queued', 'running'])));
   // It ended between the two statements: the next press makes a new one.
-  return live ? ok({ id: live.id, created: false }) : err('not_found');
+  return live
+    ? ok({ id: live.id, created: false, asks: live.settings.ask?.kind ?? null })
+    : err('not_found');
 }
 
 /** Remembers that the queue has taken the solve; one without this is sent again by the worker's sweep. */
@@ -123,6 +140,28 @@ export function listSolves(
     .where(and(eq(solveJobs.workspaceId, of.workspaceId), eq(solveJobs.mappingDraftId, of.draftId)))
     .orderBy(desc(solveJobs.createdAt))
     .limit(Math.min(of.limit ?? 20, 100));
+}
+
+/**
+ * The bench's last solve for the best mapping, and the last of other questions where no ordinary one was asked for since.
+ * A live one is among them, being the newest.
+ */
+export async function lastSolves(
+  tx: Tx,
+  of: { workspaceId: Id<'workspace'>; draftId: Id<'draft'> },
+): Promise<{ ordinary: Id<'solve'> | null; asked: Id<'solve'> | null }> {
+  const isOrdinary = sql<boolean>`${solveJobs.settings} -> 'ask' is null`;
+  const newest = (where?: SQL) =>
+    tx
+      .select({ id: solveJobs.id, isOrdinary })
+      .from(solveJobs)
+      .where(
+        and(eq(solveJobs.workspaceId, of.workspaceId), eq(solveJobs.mappingDraftId, of.draftId), where),
+      )
+      .orderBy(desc(solveJobs.createdAt))
+      .limit(1);
+  const [[last], [ordinary]] = await Promise.all([newest(), newest(isOrdinary)]);
+  return { ordinary: ordinary?.id ?? null, asked: last && !last.isOrdinary ? last.id : null };
 }
 
 /** Ends a queued solve at once and asks a running one to stop; the best found stays. Harmless when it is over. */

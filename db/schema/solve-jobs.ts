@@ -16,6 +16,8 @@ import {
 import type { Id } from '../../lib/ids';
 import type { Objective, Pins, Placement, Routes } from '../../lib/mapping/mapping';
 import type { InfeasibleReason } from '../../lib/solver/outcome';
+import type { Answer } from '../../lib/solver/pin-price';
+import type { Ask, PinPriceAsk } from '../../lib/solver/solve-ask';
 import { createdAt, instant } from './columns';
 import { fabricVersions } from './fabric-versions';
 import { kernelVersions } from './kernel-versions';
@@ -30,7 +32,22 @@ export interface SolveSettings {
   objective: Objective;
   timeLimitMs: number;
   seed: number;
+  /** Another question than the one for the best mapping; absent in an ordinary solve. */
+  ask?: SolveAsk;
 }
+
+/** As it was asked, with what earlier solves of the bench had shown by then. */
+export type SolveAsk = (
+  | Extract<Ask, { kind: 'another' }>
+  /** `isPinned`: the bench itself has the pin, so that the side without it is the supposed one. */
+  | (PinPriceAsk & { isPinned: boolean; other: KnownSide })
+) & {
+  /** No legal mapping with the solve's pins is cheaper. */
+  provenBound: number;
+};
+
+/** What is known of the other side, and the solve whose mapping its objective is; null where it is the bench's own. */
+export type KnownSide = Answer & { solveId: Id<'solve'> | null };
 
 export interface SolveBest {
   objectiveValue: number;

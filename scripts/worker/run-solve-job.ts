@@ -10,10 +10,11 @@ import {
   type TakenSolve,
   takeSolve,
 } from '../../db/queries/solve-work';
-import type { SolveBest, SolveEnd, SolveHistoryPoint } from '../../db/schema/solve-jobs';
+import type { SolveAsk, SolveBest, SolveEnd, SolveHistoryPoint } from '../../db/schema/solve-jobs';
 import type { Id } from '../../lib/ids';
 import { verifyMapping } from '../../lib/mapping/verify';
 import type { SolveOutcome, SolveProgress } from '../../lib/solver/outcome';
+import type { PlacementProblem } from '../../lib/solver/problem';
 import { isBadInputError, runSolve } from '../../lib/solver/worker/client';
 
 /** How often the row learns of progress; also how soon a stop by a person is noticed. */
@@ -82,6 +83,7 @@ async function solveTaken(
         pins,
         objective: settings.objective,
         ...(startPlacement ? { start: startPlacement } : {}),
+        ...askedOf(settings.ask),
       },
       { engine: settings.engine, timeLimitMs, seed: settings.seed, nodeLimit: null },
       { signal, memoryLimitMb: MEMORY_LIMIT_MB, onProgress: ledger.take },
@@ -92,6 +94,12 @@ async function solveTaken(
     throw error;
   }
 }
+
+/** What an ask adds to the problem. */
+const askedOf = (ask: SolveAsk | undefined): Pick<PlacementProblem, 'another' | 'provenBound'> => ({
+  ...(ask && { provenBound: ask.provenBound }),
+  ...(ask?.kind === 'another' && { another: { objectiveValue: ask.objectiveValue, than: ask.than } }),
+});
 
 async function writeEnd(
   hold: Hold,

@@ -1,4 +1,5 @@
 import type { Solve, SolveSettings } from './solve-state';
+import type { BenchAsk } from './use-bench-ask';
 
 export interface SolvePanelProps {
   solve: Solve | null;
@@ -6,10 +7,16 @@ export interface SolvePanelProps {
   starting: boolean;
   previewing: boolean;
   readOnly: boolean;
+  /** As chosen last. */
+  settings: SolveSettings;
+  onSettings: (settings: SolveSettings) => void;
   onStart: (settings: SolveSettings, fromHere: boolean) => void;
   onStop: () => void;
   onPreview: (on: boolean) => void;
   onTake: () => void;
   /** The solve's result is what the bench holds. */
   taken: boolean;
+  asking: BenchAsk;
+  /** A solve of the bench runs, whatever it was asked. */
+  busy: boolean;
 }

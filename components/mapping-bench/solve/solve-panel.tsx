@@ -1,26 +1,36 @@
 'use client';
 
-import { useState } from 'react';
+import { useEffect, useState } from 'react';
 import { Button } from '@/components/ui/button';
 import { CheckboxField, SelectField, TextField } from '@/components/ui/field';
 import { PanelTitle } from '../panes/figures';
-import { BestChart } from './best-chart';
+import { AnotherAnswer } from './another-answer';
 import { MakingStatus } from './making-status';
 import { SolveEnd } from './solve-end';
 import type { SolvePanelProps } from './solve-panel-props';
-import { durationText, isLive, phaseText, type Solve, type SolveSettings } from './solve-state';
+import { SolveProgress } from './solve-progress';
+import { isLive, type SolveSettings } from './solve-state';
 
 /** Auto-place: settings, progress, and the end. */
 export function SolvePanel(props: SolvePanelProps) {
-  const { solve, readOnly } = props;
+  const { solve, readOnly, asking, busy } = props;
   const live = solve !== null && isLive(solve);
   return (
     <section aria-label="Auto-place">
       <PanelTitle>Auto-place</PanelTitle>
       <MakingStatus />
-      {live ? <Progress {...props} solve={solve} /> : null}
+      {live ? (
+        <SolveProgress
+          solve={solve}
+          stopLabel="Stop and keep the best"
+          readOnly={readOnly}
+          onStop={props.onStop}
+          preview={{ on: props.previewing, set: props.onPreview }}
+        />
+      ) : null}
       {solve && !live ? <SolveEnd {...props} solve={solve} /> : null}
-      {!live && !readOnly ? <SettingsForm key={solve?.id} {...props} /> : null}
+      <AnotherAnswer asking={asking} readOnly={readOnly} busy={busy} />
+      {!busy && !readOnly ? <SettingsForm key={solve?.id} {...props} /> : null}
     </section>
   );
 }
@@ -42,11 +52,8 @@ const times = [
 ];
 const LONGEST_S = 600;
 
-const firstSettings: SolveSettings = { objective: 'wire', engine: 'auto', timeLimitMs: 20_000, seed: 1 };
-
-/** Opens with the settings of the last solve: the form is away while one runs, and after a reload. */
-function SettingsForm({ starting, onStart, solve }: SolvePanelProps) {
-  const last = solve?.settings ?? firstSettings;
+/** Opens with the settings that were used last: the form is away while a solve runs, and after a reload. */
+function SettingsForm({ starting, onStart, onSettings, settings: last, solve }: SolvePanelProps) {
   const lastSeconds = String(last.timeLimitMs / 1000);
   const isListed = times.some(({ value }) => value === lastSeconds);
   const [objective, setObjective] = useState(last.objective);
@@ -61,13 +68,18 @@ function SettingsForm({ starting, onStart, solve }: SolvePanelProps) {
   const seedNumber = Number(seed);
   const seedError =
     Number.isInteger(seedNumber) && seedNumber >= 0 && seedNumber < 2 ** 31 ? null : 'A whole number from 0';
+  const timeLimitMs = Math.round(seconds * 1000);
+  const isValid = !timeError && !seedError;
+  // Other questions to the solver go by what is chosen here.
+  useEffect(() => {
+    if (isValid) onSettings({ objective, engine, timeLimitMs, seed: seedNumber });
+  }, [isValid, objective, engine, timeLimitMs, seedNumber, onSettings]);
   return (
     <form
       className="mt-3 space-y-2"
       onSubmit={(event) => {
         event.preventDefault();
-        if (timeError || seedError) return;
-        onStart({ objective, engine, timeLimitMs: Math.round(seconds * 1000), seed: seedNumber }, fromHere);
+        if (isValid) onStart({ objective, engine, timeLimitMs, seed: seedNumber }, fromHere);
       }}
     >
       <div className="grid grid-cols-2 gap-2">
@@ -117,57 +129,5 @@ function SettingsForm({ starting, onStart, solve }: SolvePanelProps) {
         {solve ? 'Auto-place again' : 'Auto-place the rest'}
       </Button>
     </form>
-  );
-}
-
-function Progress({ solve, previewing, readOnly, onStop, onPreview }: SolvePanelProps & { solve: Solve }) {
-  const { bestObjective, bound, gapRatio } = solve;
-  const queued = solve.state === 'queued';
-  return (
-    <div className="mt-2">
-      <p className="text-sm" role="status">
-        {queued ? 'Waiting for a worker' : phaseText(solve.phase)}
-        {solve.cancelRequested ? ', stopping' : ''}
-      </p>
-      <div
-        className="mt-1 h-1.5 bg-(--channel)"
-        role="progressbar"
-        aria-label="Time used"
-        aria-valuemin={0}
-        aria-valuemax={100}
-        aria-valuenow={Math.min(100, Math.round((100 * solve.elapsedMs) / solve.settings.timeLimitMs))}
-      >
-        <div
-          className="h-full bg-indigo-fill"
-          style={{ width: `${Math.min(100, (100 * solve.elapsedMs) / solve.settings.timeLimitMs)}%` }}
-        />
-      </div>
-      <dl className="mt-2 grid grid-cols-3 gap-x-2 gap-y-1 text-sm">
-        {[
-          ['Best', bestObjective ?? '–'],
-          ['Bound', bound === null ? '–' : Math.round(bound * 100) / 100],
-          ['Gap', gapRatio === null ? '–' : `${Math.round(gapRatio * 100)} %`],
-          ['Time', durationText(solve.elapsedMs)],
-          ['Nodes', solve.nodes.toLocaleString('en-GB')],
-        ].map(([label, value]) => (
-          <div key={label}>
-            <dt className="text-xs text-quiet">{label}</dt>
-            <dd className="font-mono font-semibold tabular-nums">{value}</dd>
-          </div>
-        ))}
-      </dl>
-      <BestChart history={solve.history} elapsedMs={solve.elapsedMs} />
-      <CheckboxField
-        label="Show the best on the fabric"
-        className="mt-2"
-        checked={previewing}
-        onChange={(event) => onPreview(event.target.checked)}
-      />
-      {readOnly ? null : (
-        <Button look="danger" className="mt-2 w-full" disabled={solve.cancelRequested} onClick={onStop}>
-          Stop and keep the best
-        </Button>
-      )}
-    </div>
   );
 }

@@ -1,27 +1,63 @@
 /** What the bench knows of a solve, as the server tells it, and the words for it. */
 import { z } from 'zod';
+import { tileIdSchema } from '@/lib/fabric/fabric';
+import { opIdSchema } from '@/lib/graph/kernel';
 import {
   type Objective,
   objectives,
   type Placement,
   type Provenance,
+  pinsSchema,
   placementSchema,
   type Routes,
   routesSchema,
 } from '@/lib/mapping/mapping';
 import { engineChoices } from '@/lib/solver/options';
 
-const explanationSchema = z.object({ opIds: z.array(z.string()), tileIds: z.array(z.string()) }).nullish();
+const explanationSchema = z
+  .object({ code: z.string(), opIds: z.array(z.string()), tileIds: z.array(z.string()) })
+  .nullish();
+
+const solveSettingsSchema = z.object({
+  engine: z.enum(engineChoices),
+  objective: z.enum(objectives),
+  timeLimitMs: z.number(),
+  seed: z.number(),
+});
+export type SolveSettings = z.infer<typeof solveSettingsSchema>;
+export const firstSettings: SolveSettings = {
+  objective: 'wire',
+  engine: 'auto',
+  timeLimitMs: 20_000,
+  seed: 1,
+};
+
+const answerSchema = z.object({
+  status: z.enum(['optimal', 'feasible', 'infeasible', 'unknown']),
+  objective: z.enum(objectives),
+  objectiveValue: z.number().nullable(),
+  bound: z.number().nullable(),
+});
+
+/** What a solve was asked, if not for the best mapping. */
+const askViewSchema = z.discriminatedUnion('kind', [
+  z.object({ kind: z.literal('another'), objectiveValue: z.number() }),
+  z.object({
+    kind: z.literal('pin price'),
+    op: opIdSchema,
+    tile: tileIdSchema,
+    side: z.enum(['with pin', 'without pin']),
+    isPinned: z.boolean(),
+    other: answerSchema.extend({ solveId: z.string().nullable() }),
+  }),
+]);
+export type AskView = z.infer<typeof askViewSchema>;
 
 export const solveSchema = z.object({
   id: z.string(),
   state: z.enum(['queued', 'running', 'done', 'failed', 'cancelled']),
-  settings: z.object({
-    engine: z.enum(engineChoices),
-    objective: z.enum(objectives),
-    timeLimitMs: z.number(),
-    seed: z.number(),
-  }),
+  settings: solveSettingsSchema.extend({ ask: askViewSchema.optional() }),
+  pins: pinsSchema,
   cancelRequested: z.boolean(),
   phase: z.string(),
   bestObjective: z.number().nullable(),
@@ -48,7 +84,6 @@ export const solveSchema = z.object({
     .nullable(),
 });
 export type Solve = z.infer<typeof solveSchema>;
-export type SolveSettings = Solve['settings'];
 
 export const isLive = (solve: Pick<Solve, 'state'>): boolean =>
   solve.state === 'queued' || solve.state === 'running';
@@ -80,6 +115,17 @@ export function solveResult(solve: Solve): SolveResult | null {
       changedByHand: false,
     },
   };
+}
+
+/** How the search for another mapping has ended. */
+export function anotherSentence(solve: Solve): string {
+  const { outcome, state, best, settings } = solve;
+  if (best) {
+    return `Another mapping of ${best.objectiveValue} ${objectiveNames[settings.objective].toLowerCase()} was found; it is offered beside the fabric.`;
+  }
+  if (outcome?.explanation?.code === 'no other') return 'There is no other, besides mirror images.';
+  if (state === 'cancelled') return 'It was stopped before another one was found; there may be one.';
+  return outcome?.reason ?? 'None was found; there may be one.';
 }
 
 /** 0.4 s, 12 s, 3 min 20 s. */
@@ -115,6 +161,7 @@ const stops: Record<string, string> = {
   'memory limit': 'memory ran out',
   'model too large': 'the model is too large for the engine',
   'search complete': 'the search was complete',
+  'another found': 'another one was found',
   'routing gap': 'routes and bound did not meet',
   'thread failed': 'its thread failed',
 };

@@ -160,13 +160,14 @@ export function togglePin(setting: BenchSetting, content: BenchContent, id: OpId
   });
 }
 
-/** Takes over a solve's placement and routes as they are. Pins stay as the person has them now. */
+/** Takes over a solve's placement and routes as they are. Pins stay as the person has them now, unless others go with it. */
 export function takeResult(
   content: BenchContent,
   result: { placement: Placement; routes: Routes; provenance: Provenance },
+  how: { said?: string; pins?: Pins } = {},
 ): Change {
   return {
-    content: { ...result, pins: content.pins },
-    said: 'The auto-placed mapping is on the bench. Undo brings back what was there.',
+    content: { ...result, pins: how.pins ?? content.pins },
+    said: how.said ?? 'The auto-placed mapping is on the bench. Undo brings back what was there.',
   };
 }

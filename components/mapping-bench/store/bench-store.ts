@@ -4,7 +4,7 @@ import { compileFabric, type FabricGraph } from '@/lib/fabric/compile';
 import type { Fabric, LinkId, TileId } from '@/lib/fabric/fabric';
 import { builtInLibrary, type UnitLibrary } from '@/lib/fabric/unit-library';
 import type { Kernel, OpId } from '@/lib/graph/kernel';
-import type { Placement, Provenance, Routes } from '@/lib/mapping/mapping';
+import type { Pins, Placement, Provenance, Routes } from '@/lib/mapping/mapping';
 import { shortName } from '@/lib/mapping/picture/op-label';
 import type { Result } from '@/lib/result';
 import {
@@ -61,7 +61,10 @@ export interface BenchState {
   unplace(op: OpId): void;
   clear(): void;
   togglePin(op: OpId): void;
-  takeResult(result: { placement: Placement; routes: Routes; provenance: Provenance }): void;
+  takeResult(
+    result: { placement: Placement; routes: Routes; provenance: Provenance },
+    how?: { said?: string; pins?: Pins },
+  ): void;
   /** Replaces everything as one step: somebody else's state or a local backup. */
   replace(content: BenchContent, said: string): void;
   undo(): void;
@@ -160,7 +163,7 @@ export function createBenchStore(of: {
       unplace: (op) => void attempt(unplace(setting, get().content, op)),
       clear: () => void attempt(clear(setting, get().content)),
       togglePin: (op) => void attempt(togglePin(setting, get().content, op)),
-      takeResult: (result) => perform(takeResult(get().content, result)),
+      takeResult: (result, how) => perform(takeResult(get().content, result, how)),
       replace: (content, said) => perform({ content, said }),
       undo: () => {
         const { past, future, content, readOnly } = get();

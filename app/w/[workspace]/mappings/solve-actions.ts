@@ -7,67 +7,70 @@ import { appError, notFound } from '@/app/_server/errors';
 import { enqueueSolve } from '@/app/_server/jobs';
 import { database } from '@/db/client';
 import { getMappingDraft } from '@/db/queries/mapping-drafts';
-import { createSolve, noteQueued, requestCancel } from '@/db/queries/solve-jobs';
+import { createSolve, listSolves, noteQueued, requestCancel } from '@/db/queries/solve-jobs';
 import { idSchema } from '@/lib/ids';
-import { objectives, pinsSchema, placementSchema } from '@/lib/mapping/mapping';
 import { err, ok } from '@/lib/result';
-import { engineChoices, SOLVE_LIMITS } from '@/lib/solver/options';
 import { checkProblem } from '@/lib/solver/problem';
+import { askedSolve } from './solve-ask';
+import { solveInput } from './solve-input';
 
 const MAX_SOLVE_BYTES = 400 * 1024;
-const LONGEST_MS = 600_000;
+/** Earlier solves of a bench that are asked what they have shown. */
+const SOLVES_KNOWN = 100;
 const editor = { role: 'editor' } as const;
 
-/** Asks for a solve of a bench. A bench has one at a time: while one runs, its id is the answer. */
+/**
+ * Asks for a solve of a bench, for its best mapping or with a question of its own. A bench has one at a time: while one
+ * runs, its id is the answer, and `asks` says what that one was asked.
+ */
 export const startSolve = defineAction({
   name: 'solve.start',
   access: editor,
   maxBytes: MAX_SOLVE_BYTES,
-  input: z.object({
-    workspace: z.string(),
-    draftId: idSchema('draft'),
-    settings: z.strictObject({
-      engine: z.enum(engineChoices),
-      objective: z.enum(objectives),
-      timeLimitMs: z.number().int().min(1000, 'At least 1 second').max(LONGEST_MS, 'At most 10 minutes'),
-      seed: z.number().int().min(0).max(SOLVE_LIMITS.seed),
-    }),
-    pins: pinsSchema,
-    startPlacement: placementSchema.nullable(),
-  }),
+  input: solveInput,
   run: async ({ input, ...member }) => {
-    const { draftId, settings, pins, startPlacement } = input;
+    const { draftId, settings } = input;
     const of = { workspaceId: member.workspace.id, draftId };
     const draft = await getMappingDraft(database(), of);
     if (!draft) return err(notFound('bench'));
+    const { ask, ...plain } = settings;
     const problem = checkProblem({
       kernel: draft.kernel.document,
       fabric: draft.fabric.document,
-      pins,
+      pins: ask?.kind === 'pin price' ? { ...input.pins, [ask.op]: ask.tile } : input.pins,
       objective: settings.objective,
-      ...(startPlacement ? { start: startPlacement } : {}),
+      ...(input.startPlacement ? { start: input.startPlacement } : {}),
+      ...(ask?.kind === 'another' ? { another: { objectiveValue: ask.objectiveValue, than: ask.than } } : {}),
     });
     if (!problem.ok) return err(appError('invalid', problem.error.messages.join(' ')));
     const made = await database().transaction(async (tx) => {
-      const solve = await createSolve(tx, { ...of, userId: member.user.id, settings, pins, startPlacement });
+      const solves = ask ? await listSolves(tx, { ...of, limit: SOLVES_KNOWN }) : [];
+      const asked = ask && askedSolve(draft, solves, { ...input, ask, objective: settings.objective });
+      const solve = await createSolve(tx, {
+        ...of,
+        userId: member.user.id,
+        settings: asked ? { ...plain, ask: asked.ask } : plain,
+        pins: asked?.pins ?? input.pins,
+        startPlacement: asked ? asked.startPlacement : input.startPlacement,
+      });
       if (solve.ok && solve.value.created) {
         await audit(tx, member, {
           action: 'solve started',
           subjectType: 'solve',
           subjectId: solve.value.id,
-          detail: { bench: draft.name, timeLimitMs: settings.timeLimitMs },
+          detail: { bench: draft.name, timeLimitMs: settings.timeLimitMs, ...(ask && { asks: ask.kind }) },
         });
       }
       return solve;
     });
     if (!made.ok)
       return err(appError('conflict', 'A solve of this bench ended at this very moment. Press again.'));
-    const { id, created } = made.value;
+    const { id, created, asks } = made.value;
     if (created) {
       const bossJobId = await enqueueSolve({ id, timeLimitMs: settings.timeLimitMs });
       if (bossJobId) await noteQueued(database(), { workspaceId: of.workspaceId, solveId: id, bossJobId });
     }
-    return ok({ solveId: id, created });
+    return ok({ solveId: id, created, asks });
   },
 });
 

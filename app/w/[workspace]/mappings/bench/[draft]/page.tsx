@@ -5,7 +5,7 @@ import { requireMember } from '@/app/_server/access';
 import { Bench } from '@/components/mapping-bench/bench';
 import { database } from '@/db/client';
 import { getMappingDraft } from '@/db/queries/mapping-drafts';
-import { listSolves } from '@/db/queries/solve-jobs';
+import { lastSolves } from '@/db/queries/solve-jobs';
 import { parseId } from '@/lib/ids';
 import { roleReaches } from '@/lib/roles';
 import { keepAsMapping, renameBench, saveBench, saveBenchAsNew } from '../../actions';
@@ -32,7 +32,7 @@ export async function generateMetadata({ params }: PageProps): Promise<Metadata>
 export default async function BenchPage({ params }: PageProps) {
   const { workspace, draft: draftText } = await params;
   const { member, of, draft } = await load(workspace, draftText);
-  const [lastSolve] = await listSolves(database(), { ...of, limit: 1 });
+  const last = await lastSolves(database(), of);
   return (
     <Bench
       key={draft.id}
@@ -43,7 +43,8 @@ export default async function BenchPage({ params }: PageProps) {
       content={{ ...draft.document, provenance: draft.provenance }}
       kernel={{ name: draft.kernel.name, version: draft.kernel.number, document: draft.kernel.document }}
       fabric={{ name: draft.fabric.name, version: draft.fabric.number, document: draft.fabric.document }}
-      solveId={draft.liveSolveId ?? lastSolve?.id ?? null}
+      solveId={last.ordinary}
+      askedSolveId={last.asked}
       readOnly={!roleReaches(member.role, 'editor') || draft.archivedAt !== null}
       calls={{ saveBench, saveBenchAsNew, keepAsMapping, renameBench, startSolve, stopSolve }}
     />
