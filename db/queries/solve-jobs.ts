@@ -114,9 +114,7 @@ export async function createSolve(
     .from(solveJobs)
     .where(and(eq(solveJobs.mappingDraftId, of.draftId), inArray(solveJobs.state, ['queued', 'running'])));
   // It ended between the two statements: the next press makes a new one.
-  return live
-    ? ok({ id: live.id, created: false, asks: live.settings.ask?.kind ?? null })
-    : err('not_found');
+  return live ? ok({ id: live.id, created: false, asks: live.settings.ask?.kind ?? null }) : err('not_found');
 }
 
 /** Remembers that the queue has taken the solve; one without this is sent again by the worker's sweep. */
@@ -155,9 +153,7 @@ export async function lastSolves(
     tx
       .select({ id: solveJobs.id, isOrdinary })
       .from(solveJobs)
-      .where(
-        and(eq(solveJobs.workspaceId, of.workspaceId), eq(solveJobs.mappingDraftId, of.draftId), where),
-      )
+      .where(and(eq(solveJobs.workspaceId, of.workspaceId), eq(solveJobs.mappingDraftId, of.draftId), where))
       .orderBy(desc(solveJobs.createdAt))
       .limit(1);
   const [[last], [ordinary]] = await Promise.all([newest(), newest(isOrdinary)]);
