@@ -47,7 +47,7 @@ async function measure(kernel: Kernel, fabric: Fabric, engine: EngineChoice) {
   try {
     const outcome = await runSolve(
       { kernel, fabric, pins: {}, objective },
-      { engine, timeLimitMs, seed: 1, nodeLimit: null },
+      { engine, timeLimitMs, seed: 1, nodeLimit: null, searchTries: null },
       {
         threadPath,
         onProgress: ({ best }) => {

@@ -17,7 +17,13 @@ const wanted: readonly Wanted[] = [
   { name: 'Sort four, solved', kernelSlug: 'sort-four-readings', fabricKey: 'hive', madeBy: 'architect' },
   { name: 'Gradient, solved', kernelSlug: 'gradient', fabricKey: 'slope', madeBy: 'compiler' },
 ];
-const SETTINGS = { engine: 'auto', timeLimitMs: 20_000, seed: 1, nodeLimit: null } as const;
+const SETTINGS = {
+  engine: 'auto',
+  timeLimitMs: 20_000,
+  seed: 1,
+  nodeLimit: null,
+  searchTries: null,
+} as const;
 
 async function solved(want: Wanted): Promise<DemoMapping> {
   const kernel = demoKernels.find((each) => each.slug === want.kernelSlug)!.kernel;

@@ -2,6 +2,7 @@
 import { z } from 'zod';
 import { fabricSchema } from '../fabric/fabric';
 import { kernelSchema } from '../graph/kernel';
+import { certificateSchema } from '../mapping/certificate';
 import { mappingSchema } from '../mapping/mapping';
 import { pinsDocumentSchema } from './pins-json';
 
@@ -10,6 +11,7 @@ const documents = {
   fabric: { title: 'Pinloom fabric', schema: fabricSchema },
   mapping: { title: 'Pinloom mapping', schema: mappingSchema },
   pins: { title: 'Pinloom pins', schema: pinsDocumentSchema },
+  certificate: { title: 'Pinloom certificate', schema: certificateSchema },
 } as const;
 
 export type DocumentName = keyof typeof documents;

@@ -1,5 +1,6 @@
 /** Mappings as JSON: the document of `mapping.schema.json`. */
 import { type MappingDocument, mappingSchema, type Provenance } from '../mapping/mapping';
+import { certificateMembers } from './certificate-json';
 import { parseJsonDocument } from './json-document';
 import { jsonText, sortedRecord } from './json-text';
 import type { ParseResult } from './parse-result';
@@ -22,7 +23,7 @@ export const writeMappingJson = (mapping: MappingDocument): string =>
     provenance: provenanceMembers(mapping.provenance),
   });
 
-function provenanceMembers(provenance: Provenance): Record<string, string | number | boolean> {
+function provenanceMembers(provenance: Provenance) {
   if (provenance.by === 'hand') return { by: provenance.by };
   return {
     by: provenance.by,
@@ -35,5 +36,6 @@ function provenanceMembers(provenance: Provenance): Record<string, string | numb
     bound: provenance.bound,
     elapsedMs: provenance.elapsedMs,
     changedByHand: provenance.changedByHand,
+    ...(provenance.certificate && { certificate: certificateMembers(provenance.certificate) }),
   };
 }

@@ -1,16 +1,18 @@
 /** The mapping document: where each op sits and which links each net takes. */
 import { z } from 'zod';
-import { linkIdSchema, tileIdSchema } from '../fabric/fabric';
-import { opIdSchema } from '../graph/kernel';
+import { certificateSchema } from './certificate';
+import { objectives, pinsSchema, placementSchema, routesSchema } from './placement';
 
-/** Op to tile. Partial while a person works; complete when R1 holds. */
-export const placementSchema = z.record(opIdSchema, tileIdSchema);
-/** The source op of a net to the directed links of its tree. A net within one PE has no entry or an empty one. */
-export const routesSchema = z.record(opIdSchema, z.array(linkIdSchema).max(8192));
-export const pinsSchema = z.record(opIdSchema, tileIdSchema);
-
-export const objectives = ['wire', 'path'] as const;
-export type Objective = (typeof objectives)[number];
+export {
+  type Objective,
+  objectives,
+  type Pins,
+  type Placement,
+  pinsSchema,
+  placementSchema,
+  type Routes,
+  routesSchema,
+} from './placement';
 
 /** Who or what made a mapping, and what was proved of it. */
 export const provenanceSchema = z.discriminatedUnion('by', [
@@ -27,6 +29,8 @@ export const provenanceSchema = z.discriminatedUnion('by', [
     elapsedMs: z.number().nonnegative(),
     /** The placement was changed by hand after the solve, so status and bound speak of the solve only. */
     changedByHand: z.boolean(),
+    /** Of the solve; absent where nothing was proved, and in mappings of a time without certificates. */
+    certificate: certificateSchema.optional(),
   }),
 ]);
 
@@ -42,8 +46,5 @@ export const mappingSchema = z.strictObject({
   provenance: provenanceSchema,
 });
 
-export type Placement = z.infer<typeof placementSchema>;
-export type Routes = z.infer<typeof routesSchema>;
-export type Pins = z.infer<typeof pinsSchema>;
 export type Provenance = z.infer<typeof provenanceSchema>;
 export type MappingDocument = z.infer<typeof mappingSchema>;

@@ -155,7 +155,7 @@ function searchAll(hunt: Hunt, around: Tiling | null): SolveOutcome {
   const result = exactSearch(instance, problem.graph, {
     incumbent: () => asked.objectiveValue + costStep(instance),
     shouldStop: () => atNodeLimit || isOver(hunt),
-    onBound: (bound) => void state.raise(Math.min(bound, hunt.leastAvoided)),
+    onBound: (bound) => void state.raise(Math.min(bound, hunt.leastAvoided), 'exact search'),
     onNodes: (nodes) => {
       state.noteNodes(nodes);
       atNodeLimit = options.nodeLimit !== null && nodes >= options.nodeLimit;
@@ -177,7 +177,7 @@ function searchAll(hunt: Hunt, around: Tiling | null): SolveOutcome {
   switch (result.kind) {
     case 'proved':
     case 'infeasible':
-      return state.infeasible(noOtherReason(asked, problem.objective));
+      return state.infeasible(noOtherReason(asked, problem.objective), 'exact search');
     case 'unresolved':
       return unknown(hunt, 'routing gap');
     case 'too large':

@@ -31,7 +31,7 @@ export function exactPass(
   const result = exactSearch(instance, problem.graph, {
     incumbent: () => state.best()?.objectiveValue ?? Number.POSITIVE_INFINITY,
     shouldStop: () => atNodeLimit || state.shouldStop(),
-    onBound: (bound) => void state.raise(bound),
+    onBound: (bound) => void state.raise(bound, 'exact search'),
     onNodes: (nodes) => {
       state.noteNodes(nodes);
       atNodeLimit = nodeLimit !== null && nodes >= nodeLimit;
@@ -47,6 +47,8 @@ export function exactPass(
     },
   });
   state.noteNodes(result.nodes);
+  state.proof.levels = result.levels;
+  state.proof.struckTiles = result.struckTiles;
   switch (result.kind) {
     case 'infeasible':
       // A legal mapping stands against it: nothing is concluded.
@@ -57,7 +59,7 @@ export function exactPass(
             explanation: result.isCongested ? tooFewChannels : noPlacementReason(problem),
           };
     case 'proved':
-      state.raise(result.bound);
+      state.raise(result.bound, 'exact search');
       return { kind: 'proved' };
     case 'unresolved':
       return { kind: 'unfinished', stop: 'routing gap' };

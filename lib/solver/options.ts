@@ -1,8 +1,8 @@
 /** How long and with what a placement is solved. */
 import { z } from 'zod';
+import { engineChoices } from '../mapping/certificate';
 
-export const engineChoices = ['auto', 'program', 'highs', 'simplex', 'search'] as const;
-export type EngineChoice = (typeof engineChoices)[number];
+export { type EngineChoice, engineChoices } from '../mapping/certificate';
 
 export const SOLVE_LIMITS = {
   timeLimitMs: 3_600_000,
@@ -25,6 +25,11 @@ export const solveOptionsSchema = z
      * by its share of the time, so the answer depends on the machine's speed only where the time limit itself is reached.
      */
     nodeLimit: z.number().int().min(1).max(SOLVE_LIMITS.nodeLimit).nullable().default(null),
+    /**
+     * Placements that the search may try to route before the proof takes over; null: as many as its share of the time
+     * allows. With the number of an earlier solve the proof begins from the same mapping.
+     */
+    searchTries: z.number().int().min(0).nullable().default(null),
   })
   .refine(({ engine, nodeLimit }) => nodeLimit === null || engine === 'auto', {
     path: ['nodeLimit'],
@@ -37,4 +42,5 @@ export const defaultSolveOptions: SolveOptions = {
   timeLimitMs: 30_000,
   seed: 1,
   nodeLimit: null,
+  searchTries: null,
 };

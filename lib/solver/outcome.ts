@@ -1,6 +1,7 @@
 /** What a solve ends with: one of four outcomes, every number finite. */
 import type { TileId } from '../fabric/fabric';
 import type { EdgeId, OpId } from '../graph/kernel';
+import type { Certificate } from '../mapping/certificate';
 import type { Objective, Placement, Routes } from '../mapping/mapping';
 
 /** Why a solve that proved nothing more has ended. */
@@ -40,6 +41,8 @@ interface OutcomeBase {
   seed: number;
   /** Nodes that the exact search looked at. */
   nodes: number;
+  /** What proves it: null where nothing is proved, and where the thread was lost before it could be said. */
+  certificate: Certificate | null;
 }
 
 export interface OptimalOutcome extends OutcomeBase {

@@ -69,7 +69,7 @@ export function runEngines(
       shouldStop: state.shouldStop,
       warmStart,
       onPoint: (_, values) => handling.onPoint(values),
-      onBound: (bound) => void state.raise(bound),
+      onBound: (bound) => void state.raise(bound, 'integer program'),
     });
     const result = take(outcome, state, handling);
     if (result) return result;
@@ -86,11 +86,11 @@ function take(outcome: EngineOutcome, state: SolveState, handling: PointHandling
       // A legal mapping stands against it: the engine erred, so nothing is concluded.
       return state.best() ? null : { kind: 'infeasible', explanation: handling.infeasible() };
     case 'optimal':
-      if (!state.raise(outcome.bound)) return null;
+      if (!state.raise(outcome.bound, 'integer program')) return null;
       handling.onPoint(outcome.values);
       return { kind: 'solved' };
     case 'unfinished':
-      if (outcome.bound !== null) state.raise(outcome.bound);
+      if (outcome.bound !== null) state.raise(outcome.bound, 'integer program');
       if (outcome.best) handling.onPoint(outcome.best.values);
       return null;
   }

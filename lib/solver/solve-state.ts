@@ -1,6 +1,8 @@
 /** The best mapping and bound of one solve while it runs, and how they become an outcome. */
 
-import type { Objective } from '../mapping/mapping';
+import type { ProofMethod } from '../mapping/certificate';
+import type { ProofNotes } from './certificate';
+import { foundOutcome, nothingOutcome } from './ended-outcome';
 import { compareMappings } from './legal-mapping';
 import type { SolveOptions } from './options';
 import {
@@ -25,6 +27,9 @@ export interface SolveClock {
 /** How often the number of nodes is reported while nothing else happens. */
 const NODES_EVERY_MS = 250;
 
+/** Engines whose work is counted in moves and nodes; others look at the time themselves. */
+const countedEngines: readonly string[] = ['search', 'exact'];
+
 export interface SolveState {
   best(): BestMapping | null;
   bound(): number;
@@ -34,15 +39,19 @@ export interface SolveState {
   /** Takes the mapping if it is better, and reports it. */
   offer(mapping: BestMapping): void;
   /** Takes a proven bound if it is higher, and reports it. A bound above a legal mapping is refused: false. */
-  raise(bound: number): boolean;
+  raise(bound: number, method: ProofNotes['method']): boolean;
   isProved(): boolean;
   /** Out of time, stopped by hand, or proved. */
   shouldStop(): boolean;
   noteEngine(name: string): void;
   /** Nodes that the exact search has looked at. */
   noteNodes(nodes: number): void;
+  /** For the certificate; passes write into it. */
+  proof: ProofNotes;
+  /** Only counts have decided so far how the solve went: neither time, nor a stop, nor an engine with a clock of its own. */
+  isRepeatable(): boolean;
   finish(fallback: StopReason): SolveOutcome;
-  infeasible(explanation: InfeasibleReason): SolveOutcome;
+  infeasible(explanation: InfeasibleReason, method: ProofMethod): SolveOutcome;
 }
 
 export function solveState(
@@ -59,6 +68,7 @@ export function solveState(
   let best: BestMapping | null = null;
   let bound = 0;
   let nodes = 0;
+  const proof: ProofNotes = { method: 'counting', searchTries: 0, levels: [], struckTiles: 0 };
   let reportedMs = 0;
   const report = () => {
     reportedMs = elapsedMs();
@@ -78,6 +88,7 @@ export function solveState(
     elapsedMs: Math.round(elapsedMs()),
     seed: options.seed,
     nodes,
+    certificate: null,
   });
   const cause = (fallback: StopReason): StopReason => {
     if (clock.shouldStop()) return clock.stopCause?.() ?? 'stopped';
@@ -98,11 +109,12 @@ export function solveState(
       best = mapping;
       report();
     },
-    raise: (next) => {
+    raise: (next, by) => {
       if (!Number.isFinite(next)) return false;
       if (best && next > best.objectiveValue + 1e-6) return false;
       if (next > bound) {
         bound = best ? Math.min(next, best.objectiveValue) : next;
+        proof.method = by;
         report();
       }
       return true;
@@ -115,80 +127,27 @@ export function solveState(
       nodes = looked;
       if (elapsedMs() - reportedMs >= NODES_EVERY_MS) report();
     },
+    proof,
+    isRepeatable: () =>
+      remainingMs() > 0 && !clock.shouldStop() && engines.every((name) => countedEngines.includes(name)),
     finish: (fallback) =>
-      best ? found(best, bound, cause(fallback), common()) : nothing(bound, cause(fallback), common()),
-    infeasible: (explanation) => ({
-      ...common(),
-      status: 'infeasible',
-      objectiveValue: null,
-      bound: null,
-      gapRatio: null,
-      stopReason: 'proved infeasible',
-      placement: null,
-      routes: null,
-      reason: explanation.message,
-      explanation,
-    }),
+      best
+        ? foundOutcome(best, bound, cause(fallback), common())
+        : nothingOutcome(bound, cause(fallback), common()),
+    infeasible: (explanation, by) => {
+      proof.method = by;
+      return {
+        ...common(),
+        status: 'infeasible',
+        objectiveValue: null,
+        bound: null,
+        gapRatio: null,
+        stopReason: 'proved infeasible',
+        placement: null,
+        routes: null,
+        reason: explanation.message,
+        explanation,
+      };
+    },
   };
-}
-
-type Common = Pick<SolveOutcome, 'engine' | 'objective' | 'elapsedMs' | 'seed' | 'nodes'>;
-
-function found(best: BestMapping, bound: number, stopReason: StopReason, common: Common): SolveOutcome {
-  const { objectiveValue, placement, routes } = best;
-  const answer = { ...common, objectiveValue, placement, routes, reason: null, explanation: null };
-  if (objectiveValue <= bound) {
-    return { ...answer, status: 'optimal', bound: objectiveValue, gapRatio: 0, stopReason: 'proved optimal' };
-  }
-  const gapRatio = gapRatioOf(objectiveValue, bound) ?? 0;
-  return { ...answer, status: 'feasible', bound, gapRatio, stopReason };
-}
-
-function nothing(bound: number, stopReason: StopReason, common: Common): SolveOutcome {
-  const why: Record<StopReason, string> = {
-    'time limit': 'No legal mapping was found within the time limit: allow more time.',
-    'node limit':
-      'The exact search reached its node limit before a legal mapping was found: allow more nodes.',
-    stopped: 'The solve was stopped before a legal mapping was found.',
-    'memory limit':
-      'The solve reached its memory limit before a legal mapping was found: use a smaller fabric.',
-    'model too large':
-      'The search found no legal mapping, and the integer program would be too large to prove more.',
-    'search complete': 'The search ended without a legal mapping: allow more time, or add channels or units.',
-    'another found': 'The solve ended without a legal mapping.',
-    'routing gap':
-      'Placements exist, but none that was tried could be routed: add channels to the links or allow more time.',
-    'thread failed': 'The solver thread ended unexpectedly before a legal mapping was found: try again.',
-  };
-  return {
-    ...common,
-    status: 'unknown',
-    objectiveValue: null,
-    bound,
-    gapRatio: null,
-    stopReason,
-    placement: null,
-    routes: null,
-    reason: why[stopReason],
-    explanation: null,
-  };
-}
-
-/** The outcome of a solve that was cut off, from its last report. */
-export function interruptedOutcome(
-  objective: Objective,
-  options: SolveOptions,
-  last: SolveProgress | null,
-  elapsedMs: number,
-  stopReason: StopReason,
-): SolveOutcome {
-  const common = {
-    engine: options.engine,
-    objective,
-    elapsedMs: Math.round(elapsedMs),
-    seed: options.seed,
-    nodes: last?.nodes ?? 0,
-  };
-  const bound = last?.bound ?? 0;
-  return last?.best ? found(last.best, bound, stopReason, common) : nothing(bound, stopReason, common);
 }

@@ -2,6 +2,7 @@
 import { readFileSync, statSync } from 'node:fs';
 import { z } from 'zod';
 import type { Fabric } from '../../lib/fabric/fabric';
+import { parseCertificateJson } from '../../lib/formats/certificate-json';
 import { parseFabricJson } from '../../lib/formats/fabric-json';
 import { parseJsonDocument } from '../../lib/formats/json-document';
 import { parseKernelDot } from '../../lib/formats/kernel-dot';
@@ -11,6 +12,7 @@ import { type ParseResult, positionAt } from '../../lib/formats/parse-result';
 import { parsePinsJson } from '../../lib/formats/pins-json';
 import { parseQaplib, type QaplibDocument } from '../../lib/formats/qaplib';
 import type { Kernel } from '../../lib/graph/kernel';
+import type { Certificate } from '../../lib/mapping/certificate';
 import { type MappingDocument, type Pins, placementSchema, routesSchema } from '../../lib/mapping/mapping';
 import { err, ok, type Result } from '../../lib/result';
 
@@ -58,6 +60,8 @@ function isOutcome(text: string): boolean {
   }
 }
 
+export const readCertificate = (path: string): Result<Certificate, Faults> =>
+  read(path, parseCertificateJson);
 export const readMapping = (path: string): Result<MappingDocument, Faults> => read(path, parseMappingJson);
 
 /** line:column of the first word that is the id; 1:1 without an id. */

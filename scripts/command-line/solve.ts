@@ -70,6 +70,7 @@ export function outcomeDocument(problem: PlacementProblem, outcome: SolveOutcome
     nodes: outcome.nodes,
     placement,
     routes,
+    certificate: outcome.certificate,
     metrics: placement === null || routes === null ? null : metricsDocument(problem, { placement, routes }),
   };
 }

@@ -1,4 +1,4 @@
-export const usage = `Places kernels on fabrics and checks mappings.
+export const usage = `Places kernels on fabrics, checks mappings and proves answers again.
 
 npm run -s pinloom -- place --kernel K --fabric F [options]
   --kernel K          kernel, .json or .dot
@@ -21,7 +21,15 @@ npm run -s pinloom -- pin-price --kernel K --fabric F --pins P --op OP [options]
 npm run -s pinloom -- verify --kernel K --fabric F --mapping M
   Checks the mapping by rules R1 to R7 and names each one that it breaks.
 
+npm run -s pinloom -- prove --kernel K --fabric F --certificate C [options]
+  Solves the certificate's problem again, from its seed and start, and holds what comes out against it.
+  --certificate C     certificate, .json, or what place has printed
+  --pins P            pins, .json; the certificate's own where this is left out
+  --mapping M         mapping, .json, to be checked as the answer that was proved
+  --time-limit-ms N   3600000 by default
+
 Each prints one JSON document on standard output and nothing else there.
-Exit codes: 0 placed or legal, 2 bad input (file:line:column on standard error),
+Exit codes: 0 placed, legal or agreed, 1 the certificate does not agree,
+2 bad input (file:line:column on standard error),
 3 no legal mapping exists, or no other one, or rules are broken, 4 nothing found.
 `;

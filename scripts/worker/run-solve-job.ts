@@ -85,7 +85,7 @@ async function solveTaken(
         ...(startPlacement ? { start: startPlacement } : {}),
         ...askedOf(settings.ask),
       },
-      { engine: settings.engine, timeLimitMs, seed: settings.seed, nodeLimit: null },
+      { engine: settings.engine, timeLimitMs, seed: settings.seed, nodeLimit: null, searchTries: null },
       { signal, memoryLimitMb: MEMORY_LIMIT_MB, onProgress: ledger.take },
     );
     return { ok: true, outcome };

@@ -4,10 +4,10 @@
  */
 import { join } from 'node:path';
 import { Worker } from 'node:worker_threads';
+import { interruptedOutcome } from '../ended-outcome';
 import { defaultSolveOptions, SOLVE_LIMITS, type SolveOptions } from '../options';
 import type { SolveOutcome, SolveProgress, StopReason } from '../outcome';
 import type { BadInput, PlacementProblem } from '../problem';
-import { interruptedOutcome } from '../solve-state';
 import { STOP_BY_MEMORY, STOP_BY_PERSON, STOP_NONE, type ThreadInput, type ThreadMessage } from './protocol';
 
 export interface RunHooks {

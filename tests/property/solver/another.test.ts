@@ -21,7 +21,7 @@ function answer(
 ): SolveOutcome {
   const result = solve(
     { kernel, fabric, pins, objective, another },
-    { engine, timeLimitMs, seed: 1, nodeLimit: null },
+    { engine, timeLimitMs, seed: 1, nodeLimit: null, searchTries: null },
     { nowMs: () => performance.now(), shouldStop: () => false, onProgress: () => undefined, engines: [] },
   );
   if (!result.ok) throw new Error(result.error.messages.join('\n'));

@@ -20,7 +20,7 @@ const cases = fc.sample(tinyCaseArb, { seed: 20261, numRuns: 400 });
 function solved({ kernel, fabric, pins, objective }: TinyCase, engines: readonly Engine[]): SolveOutcome {
   const result = solve(
     { kernel, fabric, pins, objective },
-    { engine: 'program', timeLimitMs: 20_000, seed: 1, nodeLimit: null },
+    { engine: 'program', timeLimitMs: 20_000, seed: 1, nodeLimit: null, searchTries: null },
     { nowMs: () => performance.now(), shouldStop: () => false, onProgress: () => undefined, engines },
   );
   if (!result.ok) throw new Error(result.error.messages.join('\n'));

@@ -25,7 +25,7 @@ function solved(
 ): SolveOutcome {
   const result = solve(
     { kernel, fabric, pins, objective },
-    { engine: 'auto', timeLimitMs: 20_000, seed: 1, nodeLimit: null },
+    { engine: 'auto', timeLimitMs: 20_000, seed: 1, nodeLimit: null, searchTries: null },
     {
       nowMs: () => performance.now(),
       shouldStop: hooks.shouldStop ?? (() => false),

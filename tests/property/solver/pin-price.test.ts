@@ -36,7 +36,7 @@ function solved({ kernel, fabric, objective }: TinyCase, pins: Pins, looks: numb
   let left = looks;
   const result = solve(
     { kernel, fabric, pins, objective },
-    { engine: 'auto', timeLimitMs: 20_000, seed: 1, nodeLimit: null },
+    { engine: 'auto', timeLimitMs: 20_000, seed: 1, nodeLimit: null, searchTries: null },
     {
       nowMs: () => performance.now(),
       shouldStop: () => left-- <= 0,

@@ -1,27 +1,14 @@
-import { spawnSync } from 'node:child_process';
-import { mkdtempSync, readFileSync, rmSync, writeFileSync } from 'node:fs';
-import { tmpdir } from 'node:os';
-import { join } from 'node:path';
+import { readFileSync } from 'node:fs';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
+import { commandLine } from '../../helpers/command-line';
 
-const fixture = (name: string) => join('tests/fixtures/solver', name);
-const folder = mkdtempSync(join(tmpdir(), 'pinloom-cli-'));
-const scratch = (name: string, text: string): string => {
-  const path = join(folder, name);
-  writeFileSync(path, text);
-  return path;
-};
-const run = (...args: string[]) => {
-  const done = spawnSync(process.execPath, ['scripts/pinloom.mjs', ...args], { encoding: 'utf8' });
-  return { code: done.status, stdout: done.stdout, stderr: done.stderr };
-};
-const chain = ['--kernel', fixture('scale-and-clamp.kernel.json'), '--fabric', fixture('hive.fabric.json')];
+const { run, scratch, fixture, chain, clear } = commandLine();
 
 beforeAll(() => {
   // The first call may have to bundle.
   run('--help');
 }, 60_000);
-afterAll(() => rmSync(folder, { recursive: true }));
+afterAll(clear);
 
 describe('pinloom place', { timeout: 60_000 }, () => {
   it('prints one JSON document and nothing else, and exits 0', () => {
@@ -167,9 +154,9 @@ describe('pinloom verify', { timeout: 60_000 }, () => {
 });
 
 describe('pinloom --help', () => {
-  it('tells both commands and the exit codes', () => {
+  it('tells all commands and the exit codes', () => {
     const { code, stdout } = run('--help');
     expect(code).toBe(0);
-    for (const word of ['place', 'verify', 'Exit codes']) expect(stdout).toContain(word);
+    for (const word of ['place', 'verify', 'prove', 'Exit codes']) expect(stdout).toContain(word);
   });
 });

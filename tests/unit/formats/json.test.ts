@@ -3,6 +3,7 @@ import Ajv2020 from 'ajv/dist/2020';
 import { describe, expect, test } from 'vitest';
 import { demoKernels } from '@/db/seed/kernels';
 import { type Fabric, fabricSchema } from '@/lib/fabric/fabric';
+import { parseCertificateJson, writeCertificateJson } from '@/lib/formats/certificate-json';
 import { parseFabricJson, writeFabricJson } from '@/lib/formats/fabric-json';
 import { documentNames, jsonSchemaOf, jsonSchemaText } from '@/lib/formats/json-schema';
 import { MAX_JSON_DEPTH, MAX_JSON_VALUES } from '@/lib/formats/json-walk';
@@ -11,7 +12,8 @@ import { parseMappingJson, writeMappingJson } from '@/lib/formats/mapping-json';
 import type { ParseResult } from '@/lib/formats/parse-result';
 import { parsePinsJson, writePinsJson } from '@/lib/formats/pins-json';
 import { emptyKernel } from '@/lib/graph';
-import { mappingSchema, pinsSchema } from '@/lib/mapping/mapping';
+import { type Certificate, certificateSchema } from '@/lib/mapping/certificate';
+import { type MappingDocument, mappingSchema, pinsSchema } from '@/lib/mapping/mapping';
 
 const places = (result: ParseResult<unknown>) =>
   result.ok ? [] : result.errors.map(({ line, column, message }) => `${line}:${column} ${message}`);
@@ -179,6 +181,30 @@ const mapping = mappingSchema.parse({
   },
 });
 
+const certificate: Certificate = certificateSchema.parse({
+  format: 'pinloom.certificate',
+  formatVersion: 1,
+  engineVersion: 3,
+  problemDigest: `sha256:${'0a'.repeat(32)}`,
+  objective: 'path',
+  pins: { op_b: 'r0c1', op_a: 'r0c0' },
+  start: { op_b: 'r0c1', op_a: 'r0c0' },
+  engine: 'auto',
+  seed: 7,
+  searchTries: 4,
+  status: 'optimal',
+  objectiveValue: 12.5,
+  bound: 12.5,
+  method: 'exact search',
+  nodes: 100,
+  levels: [
+    { cutoff: 11.5, nodes: 20 },
+    { cutoff: 12, nodes: 70 },
+  ],
+  struckTiles: 3000,
+  isRepeatable: true,
+});
+
 describe('writing and reading', () => {
   test('a fabric comes back as it was', () => {
     expect(parseFabricJson(writeFabricJson(fabric))).toEqual({ ok: true, value: fabric });
@@ -195,6 +221,15 @@ describe('writing and reading', () => {
     expect(written).toContain('"placement": { "op_a": "r0c0", "op_b": "r0c1" }');
     const byHand = { ...mapping, provenance: { by: 'hand' as const } };
     expect(parseMappingJson(writeMappingJson(byHand))).toEqual({ ok: true, value: byHand });
+  });
+  test('a certificate comes back as it was, alone and within a mapping, its records in the order of names', () => {
+    const written = writeCertificateJson(certificate);
+    expect(parseCertificateJson(written)).toEqual({ ok: true, value: certificate });
+    expect(written).toContain('"pins": { "op_a": "r0c0", "op_b": "r0c1" }');
+    expect(parseCertificateJson(writeCertificateJson({ ...certificate, start: null })).ok).toBe(true);
+    const provenance = { ...mapping.provenance, certificate } as MappingDocument['provenance'];
+    const proved = { ...mapping, provenance };
+    expect(parseMappingJson(writeMappingJson(proved))).toEqual({ ok: true, value: proved });
   });
   test('pins come back as they were', () => {
     const pins = pinsSchema.parse({ op_b: 'r1c1', op_a: 'r0c0' });
@@ -216,12 +251,13 @@ describe('the JSON Schemas in docs/formats', () => {
   const accepts = (name: (typeof documentNames)[number], written: string) =>
     checks.get(name)?.(JSON.parse(written));
 
-  test('every demo kernel, a fabric, a mapping and pins fit their schemas', () => {
+  test('every demo kernel, a fabric, a mapping, pins and a certificate fit their schemas', () => {
     for (const { kernel } of demoKernels) expect(accepts('kernel', writeKernelJson(kernel))).toBe(true);
     expect(accepts('kernel', writeKernelJson(emptyKernel('k')))).toBe(true);
     expect(accepts('fabric', writeFabricJson(fabric))).toBe(true);
     expect(accepts('mapping', writeMappingJson(mapping))).toBe(true);
     expect(accepts('pins', writePinsJson(mapping.pins))).toBe(true);
+    expect(accepts('certificate', writeCertificateJson(certificate))).toBe(true);
   });
 
   test.each([

@@ -24,7 +24,7 @@ function outcomeOf(
 ): SolveOutcome {
   const result = solve(
     { fabric: hive, pins: {}, objective: 'wire', ...problem },
-    { engine: 'auto', timeLimitMs: 20_000, seed: 1, nodeLimit: null, ...options },
+    { engine: 'auto', timeLimitMs: 20_000, seed: 1, nodeLimit: null, searchTries: null, ...options },
     { nowMs: () => performance.now(), shouldStop, onProgress: () => undefined, engines: [] },
   );
   if (!result.ok) throw new Error(result.error.messages.join('\n'));

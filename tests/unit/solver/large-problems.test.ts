@@ -57,7 +57,7 @@ function solved(opCount: number, on: ReturnType<typeof fabric>, timeLimitMs: num
   let isFound = false;
   const result = solve(
     { kernel: chain(opCount), fabric: on, pins: {}, objective: 'wire' },
-    { engine: 'auto', timeLimitMs, seed: 1, nodeLimit: null },
+    { engine: 'auto', timeLimitMs, seed: 1, nodeLimit: null, searchTries: null },
     {
       nowMs: () => performance.now(),
       shouldStop: () => stopAtFirst && isFound,

@@ -48,7 +48,7 @@ describe('a solve with a node limit', () => {
     ['sort-four-readings', 'hive', 'path', 2],
     ['add-compare-select', 'hive', 'wire', 2],
     ['gradient', 'slope', 'wire', 1],
-    ['tilt-direction', 'slope', 'wire', 2],
+    ['fourier-butterfly', 'slope', 'wire', 2],
   ] as const)(
     'gives the same answer to the route on a fast machine and on a slow one: %s on %s, %s, seed %d',
     (slug, on, objective, seed) => {

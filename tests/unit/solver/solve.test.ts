@@ -29,7 +29,7 @@ function outcomeOf(
   const startMs = performance.now();
   const result = solve(
     { pins: {}, objective: 'wire', ...problem },
-    { engine: 'auto', timeLimitMs: 20_000, seed: 1, nodeLimit: null, ...options },
+    { engine: 'auto', timeLimitMs: 20_000, seed: 1, nodeLimit: null, searchTries: null, ...options },
     {
       nowMs: () => performance.now(),
       shouldStop: () => hooks.shouldStop?.(performance.now() - startMs) ?? false,
@@ -139,7 +139,7 @@ describe('bad input', () => {
   const refuse = (problem: Partial<PlacementProblem>) =>
     solve(
       { kernel: kernel('scale-and-clamp'), fabric: fabric('hive'), pins: {}, objective: 'wire', ...problem },
-      { engine: 'search', timeLimitMs: 1000, seed: 1, nodeLimit: null },
+      { engine: 'search', timeLimitMs: 1000, seed: 1, nodeLimit: null, searchTries: null },
       { nowMs: () => 0, shouldStop: () => false, onProgress: () => undefined, engines: [] },
     );
 
