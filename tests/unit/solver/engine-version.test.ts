@@ -14,11 +14,11 @@ import { solve } from '@/lib/solver/solve';
 const counts = {
   engineVersion: 1,
   nodes: [
-    ['surge-detector', 'hive', 'wire', 47],
-    ['wavelet-step', 'slope', 'wire', 274],
-    ['wavelet-step', 'slope', 'path', 18],
-    ['fourier-butterfly', 'hive', 'wire', 36],
-    ['fourier-butterfly', 'hive', 'path', 78],
+    ['surge-detector', 'hive', 'wire', 28],
+    ['wavelet-step', 'slope', 'wire', 153],
+    ['wavelet-step', 'slope', 'path', 14],
+    ['fourier-butterfly', 'hive', 'wire', 27],
+    ['fourier-butterfly', 'hive', 'path', 1],
   ],
 } as const;
 

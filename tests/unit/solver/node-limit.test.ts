@@ -46,13 +46,12 @@ describe('a solve with a node limit', () => {
   it.each([
     ['wavelet-step', 'hive', 'wire', 1],
     ['sort-four-readings', 'hive', 'path', 2],
-    ['add-compare-select', 'hive', 'wire', 2],
     ['gradient', 'slope', 'wire', 1],
     ['fourier-butterfly', 'slope', 'wire', 2],
   ] as const)(
     'gives the same answer to the route on a fast machine and on a slow one: %s on %s, %s, seed %d',
     (slug, on, objective, seed) => {
-      const run = { slug, on, objective, seed, nodeLimit: 500 };
+      const run = { slug, on, objective, seed, nodeLimit: 100 };
       const fast = outcomeOf(run, 1);
       // So slow that more than half of the hour goes by.
       const slow = outcomeOf(run, (0.6 * LIMIT_MS) / fast.elapsedMs);
@@ -65,10 +64,10 @@ describe('a solve with a node limit', () => {
   );
 
   it('ends within 16 nodes of its limit and says so', () => {
-    const outcome = outcomeOf({ slug: 'gradient', nodeLimit: 1000 }, 0);
+    const outcome = outcomeOf({ slug: 'gradient', nodeLimit: 200 }, 0);
     expect(outcome).toMatchObject({ status: 'feasible', stopReason: 'node limit' });
-    expect(outcome.nodes).toBeGreaterThanOrEqual(1000);
-    expect(outcome.nodes).toBeLessThan(1016);
+    expect(outcome.nodes).toBeGreaterThanOrEqual(200);
+    expect(outcome.nodes).toBeLessThan(216);
   }, 30_000);
 
   it('proves as ever where the proof needs fewer nodes', () => {
