@@ -71,7 +71,7 @@ export function raiseConstant(relaxation: Relaxation, limits: AscentLimits, scra
   const { shouldStop } = limits;
   for (let sweep = 0; sweep < limits.sweeps; sweep++) {
     const before = relaxation.constant;
-    if (!passTriples(relaxation, sweep % 2 === 1, shouldStop)) return true;
+    if (!passTriples(relaxation, sweep % 2 === 1, limits)) return true;
     for (let k = 0; k < freeCount; k++) {
       const op = free[sweep % 2 === 0 ? k : freeCount - 1 - k] as number;
       if ((graph.pairsOf[op] as Int32Array).length === 0) continue;

@@ -56,8 +56,9 @@ export interface ExactLevel {
 export const TABLE_ENTRIES_LIMIT = 2_500_000;
 const SYMMETRY_LIMIT = 256;
 const ROOT_SWEEPS = 40;
-const NODE_SWEEPS = 2;
-const LEAST_GAIN = 0.02;
+const ROOT_LEAST_GAIN = 0.02;
+const NODE_SWEEPS = 6;
+const NODE_LEAST_GAIN = 0.2;
 /** Conflicts looked at for the nets that stand at an inner node, and for a whole placement. */
 const INNER_ROUTE_NODES = 40;
 const LEAF_ROUTE_NODES = 20_000;
@@ -154,7 +155,7 @@ function deepen(search: Search, root: Relaxation, decided: Decided, most: number
   const limits = {
     cutoff: Math.min(most, hooks.incumbent()),
     sweeps: ROOT_SWEEPS,
-    leastGain: LEAST_GAIN,
+    leastGain: ROOT_LEAST_GAIN,
     shouldStop: hooks.shouldStop,
     onSweep: (constant: number) => hooks.onBound(wholeBound(constant)),
   };
@@ -228,7 +229,7 @@ function visit(search: Search, depth: number, levelCutoff: number, decided: Deci
   const limits = {
     cutoff: cutoff + search.margin - extra,
     sweeps: NODE_SWEEPS,
-    leastGain: LEAST_GAIN,
+    leastGain: NODE_LEAST_GAIN,
     ...(isSlow ? { shouldStop: search.hooks.shouldStop } : {}),
   };
   if (!reassignAll(node, search.scratch) || !raiseConstant(node, limits, search.scratch)) return;

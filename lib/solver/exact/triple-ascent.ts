@@ -10,19 +10,29 @@
 import type { OpTriple } from './cost-graph';
 import type { Relaxation } from './relaxation';
 
+/** Leaves pairs of tiles that cost more than the slack to the cutoff out of the question. */
+export interface TripleLimits {
+  cutoff: number;
+  /** Asked before each triple: a true ends the pass where it stands. */
+  shouldStop?: () => boolean;
+}
+
+const ROUNDING = 1e-6;
+
 /** One pass over all triples, from the last to the first where `backward`; false when `shouldStop` ended it. */
-export function passTriples(relaxation: Relaxation, backward: boolean, shouldStop?: () => boolean): boolean {
+export function passTriples(relaxation: Relaxation, backward: boolean, limits: TripleLimits): boolean {
   const { triples } = relaxation.graph;
+  const slack = limits.cutoff + ROUNDING - relaxation.constant;
   for (let i = 0; i < triples.length; i++) {
     const triple = triples[backward ? triples.length - 1 - i : i] as OpTriple;
     if (relaxation.tableAt[triple.table] === -1) continue;
-    if (shouldStop?.()) return false;
-    passTriple(relaxation, triple);
+    if (limits.shouldStop?.()) return false;
+    passTriple(relaxation, triple, slack);
   }
   return true;
 }
 
-function passTriple({ tables, tableAt, domainSize }: Relaxation, triple: OpTriple): void {
+function passTriple({ tables, tableAt, domainSize }: Relaxation, triple: OpTriple, slack: number): void {
   const sizeA = domainSize[triple.a] as number;
   const sizeB = domainSize[triple.b] as number;
   const sizeC = domainSize[triple.c] as number;
@@ -37,20 +47,20 @@ function passTriple({ tables, tableAt, domainSize }: Relaxation, triple: OpTripl
   addTo(tables, bc, pairBC, sizeB * sizeC);
   for (let p = 0, entry = 0; p < sizeA; p++) {
     for (let q = 0; q < sizeB; q++, entry++) {
-      const other = least(tables, ac + p * sizeC, 1, bc + q * sizeC, 1, sizeC);
-      give(tables, ab + entry, pairAB + entry, other, 1 / 3);
+      const cost = pairCost(tables, ab + entry, ac + p * sizeC, 1, bc + q * sizeC, 1, sizeC);
+      give(tables, ab + entry, pairAB + entry, cost > slack ? Number.POSITIVE_INFINITY : cost / 3);
     }
   }
   for (let p = 0, entry = 0; p < sizeA; p++) {
     for (let r = 0; r < sizeC; r++, entry++) {
-      const other = least(tables, ab + p * sizeB, 1, bc + r, sizeC, sizeB);
-      give(tables, ac + entry, pairAC + entry, other, 1 / 2);
+      const cost = pairCost(tables, ac + entry, ab + p * sizeB, 1, bc + r, sizeC, sizeB);
+      give(tables, ac + entry, pairAC + entry, cost > slack ? Number.POSITIVE_INFINITY : cost / 2);
     }
   }
   for (let q = 0, entry = 0; q < sizeB; q++) {
     for (let r = 0; r < sizeC; r++, entry++) {
-      const other = least(tables, ab + q, sizeB, ac + r, sizeC, sizeA);
-      give(tables, bc + entry, pairBC + entry, other, 1);
+      const cost = pairCost(tables, bc + entry, ab + q, sizeB, ac + r, sizeC, sizeA);
+      give(tables, bc + entry, pairBC + entry, cost > slack ? Number.POSITIVE_INFINITY : cost);
     }
   }
 }
@@ -60,28 +70,34 @@ function addTo(tables: Float64Array, target: number, source: number, size: numbe
     tables[target + i] = (tables[target + i] as number) + (tables[source + i] as number);
 }
 
-/** The least sum of two rows of entries. */
-function least(
+/**
+ * What two tiles cost in the triple at least: their own entry and the least sum of the third op's entries with each.
+ * Never below 0 but by rounding, so the look ends at 0.
+ */
+function pairCost(
   tables: Float64Array,
+  at: number,
   one: number,
   oneStep: number,
   other: number,
   otherStep: number,
   size: number,
 ): number {
+  const own = tables[at] as number;
+  if (own === Number.POSITIVE_INFINITY) return own;
   let found = Number.POSITIVE_INFINITY;
-  for (let i = 0; i < size; i++) {
-    const sum = (tables[one + i * oneStep] as number) + (tables[other + i * otherStep] as number);
-    if (sum < found) found = sum;
+  for (let i = 0, x = one, y = other; i < size; i++, x += oneStep, y += otherStep) {
+    const sum = (tables[x] as number) + (tables[y] as number);
+    if (sum < found) {
+      found = sum;
+      if (own + sum <= 0) return 0;
+    }
   }
-  return found;
+  return own + found;
 }
 
-/** The pair gets a part of what its two tiles cost in the triple at least. */
-function give(tables: Float64Array, message: number, pair: number, other: number, part: number): void {
-  const own = tables[message] as number;
-  // Below 0 by rounding only.
-  const given = own === Number.POSITIVE_INFINITY ? own : Math.max(0, own + other) * part;
-  tables[pair] = given;
-  tables[message] = given === Number.POSITIVE_INFINITY ? given : own - given;
+/** Moves that much from the triple to the pair. */
+function give(tables: Float64Array, message: number, pair: number, cost: number): void {
+  tables[pair] = cost;
+  tables[message] = cost === Number.POSITIVE_INFINITY ? cost : (tables[message] as number) - cost;
 }
