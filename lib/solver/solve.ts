@@ -56,6 +56,8 @@ function runPasses(
   const presolved = presolve(problem, whole);
   if (presolved.kind === 'infeasible') return state.infeasible(presolved.explanation, 'counting');
   const { instance } = presolved;
+  // On the largest problems a short limit is over by now.
+  if (!problem.another && state.shouldStop()) return state.finish('time limit');
   state.raise(trivialBound(instance), 'counting');
   state.raise(problem.provenBound ?? 0, null);
   const star = starsWithinWork(instance);

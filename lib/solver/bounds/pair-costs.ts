@@ -32,8 +32,17 @@ export function pairCosts(instance: PlacementInstance): WeightedPair[] {
   return [...wire, ...instance.pairs.map(({ from, to }) => ({ a: from, b: to, weight: 1, table }))];
 }
 
+/** Asked for several times in one solve; a net of 2,000 terminals has two million pairs. */
+const knownNeighbours = new WeakMap<PlacementInstance, readonly ReadonlySet<number>[]>();
+
 /** For each op the others that it has a cost with, for the price of a look at the pairs or nets: no table is made. */
-export function neighboursOf(instance: PlacementInstance): Set<number>[] {
+export function neighboursOf(instance: PlacementInstance): readonly ReadonlySet<number>[] {
+  const known = knownNeighbours.get(instance) ?? findNeighbours(instance);
+  knownNeighbours.set(instance, known);
+  return known;
+}
+
+function findNeighbours(instance: PlacementInstance): Set<number>[] {
   const neighbours = Array.from({ length: instance.opCount }, () => new Set<number>());
   const terms =
     instance.objective === 'path'
