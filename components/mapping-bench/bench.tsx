@@ -188,7 +188,7 @@ function BenchScreen(props: BenchProps) {
             if (solving.result) store.getState().takeResult(solving.result);
             solving.setPreviewing(false);
           },
-          taken: solving.isTaken(content) || asking.isTaken(content),
+          taken: solving.isTaken(content) || asking.isTaken(content) || asking.hasFound(content),
           asking,
           busy: [solving.solve, asking.solve].some((solve) => solve !== null && isLive(solve)),
         }}

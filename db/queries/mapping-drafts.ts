@@ -1,6 +1,5 @@
 /** Benches: placements that are being worked on. Kept mappings: mappings.ts. */
-import { and, desc, eq, inArray, isNotNull, isNull, sql } from 'drizzle-orm';
-import { alias } from 'drizzle-orm/pg-core';
+import { and, desc, eq, isNotNull, isNull, sql } from 'drizzle-orm';
 import type { Fabric } from '../../lib/fabric/fabric';
 import type { Kernel } from '../../lib/graph/kernel';
 import type { Id } from '../../lib/ids';
@@ -9,7 +8,7 @@ import type { Provenance } from '../../lib/mapping/mapping';
 import { err, ok, type Result } from '../../lib/result';
 import type { Tx } from '../client';
 import { newId } from '../ids';
-import { fabrics, fabricVersions, kernels, kernelVersions, mappingDrafts, solveJobs, users } from '../schema';
+import { fabrics, fabricVersions, kernels, kernelVersions, mappingDrafts, users } from '../schema';
 import { type SaveProblem, whyNotSaved } from './save-problem';
 
 interface OneDraft {
@@ -68,8 +67,6 @@ export interface MappingDraftView {
     number: number;
     document: Fabric;
   };
-  /** The solve that is queued or running, if any. */
-  liveSolveId: Id<'solve'> | null;
 }
 
 const one = (d: OneDraft) =>
@@ -176,7 +173,6 @@ export function listMappingDrafts(
 
 /** The bench with both documents. */
 export async function getMappingDraft(tx: Tx, draft: OneDraft): Promise<MappingDraftView | null> {
-  const live = alias(solveJobs, 'live');
   const rows = await tx
     .select({
       id: mappingDrafts.id,
@@ -202,7 +198,6 @@ export async function getMappingDraft(tx: Tx, draft: OneDraft): Promise<MappingD
         number: fabricVersions.number,
         document: fabricVersions.document,
       },
-      liveSolveId: live.id,
     })
     .from(mappingDrafts)
     .innerJoin(users, eq(users.id, mappingDrafts.updatedBy))
@@ -210,10 +205,6 @@ export async function getMappingDraft(tx: Tx, draft: OneDraft): Promise<MappingD
     .innerJoin(kernels, eq(kernels.id, kernelVersions.kernelId))
     .innerJoin(fabricVersions, eq(fabricVersions.id, mappingDrafts.fabricVersionId))
     .innerJoin(fabrics, eq(fabrics.id, fabricVersions.fabricId))
-    .leftJoin(
-      live,
-      and(eq(live.mappingDraftId, mappingDrafts.id), inArray(live.state, ['queued', 'running'])),
-    )
     .where(one(draft));
   return rows[0] ?? null;
 }

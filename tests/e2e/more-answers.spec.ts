@@ -65,9 +65,13 @@ test('another of equal cost is put on the bench as one step; asked again, there 
   await expect(autoPlace(page)).toContainText(none, { timeout: SOLVED_MS });
   await expect(said(page)).toHaveText(none);
   expect(await placed(page)).toBe(second);
+  await expect(autoPlace(page)).not.toContainText('A solve found');
   await checkAccessible(page, 'the bench without another');
   await page.emulateMedia({ colorScheme: 'dark' });
   await checkAccessible(page, 'the bench without another, dark');
+  await page.getByText(/saved \d\d:\d\d/).waitFor();
+  await page.reload();
+  await expect(autoPlace(page)).toContainText('A solve found 4 wire hops. Another mapping is on the bench.');
 });
 
 test('what a pin costs is told, not put on the bench by itself, found again after a reload, and taken as one step', async ({

@@ -30,7 +30,6 @@ describe('a bench', () => {
       provenance: { by: 'hand' },
       kernel: { name: 'Gauge reading', number: 1, document: gaugeKernel() },
       fabric: { name: 'Two by two', number: 1, document: smallFabric() },
-      liveSolveId: null,
     });
   });
 

@@ -139,7 +139,6 @@ describe('reading what belongs to another workspace', () => {
     });
     expect(await getSolve(box.db, { ...of, solveId })).not.toBeNull();
     expect(await getMappingDraft(box.db, { ...of, draftId })).toMatchObject({
-      liveSolveId: solveId,
       keptAs: mappingId,
     });
     expect(await listPendingInvitations(box.db, of)).toHaveLength(1);

@@ -4,7 +4,7 @@ import { Button } from '@/components/ui/button';
 import { Notice } from '@/components/ui/notice';
 import type { TileId } from '@/lib/fabric/fabric';
 import type { OpId } from '@/lib/graph/kernel';
-import { useBenchStore } from '../store/bench-context';
+import { useBench, useBenchStore } from '../store/bench-context';
 import { BestChart } from './best-chart';
 import type { SolvePanelProps } from './solve-panel-props';
 import { durationText, gapText, objectiveNames, type Solve, solveResult, stopText } from './solve-state';
@@ -30,6 +30,9 @@ export function SolveEnd(props: SolvePanelProps & { solve: Solve }) {
 }
 
 function Offer({ solve, previewing, readOnly, onPreview, onTake }: SolvePanelProps & { solve: Solve }) {
+  const isOwn = useBench(
+    ({ content: { provenance } }) => provenance.by === 'hand' || provenance.changedByHand,
+  );
   const result = solveResult(solve);
   if (result?.provenance.by !== 'solver') return null;
   const { objectiveValue, bound, objective, elapsedMs, status } = result.provenance;
@@ -40,8 +43,8 @@ function Offer({ solve, previewing, readOnly, onPreview, onTake }: SolvePanelPro
         {durationText(elapsedMs)}
       </p>
       <p>
-        A solve found {objectiveValue} {objectiveNames[objective].toLowerCase()}. Your own changes are
-        untouched.
+        A solve found {objectiveValue} {objectiveNames[objective].toLowerCase()}.{' '}
+        {isOwn ? 'Your own changes are untouched.' : 'Another mapping is on the bench.'}
       </p>
       <div className="mt-2 flex flex-wrap gap-2">
         <Button look="secondary" aria-pressed={previewing} onClick={() => onPreview(!previewing)}>

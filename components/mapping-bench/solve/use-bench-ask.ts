@@ -44,6 +44,7 @@ export function useBenchAsk(store: BenchStore, parts: SolveJobParts & { settings
   const [previewing, setPreviewing] = useState(false);
   const startedWith = useRef<Started | null>(null);
   const [askedOf, setAskedOf] = useState<BenchContent | null>(null);
+  /** In this visit, put on the bench or not. */
   const found = useRef<Placement[]>([]);
   const offered = useOffered(parts.workspace, solve);
 
@@ -125,6 +126,9 @@ export function useBenchAsk(store: BenchStore, parts: SolveJobParts & { settings
     },
     isTaken: (content: BenchContent) =>
       offered !== null && samePlacement(offered.result.placement, content.placement),
+    /** Whether the bench holds what any of this visit's questions has found. */
+    hasFound: (content: BenchContent) =>
+      found.current.some((placement) => samePlacement(placement, content.placement)),
   };
 }
 

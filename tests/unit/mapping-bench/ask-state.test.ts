@@ -153,6 +153,8 @@ describe('placements to avoid', () => {
     expect(avoided.length).toBeGreaterThan(1);
     expect(JSON.stringify(avoided).length).toBeLessThan(350_000);
     expect(avoided.at(-1)).toEqual(large(6));
+    const repeated = [large(1), ...Array.from({ length: 9 }, () => large(2))];
+    expect(avoidedPlacements(repeated, 2000)).toEqual([large(1), large(2)]);
   });
 });
 
