@@ -65,6 +65,8 @@ const LEAF_ROUTE_NODES = 20_000;
 const CHEAP_LEVEL_NODES = 30;
 /** Nodes with more table entries look at the clock each time. */
 const SLOW_NODE_ENTRIES = 20_000;
+/** With more than this, the ascent looks at it for each op and triple. */
+const SLOW_ASCENT_ENTRIES = 400_000;
 /** Part of the costs' step that rounding may take: far above it for sums of any size, far below the next cost. */
 const MARGIN = 1e-3;
 
@@ -225,12 +227,11 @@ function visit(search: Search, depth: number, levelCutoff: number, decided: Deci
   }
   const extra = standingExtra(search, decided.nets, node.constant, cutoff);
   if (extra === null) return;
-  const isSlow = node.tables.length > SLOW_NODE_ENTRIES;
   const limits = {
     cutoff: cutoff + search.margin - extra,
     sweeps: NODE_SWEEPS,
     leastGain: NODE_LEAST_GAIN,
-    ...(isSlow ? { shouldStop: search.hooks.shouldStop } : {}),
+    ...(node.tables.length > SLOW_ASCENT_ENTRIES ? { shouldStop: search.hooks.shouldStop } : {}),
   };
   if (!reassignAll(node, search.scratch) || !raiseConstant(node, limits, search.scratch)) return;
   const op = branchingOp(node, search.pairCountOf);
@@ -248,13 +249,14 @@ function standingExtra(
   const slack = cutoff + search.margin - constant;
   if (slack < 0) return null;
   if (!search.router) return 0;
-  if (standing.length < 2) return 0;
-  const routed = search.router.route(standing, slack, INNER_ROUTE_NODES);
+  const nets = [...standing, ...search.nets.openNets(search.tileOf)];
+  if (nets.length < 2) return 0;
+  const routed = search.router.route(nets, slack, INNER_ROUTE_NODES);
   if (routed.kind === 'over') {
     search.isCongested = true;
     return null;
   }
-  return routed.kind === 'routed' && routed.exact ? routed.extra : 0;
+  return routed.kind === 'unknown' || routed.exact ? routed.extra : 0;
 }
 
 /** The op whose choice decides most: few tiles left for the number of its pairs, placed neighbours included. */

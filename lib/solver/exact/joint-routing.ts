@@ -1,22 +1,26 @@
 /**
  * Routes placed nets together at least cost, exactly: each net takes its own least tree; where a link then carries too
  * much, one of the nets on it has to do without it, and each choice is tried (branch and bound on the conflicts, as in
- * conflict-based search for paths: Sharon, Stern, Felner and Sturtevant 2015). Trees are the exact ones of
- * lib/solver/routing where the net's size allows.
+ * conflict-based search for paths: Sharon, Stern, Felner and Sturtevant 2015), the cheapest first. Trees are the exact
+ * ones of lib/solver/routing where the net's size allows. Nets with one consumer still free take part with the links that
+ * they cannot do without at no cost, wherever that consumer goes (open-nets.ts).
  */
 import type { LinkGraph } from '../../fabric/link-graph';
 import type { Objective } from '../../mapping/mapping';
 import { walkLinks } from '../routing/link-tree';
 import { isWithinExactWork, shortestPathsTree, steinerTree } from '../routing/steiner-tree';
+import { type OpenNetCosts, openNetCosts } from './open-nets';
 
 export interface RoutingFabric extends LinkGraph {
   maxHops: number | null;
 }
 
-/** A net whose terminals all stand. */
+/** A net whose terminals all stand, or all but one. */
 export interface StandingNet {
   /** The source's tile, then the consumers'. */
   tiles: readonly number[];
+  /** Tiles that the one free consumer may take, always the same list for an op; none where all stand. */
+  openTiles?: readonly number[];
   weight: number;
   /** Weight of each consumer's path, for the objective `path`. */
   pathWeights: readonly number[];
@@ -36,8 +40,8 @@ export type JointRoute =
   | { kind: 'routed'; extra: number; links: (readonly number[])[]; exact: boolean }
   /** No joint routing within the budget. */
   | { kind: 'over' }
-  /** Too many conflicts for the work allowed. */
-  | { kind: 'unknown' };
+  /** Too many conflicts for the work allowed: what is surely lost. */
+  | { kind: 'unknown'; extra: number };
 
 export interface JointRouter {
   /** The net's own least tree; null where it cannot be routed at all. */
@@ -52,9 +56,11 @@ export function jointRouter(fabric: RoutingFabric, objective: Objective): JointR
   const channels = Int32Array.from(fabric.links, (link) => link.channels);
   const load = new Int32Array(fabric.links.length);
   const cache = new Map<string, LeastTree | null>();
+  const openNets = openNetCosts(fabric);
   const plain = new Float64Array(fabric.links.length).fill(1);
 
   const leastTree = (net: StandingNet, barred: readonly number[]): LeastTree | null => {
+    if (net.openTiles) return openTree(openNets, net, net.openTiles, barred);
     if (barred.length > 0) return treeWithout(net, barred);
     if (net.own === undefined) net.own = treeWithout(net, barred);
     return net.own;
@@ -74,6 +80,18 @@ export function jointRouter(fabric: RoutingFabric, objective: Objective): JointR
     tree: (net) => leastTree(net, []),
     route: (nets, budget, maxNodes) => routeTogether({ nets, budget, maxNodes, channels, load, leastTree }),
   };
+}
+
+/** Its cost is what it pays for doing without the barred links; its links those that it cannot do without for nothing. */
+function openTree(
+  costs: OpenNetCosts,
+  { tiles, weight }: StandingNet,
+  openTiles: readonly number[],
+  barred: readonly number[],
+): LeastTree | null {
+  const [source, consumer] = tiles as readonly [number, number];
+  const found = costs(source, consumer, openTiles, barred);
+  return found && { cost: weight * found.moreLinks, links: found.neededLinks, exact: true };
 }
 
 function wireTree(fabric: RoutingFabric, net: StandingNet, cost: Float64Array): LeastTree | null {
@@ -143,35 +161,36 @@ function routeTogether(task: Task): JointRoute {
     trees.push(tree);
   }
   if (!isOverfull(trees, task.channels, task.load)) return routed(trees, 0);
-  let best: Branch | null = null;
-  let limit = budget;
-  let nodes = 0;
+  // Dearest first, so that the cheapest is at the end; of equally cheap ones the youngest.
   const open: Branch[] = [{ trees, barred: nets.map(() => []), extra: 0 }];
+  let nodes = 0;
   for (let branch = open.pop(); branch; branch = open.pop()) {
-    if (best ? branch.extra >= best.extra : branch.extra > limit) continue;
-    if (++nodes > maxNodes) return { kind: 'unknown' };
+    if (++nodes > maxNodes) return { kind: 'unknown', extra: branch.extra };
     const conflict = dearestConflict(task, branch);
-    if (!conflict) {
-      best = branch;
-      limit = branch.extra;
-      if (best.extra === 0) break;
-      continue;
-    }
+    if (!conflict) return routed(branch.trees, branch.extra);
     for (const { net, tree, increase } of conflict.detours) {
-      const extra: number = branch.extra + increase;
-      if (best ? extra >= best.extra : extra > limit) continue;
-      open.push({
+      const extra = branch.extra + increase;
+      if (extra > budget) continue;
+      const barred = [...(branch.barred[net] as number[]), conflict.link].sort((x, y) => x - y);
+      insert(open, {
         trees: branch.trees.with(net, tree),
-        barred: branch.barred.with(
-          net,
-          [...(branch.barred[net] as number[]), conflict.link].sort((x, y) => x - y),
-        ),
+        barred: branch.barred.with(net, barred),
         extra,
       });
     }
   }
-  if (!best) return { kind: 'over' };
-  return routed(best.trees, best.extra);
+  return { kind: 'over' };
+}
+
+function insert(open: Branch[], branch: Branch): void {
+  let low = 0;
+  let high = open.length;
+  while (low < high) {
+    const middle = (low + high) >> 1;
+    if ((open[middle] as Branch).extra >= branch.extra) low = middle + 1;
+    else high = middle;
+  }
+  open.splice(low, 0, branch);
 }
 
 const routed = (trees: readonly LeastTree[], extra: number): JointRoute => ({

@@ -5,6 +5,8 @@ import type { StandingNet } from './joint-routing';
 export interface StandingNets {
   /** Nets of the op whose terminals all stand, now that it does; in the instance's order. */
   completedBy(op: number, tileOf: Int32Array): NumberedNet[];
+  /** Nets of two consumers whose source stands and just one consumer does (objective `wire`). */
+  openNets(tileOf: Int32Array): StandingNet[];
   /** The pairs' cost when all ops stand (objective `path`, nothing routed). */
   pairCost(tileOf: Int32Array): number;
 }
@@ -32,6 +34,18 @@ export function standingNets(instance: PlacementInstance): StandingNets {
       for (const { index, ops, weight, pathWeights } of netsOf[op] as typeof nets) {
         if (ops.some((terminal) => (tileOf[terminal] as number) < 0)) continue;
         found.push({ index, tiles: ops.map((terminal) => tileOf[terminal] as number), weight, pathWeights });
+      }
+      return found;
+    },
+    openNets(tileOf) {
+      const found: StandingNet[] = [];
+      if (instance.objective !== 'wire') return found;
+      for (const { ops, weight } of nets) {
+        if (ops.length !== 3) continue;
+        const [source, left, right] = ops.map((op) => tileOf[op] as number) as [number, number, number];
+        if (source < 0 || left < 0 === right < 0) continue;
+        const openTiles = instance.candidates[ops[left < 0 ? 1 : 2] as number] ?? [];
+        found.push({ tiles: [source, left < 0 ? right : left], weight, pathWeights: [], openTiles });
       }
       return found;
     },
