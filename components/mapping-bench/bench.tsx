@@ -7,6 +7,7 @@ import { Button, IconButton } from '@/components/ui/button';
 import { Menu } from '@/components/ui/menu';
 import { useToast } from '@/components/ui/toast';
 import type { Fabric } from '@/lib/fabric/fabric';
+import { fabricFileName, kernelFileName, mappingFileName } from '@/lib/formats/file-names';
 import type { Kernel } from '@/lib/graph/kernel';
 import { shortName } from '@/lib/mapping/picture/op-label';
 import type { BenchCalls } from './bench-calls';
@@ -187,6 +188,12 @@ function BenchScreen(props: BenchProps) {
           onTake: () => {
             if (solving.result) store.getState().takeResult(solving.result);
             solving.setPreviewing(false);
+          },
+          files: {
+            kernel: kernelFileName(props.kernel.document.name, props.kernel.version, 'kernel.json'),
+            fabric: fabricFileName(props.fabric.document.name, props.fabric.version),
+            certificate: mappingFileName(name, 'certificate.json'),
+            mapping: null,
           },
           taken: solving.isTaken(content) || asking.isTaken(content) || asking.hasFound(content),
           asking,

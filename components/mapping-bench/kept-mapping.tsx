@@ -7,6 +7,7 @@ import { Button } from '@/components/ui/button';
 import { Menu } from '@/components/ui/menu';
 import { useToast } from '@/components/ui/toast';
 import type { Fabric } from '@/lib/fabric/fabric';
+import { fabricFileName, kernelFileName, mappingFileName } from '@/lib/formats/file-names';
 import type { Kernel } from '@/lib/graph/kernel';
 import type { MappingDocument } from '@/lib/mapping/mapping';
 import { shortName } from '@/lib/mapping/picture/op-label';
@@ -121,7 +122,7 @@ function KeptScreen(props: KeptMappingProps) {
         solvePanel={null}
         more={
           <>
-            <Making {...props} />
+            <Making {...props} shownName={name} files={files} />
             <ConnectionHops />
           </>
         }
@@ -148,7 +149,8 @@ function KeptScreen(props: KeptMappingProps) {
 const when = new Intl.DateTimeFormat('en-GB', { dateStyle: 'medium', timeStyle: 'short', timeZone: 'UTC' });
 
 /** Who or what made it, from which versions, with which settings. */
-function Making({ document, madeBy, madeAtMs, kernelHref, fabricHref }: KeptMappingProps) {
+function Making(props: KeptMappingProps & { shownName: string; files: string }) {
+  const { document, madeBy, madeAtMs, kernelHref, fabricHref } = props;
   const { provenance, kernel, fabric } = document;
   const version = (number: number | null) => (number === null ? '' : `, version ${number}`);
   const rows: [string, ReactNode][] = [
@@ -184,7 +186,16 @@ function Making({ document, madeBy, madeAtMs, kernelHref, fabricHref }: KeptMapp
   return (
     <section aria-label="How it was made">
       <PanelTitle>How it was made</PanelTitle>
-      <ProvedBlock provenance={provenance} />
+      <ProvedBlock
+        provenance={provenance}
+        files={{
+          kernel: kernelFileName(props.kernel.name, kernel.version, 'kernel.json'),
+          fabric: fabricFileName(props.fabric.name, fabric.version),
+          certificate: mappingFileName(props.shownName, 'certificate.json'),
+          mapping: mappingFileName(props.shownName, 'json'),
+        }}
+        href={`${props.files}/certificate.json`}
+      />
       <dl className="mt-2 text-sm">
         {rows.map(([label, value]) => (
           <div key={label} className="flex justify-between gap-3 py-0.5">

@@ -14,6 +14,7 @@ import {
   uniqueIndex,
 } from 'drizzle-orm/pg-core';
 import type { Id } from '../../lib/ids';
+import type { Certificate } from '../../lib/mapping/certificate';
 import type { Objective, Pins, Placement, Routes } from '../../lib/mapping/mapping';
 import type { InfeasibleReason } from '../../lib/solver/outcome';
 import type { Answer } from '../../lib/solver/pin-price';
@@ -77,6 +78,8 @@ export interface SolveEnd {
   reason: string | null;
   /** The ops, tiles and connections that the reason names, to be shown on the bench; null unless infeasible. */
   explanation: InfeasibleReason | null;
+  /** What proves it; null where nothing is proved, absent in solves of a time without certificates. */
+  certificate?: Certificate | null;
 }
 
 /** One request to the solver. The queue delivers its id; what it is and how far it came stands here. */

@@ -18,18 +18,22 @@ export function honestProvenance(
 ): Provenance {
   if (claimed.by === 'hand') return claimed;
   const same = known.filter(({ provenance }) => provenance.by === 'solver' && sameSolve(provenance, claimed));
-  const first = same[0]?.provenance;
-  if (first?.by !== 'solver') return { by: 'hand' };
+  // Solves of other pins may have ended with the same figures; their certificates tell them apart.
+  const meant = same.find(({ provenance }) => digestOf(provenance) === digestOf(claimed)) ?? same[0];
+  if (meant?.provenance.by !== 'solver') return { by: 'hand' };
   const untouched = same.some(
     (making) =>
       making.provenance.by === 'solver' &&
       !making.provenance.changedByHand &&
       samePlacement(making.placement, placement),
   );
-  return { ...first, changedByHand: !untouched };
+  return { ...meant.provenance, changedByHand: !untouched };
 }
 
 type BySolver = Extract<Provenance, { by: 'solver' }>;
+
+const digestOf = (provenance: Provenance): string | undefined =>
+  provenance.by === 'solver' ? provenance.certificate?.problemDigest : undefined;
 
 const sameSolve = (a: BySolver, b: BySolver): boolean =>
   a.engine === b.engine &&

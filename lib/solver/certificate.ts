@@ -48,7 +48,7 @@ export function certificateOf(
     levels: levels.map(({ cutoff, nodes: visited }) => ({ cutoff, nodes: visited })),
     struckTiles,
     // A given bound may end the search sooner, and the certificate does not hold it.
-    isRepeatable: isRepeatable && problem.provenBound === undefined,
+    isRepeatable: isRepeatable && !problem.provenBound,
   };
 }
 

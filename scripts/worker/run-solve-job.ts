@@ -140,6 +140,7 @@ const endOf = (outcome: SolveOutcome): SolveEnd => ({
   stopReason: outcome.stopReason,
   reason: outcome.reason,
   explanation: outcome.explanation,
+  certificate: outcome.certificate,
 });
 
 const refusal = (reason: string): SolveEnd => ({
@@ -153,6 +154,7 @@ const refusal = (reason: string): SolveEnd => ({
   stopReason: 'refused',
   reason,
   explanation: null,
+  certificate: null,
 });
 
 interface ProgressLedger {

@@ -115,12 +115,12 @@ test('an action that another site asks for is not carried out', async () => {
 });
 
 /** The address of a case in a workspace, with the ids that it names. */
-const addressIn = async (scene: Scene, route: string, workspace: string) => {
+const addressIn = async (scene: Scene, route: string, workspace: string, proved = false) => {
   const ids: Record<string, () => Promise<string>> = {
     kernel: scene.kernelId,
     fabric: scene.fabricId,
     draft: scene.draftId,
-    mapping: scene.mappingId,
+    mapping: proved ? scene.provedMappingId : scene.mappingId,
     solve: scene.solveId,
   };
   let address = route.replace('[workspace]', workspace);
@@ -135,10 +135,10 @@ async function statusFor(who: Caller, address: string) {
   return { status: answer.status(), to: answer.headers().location ?? null };
 }
 
-for (const { route, query = '', open } of routeCases) {
+for (const { route, query = '', open, proved } of routeCases) {
   test(`GET ${route}`, async () => {
     const scene = newScene(ground);
-    const address = `${await addressIn(scene, route, demoWorkspace)}${query}`;
+    const address = `${await addressIn(scene, route, demoWorkspace, proved)}${query}`;
     if (route.includes('[kernel]'))
       await call(ground, caller.owner, 'keepKernelVersionAction', {
         workspace: demoWorkspace,
@@ -150,7 +150,7 @@ for (const { route, query = '', open } of routeCases) {
     expect(await status(caller.stranger)).toBe(open ? 200 : 401);
     expect(await status(caller.outsider)).toBe(open ? 200 : 404);
     if (!open) {
-      const there = `${await addressIn(scene, route, elsewhere)}${query}`;
+      const there = `${await addressIn(scene, route, elsewhere, proved)}${query}`;
       expect(await status(caller.outsider, there), 'its ids under another workspace').toBe(404);
     }
     for (const role of roles) expect(await status(caller[role]), role).toBe(200);

@@ -1,4 +1,5 @@
-import type { Page } from '@playwright/test';
+import { readFileSync } from 'node:fs';
+import type { Locator, Page } from '@playwright/test';
 import {
   checkAccessible,
   checkNoSidewaysScroll,
@@ -133,6 +134,70 @@ test('with two ops pinned the rest is placed, proved, undone, redone, kept, and 
   await expect(figures(page)).toContainText('5 of 5');
 });
 
+test('how an optimum was proved is told on the bench and on the kept mapping, as a file and as a command to prove it again', async ({
+  pageOf,
+}) => {
+  const page = await pageOf('architect', { permissions: ['clipboard-read', 'clipboard-write'] });
+  const name = ownName('Certified');
+  await openBench(page, name, {
+    kernel: 'Slope: surge detector · 9 ops',
+    fabric: 'Hive microphone, 6 × 6 · 6×6',
+  });
+  await page.getByRole('button', { name: 'Auto-place the rest' }).click();
+  const panel = page.getByRole('region', { name: 'Auto-place' });
+  await expect(panel.getByText(/Proved optimal/)).toBeVisible({ timeout: 40_000 });
+  await panel.getByText('How it was proved').click();
+  await expect(panel).toContainText('The exact search has looked for a cheaper mapping level by level');
+  // 14 wire hops are the optimum, so the last level has its cutoff at 13.
+  await expect(panel.getByRole('row', { name: /^13 / })).toBeVisible();
+  await expect(panel.locator('code')).toHaveText(
+    /^npm run -s pinloom -- prove --kernel \S+-v1\.kernel\.json --fabric \S+-v1\.fabric\.json --certificate certified-\w+\.certificate\.json$/,
+  );
+  const fromBench = await saveCertificate(page, panel);
+  for (const colorScheme of ['light', 'dark'] as const) {
+    await page.emulateMedia({ colorScheme });
+    await checkAccessible(page, `the proof on the bench in ${colorScheme}`);
+  }
+  await saved(page);
+  await page.getByRole('button', { name: 'Keep as mapping' }).click();
+  await page.getByRole('dialog').getByRole('button', { name: 'Keep', exact: true }).click();
+  await page.waitForURL(/\/mappings\/mapping_/);
+
+  const making = page.getByRole('region', { name: 'How it was made' });
+  const summary = making.getByText('How it was proved');
+  await summary.focus();
+  await page.keyboard.press('Enter');
+  await expect(making).toContainText(/Engine version\s*\d/);
+  await expect(making).toContainText(/sha256:[0-9a-f]{64}/);
+  const command = (await making.locator('code').textContent()) ?? '';
+  expect(command).toMatch(/ --certificate certified-\w+\.certificate\.json --mapping certified-\w+\.json$/);
+  await making.getByRole('button', { name: 'Copy the command' }).click();
+  await expect(said(page)).toHaveText(/The command is copied\./);
+  expect(await page.evaluate(() => navigator.clipboard.readText())).toBe(command);
+  const kept = await saveCertificate(page, making);
+  expect(kept).toEqual(fromBench);
+  expect(JSON.parse(kept.text)).toMatchObject({
+    format: 'pinloom.certificate',
+    objectiveValue: 14,
+    bound: 14,
+  });
+  await page.setViewportSize({ width: 390, height: 844 });
+  await page.getByRole('button', { name: 'Figures', exact: true }).click();
+  for (const colorScheme of ['light', 'dark'] as const) {
+    await page.emulateMedia({ colorScheme });
+    await checkAccessible(page, `the proof of a kept mapping in ${colorScheme}`);
+  }
+  await checkNoSidewaysScroll(page, 'the proof of a kept mapping at 390 px');
+});
+
+async function saveCertificate(page: Page, within: Locator): Promise<{ name: string; text: string }> {
+  const [download] = await Promise.all([
+    page.waitForEvent('download'),
+    within.getByRole('link', { name: 'Certificate, JSON' }).click(),
+  ]);
+  return { name: download.suggestedFilename(), text: readFileSync(await download.path(), 'utf8') };
+}
+
 test('two people at one bench: the second is told and keeps both', async ({ pageOf }) => {
   const first = await pageOf('architect');
   const name = ownName('Shared');
@@ -220,6 +285,9 @@ test('what cannot fit is said with its reason', async ({ pageOf }) => {
   await page.getByRole('button', { name: 'Auto-place the rest' }).click();
   const panel = page.getByRole('region', { name: 'Auto-place' });
   await expect(panel).toContainText('No mapping is possible', { timeout: 40_000 });
+  await panel.getByText('How it was proved').click();
+  await expect(panel).toContainText('Counting is enough: what is named above cannot go together.');
+  await checkAccessible(page, 'the proof that nothing fits');
   await panel.getByRole('button', { name: 'Show where' }).click();
   await expect(figures(page)).toContainText('0 of 20');
 });

@@ -2,21 +2,30 @@
 
 import type { Provenance } from '@/lib/mapping/mapping';
 import { useBench } from '../store/bench-context';
+import { ProofDetails } from './proof-details';
+import type { ProofFiles } from './proof-words';
 import { durationText, gapText, objectiveNames } from './solve-state';
 
 /** What was proved of the mapping on the bench. */
-export function MakingStatus() {
+export function MakingStatus({ files }: { files: ProofFiles }) {
   const provenance = useBench((state) => state.content.provenance);
   const placedOps = useBench((state) => state.facts.metrics.placedOps);
   if (placedOps === 0) return <p className="text-sm text-quiet">Nothing is placed yet.</p>;
-  return <ProvedBlock provenance={provenance} />;
+  return <ProvedBlock provenance={provenance} files={files} href={null} />;
+}
+
+interface ProvedBlockProps {
+  provenance: Provenance;
+  files: ProofFiles;
+  /** Where the certificate lies as a file, if it does. */
+  href: string | null;
 }
 
 /** "Proved optimal · 0.4 s", or how far the mapping may be off, or that it is made by hand. */
-export function ProvedBlock({ provenance }: { provenance: Provenance }) {
+export function ProvedBlock({ provenance, files, href }: ProvedBlockProps) {
   if (provenance.by === 'hand')
     return <p className="text-sm text-quiet">Placed by hand; nothing is proved.</p>;
-  const { objective, objectiveValue, bound, status, elapsedMs, changedByHand } = provenance;
+  const { objective, objectiveValue, bound, status, elapsedMs, changedByHand, certificate } = provenance;
   const name = objectiveNames[objective].toLowerCase();
   if (changedByHand) {
     return (
@@ -35,6 +44,7 @@ export function ProvedBlock({ provenance }: { provenance: Provenance }) {
         <p className="mt-1 text-sm text-quiet">
           No legal mapping has fewer than {objectiveValue} {name}.
         </p>
+        {certificate ? <ProofDetails certificate={certificate} files={files} href={href} /> : null}
       </>
     );
   }

@@ -6,6 +6,7 @@ import type { TileId } from '@/lib/fabric/fabric';
 import type { OpId } from '@/lib/graph/kernel';
 import { useBench, useBenchStore } from '../store/bench-context';
 import { BestChart } from './best-chart';
+import { ProofDetails } from './proof-details';
 import type { SolvePanelProps } from './solve-panel-props';
 import { durationText, gapText, objectiveNames, type Solve, solveResult, stopText } from './solve-state';
 
@@ -60,30 +61,34 @@ function Offer({ solve, previewing, readOnly, onPreview, onTake }: SolvePanelPro
   );
 }
 
-function Infeasible({ solve }: SolvePanelProps & { solve: Solve }) {
+function Infeasible({ solve, files }: SolvePanelProps & { solve: Solve }) {
   const store = useBenchStore();
   const { outcome } = solve;
   const explanation = outcome?.explanation;
   const named = (explanation?.opIds.length ?? 0) + (explanation?.tileIds.length ?? 0);
+  const certificate = outcome?.certificate;
   return (
-    <Notice className="mt-2" tone="broken" live>
-      <p className="font-semibold">No mapping is possible</p>
-      <p>{outcome?.reason}</p>
-      {explanation && named > 0 ? (
-        <Button
-          look="danger"
-          className="mt-2"
-          onClick={() =>
-            store.getState().mark({
-              opIds: explanation.opIds as OpId[],
-              tileIds: explanation.tileIds as TileId[],
-              linkIds: [],
-            })
-          }
-        >
-          Show where
-        </Button>
-      ) : null}
-    </Notice>
+    <>
+      <Notice className="mt-2" tone="broken" live>
+        <p className="font-semibold">No mapping is possible</p>
+        <p>{outcome?.reason}</p>
+        {explanation && named > 0 ? (
+          <Button
+            look="danger"
+            className="mt-2"
+            onClick={() =>
+              store.getState().mark({
+                opIds: explanation.opIds as OpId[],
+                tileIds: explanation.tileIds as TileId[],
+                linkIds: [],
+              })
+            }
+          >
+            Show where
+          </Button>
+        ) : null}
+      </Notice>
+      {certificate ? <ProofDetails certificate={certificate} files={files} href={null} /> : null}
+    </>
   );
 }

@@ -1,3 +1,4 @@
+import type { ProofFiles } from './proof-words';
 import type { Solve, SolveSettings } from './solve-state';
 import type { BenchAsk } from './use-bench-ask';
 
@@ -16,6 +17,8 @@ export interface SolvePanelProps {
   onTake: () => void;
   /** The solve's result is what the bench holds. */
   taken: boolean;
+  /** What kernel, fabric and certificate are called as files. */
+  files: ProofFiles;
   asking: BenchAsk;
   /** A solve of the bench runs, whatever it was asked. */
   busy: boolean;

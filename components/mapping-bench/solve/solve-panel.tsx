@@ -18,7 +18,7 @@ export function SolvePanel(props: SolvePanelProps) {
   return (
     <section aria-label="Auto-place">
       <PanelTitle>Auto-place</PanelTitle>
-      <MakingStatus />
+      <MakingStatus files={props.files} />
       {live ? (
         <SolveProgress
           solve={solve}

@@ -2,6 +2,7 @@
 import { z } from 'zod';
 import { tileIdSchema } from '@/lib/fabric/fabric';
 import { opIdSchema } from '@/lib/graph/kernel';
+import { certificateSchema } from '@/lib/mapping/certificate';
 import {
   type Objective,
   objectives,
@@ -80,6 +81,7 @@ export const solveSchema = z.object({
       stopReason: z.string().nullable(),
       reason: z.string().nullable(),
       explanation: explanationSchema,
+      certificate: certificateSchema.nullish(),
     })
     .nullable(),
 });
@@ -113,6 +115,7 @@ export function solveResult(solve: Solve): SolveResult | null {
       bound: Math.min(bound, best.objectiveValue),
       elapsedMs: outcome?.elapsedMs ?? solve.elapsedMs,
       changedByHand: false,
+      ...(outcome?.certificate && { certificate: outcome.certificate }),
     },
   };
 }

@@ -6,6 +6,8 @@ export interface RouteCase {
   query?: string;
   /** Anybody may read it. */
   open?: true;
+  /** The mapping has to be one that a solve has proved. */
+  proved?: true;
 }
 
 const w = '/w/[workspace]';
@@ -18,6 +20,7 @@ export const routeCases: readonly RouteCase[] = [
   { route: `${api}/kernels/[kernel]/versions` },
   { route: `${api}/kernels/[kernel]/versions/[number]` },
   { route: `${api}/fabrics/[fabric]/export` },
+  { route: `${api}/mappings/[mapping]/certificate.json`, proved: true },
   { route: `${api}/mappings/[mapping]/mapping.json` },
   { route: `${api}/mappings/[mapping]/picture.svg` },
   { route: `${api}/mappings/[mapping]/picture.png` },

@@ -1,5 +1,6 @@
 /** Things of one workspace, made by its owner when a case asks for them; each made once per scene. */
 import type { APIRequestContext } from '@playwright/test';
+import { solveResult, solveSchema } from '../../../components/mapping-bench/solve/solve-state';
 import { gaugeKernel, smallFabric } from '../../helpers/documents';
 import { type ActionResult, callAction, type ServerAction } from './server-calls';
 import type { Stored } from './stored';
@@ -77,6 +78,21 @@ export function newScene(ground: Ground) {
     await ended(ground, id);
     return id;
   });
+  /** A mapping of the bench that a solve has made and proved, as the bench takes it over. */
+  const provedMappingId = once(async () => {
+    const draft = { draftId: await draftId() };
+    const settings = { engine: 'auto', objective: 'wire', timeLimitMs: 5000, seed: 1 };
+    const asked = { ...draft, settings, pins: {}, startPlacement: null };
+    const { solveId: id } = await made<{ solveId: string }>('startSolve', asked);
+    await ended(ground, id);
+    const answer = await ground.owner.request.get(`/api/w/${workspace}/solves/${id}`);
+    const result = solveResult(solveSchema.parse(await answer.json()));
+    if (!result) throw new Error(`The solve ${id} has no result`);
+    const { provenance, ...document } = result;
+    await made('saveBench', { ...draft, revision: 1, document: { ...document, pins: {} }, provenance });
+    return (await made<{ mappingId: string }>('keepAsMapping', { ...draft, name: 'Proved', revision: 2 }))
+      .mappingId;
+  });
   const invitationId = once(async () => {
     const email = `invited-${Math.random().toString(36).slice(2)}@tarnbrook.example`;
     const { id } = await made<{ id: string }>('inviteAction', { email, role: 'viewer' });
@@ -94,7 +110,7 @@ export function newScene(ground: Ground) {
     }
     return ground.stored.userId(email);
   });
-  return { kernelId, fabricId, draftId, mappingId, solveId, invitationId, guestId };
+  return { kernelId, fabricId, draftId, mappingId, provedMappingId, solveId, invitationId, guestId };
 }
 
 /** Waits until the worker has ended the solve. */

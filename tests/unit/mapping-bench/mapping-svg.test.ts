@@ -1,5 +1,6 @@
 import { readFileSync } from 'node:fs';
 import { expect, test } from 'vitest';
+import { certificateSchema } from '@/lib/mapping/certificate';
 import { honestProvenance } from '@/lib/mapping/honest-provenance';
 import { mappingSvg, PICTURE_CAUTION } from '@/lib/mapping/picture/mapping-svg';
 import { picturePalette } from '@/lib/mapping/picture/picture-palette';
@@ -74,4 +75,46 @@ test('a claim of the solver’s work stands only for what a solve has found', ()
   expect(honestProvenance(tighter, placement, [{ provenance: solved, placement }])).toEqual({ by: 'hand' });
   const better = { ...solved, objectiveValue: 3, bound: 3 };
   expect(honestProvenance(better, placement, [{ provenance: solved, placement }])).toEqual({ by: 'hand' });
+});
+
+test('of solves with the same figures the certificate tells which one is meant', () => {
+  const { placement } = smallMapping('m');
+  const made = (digit: string) => ({
+    by: 'solver' as const,
+    engine: 'search',
+    objective: 'wire' as const,
+    timeLimitMs: 5000,
+    seed: 1,
+    status: 'optimal' as const,
+    objectiveValue: 5,
+    bound: 5,
+    elapsedMs: 9,
+    changedByHand: false,
+    certificate: certificateSchema.parse({
+      format: 'pinloom.certificate',
+      formatVersion: 1,
+      engineVersion: 1,
+      problemDigest: `sha256:${digit.repeat(64)}`,
+      objective: 'wire',
+      pins: {},
+      start: null,
+      engine: 'auto',
+      seed: 1,
+      searchTries: 1,
+      status: 'optimal',
+      objectiveValue: 5,
+      bound: 5,
+      method: 'counting',
+      nodes: 0,
+      levels: [],
+      struckTiles: 0,
+      isRepeatable: true,
+    }),
+  });
+  const known = ['0', '1', '2'].map((digit) => ({ provenance: made(digit), placement }));
+  expect(honestProvenance(made('1'), placement, known)).toEqual(made('1'));
+  // Only the solver's own certificates are stored: of an unknown one nothing is taken over.
+  expect(honestProvenance(made('9'), placement, known)).toEqual(made('0'));
+  const forged = { ...made('1'), certificate: { ...made('1').certificate, nodes: 1e6 } };
+  expect(honestProvenance(forged, placement, known)).toEqual(made('1'));
 });

@@ -33,5 +33,6 @@ export function solveProvenance({
     bound: outcome.bound,
     elapsedMs: outcome.elapsedMs,
     changedByHand: false,
+    ...(outcome.certificate && { certificate: outcome.certificate }),
   };
 }

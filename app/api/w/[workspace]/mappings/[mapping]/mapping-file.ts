@@ -3,6 +3,7 @@ import type { Member } from '@/app/_server/access';
 import { type AppResult, notFound } from '@/app/_server/errors';
 import { database } from '@/db/client';
 import { getMapping, type MappingView } from '@/db/queries/mappings';
+import { mappingFileName } from '@/lib/formats/file-names';
 import { idSchema } from '@/lib/ids';
 import { err, ok } from '@/lib/result';
 
@@ -20,15 +21,10 @@ export async function mappingForFile(
 
 /** A file to save, named after the mapping in letters that every file system takes. */
 export function fileResponse(body: BodyInit, type: string, name: string, ending: string): Response {
-  const plain = name
-    .normalize('NFKD')
-    .replace(/[^A-Za-z0-9]+/g, '-')
-    .replace(/^-+|-+$/g, '')
-    .toLowerCase();
   return new Response(body, {
     headers: {
       'content-type': type,
-      'content-disposition': `attachment; filename="${plain || 'mapping'}.${ending}"`,
+      'content-disposition': `attachment; filename="${mappingFileName(name, ending)}"`,
       'x-content-type-options': 'nosniff',
     },
   });

@@ -5,9 +5,9 @@ import { database } from '@/db/client';
 import { getFabricVersionByNumber } from '@/db/queries/fabric-versions';
 import { getFabricDraft } from '@/db/queries/fabrics';
 import { writeFabricJson } from '@/lib/formats/fabric-json';
+import { fabricFileName } from '@/lib/formats/file-names';
 import { idSchema } from '@/lib/ids';
 import { err, ok } from '@/lib/result';
-import { exportFileName } from './export-file-name';
 
 /** The fabric as a JSON file; with `?version=3` that version instead of the present state. */
 export const GET = defineRoute({
@@ -25,7 +25,7 @@ export const GET = defineRoute({
       new Response(writeFabricJson(found.document), {
         headers: {
           'content-type': 'application/json; charset=utf-8',
-          'content-disposition': `attachment; filename="${exportFileName(found.document.name, query.version)}"`,
+          'content-disposition': `attachment; filename="${fabricFileName(found.document.name, query.version ?? null)}"`,
         },
       }),
     );

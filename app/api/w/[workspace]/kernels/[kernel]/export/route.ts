@@ -4,6 +4,7 @@ import { notFound } from '@/app/_server/errors';
 import { database } from '@/db/client';
 import { getKernelVersionByNumber } from '@/db/queries/kernel-versions';
 import { getKernelDraft } from '@/db/queries/kernels';
+import { kernelFileName } from '@/lib/formats/file-names';
 import { writeKernelDot } from '@/lib/formats/kernel-dot';
 import { writeKernelJson } from '@/lib/formats/kernel-json';
 import { idSchema } from '@/lib/ids';
@@ -31,8 +32,7 @@ export const GET = defineRoute({
         : await getKernelVersionByNumber(database(), { ...of, number: query.version });
     if (!found) return err(notFound('kernel'));
     const { write, type, ending } = formats[query.format];
-    const suffix = query.version === undefined ? '' : `-v${query.version}`;
-    const name = `${fileName(found.document.name)}${suffix}.${ending}`;
+    const name = kernelFileName(found.document.name, query.version ?? null, ending);
     return ok(
       new Response(write(found.document), {
         headers: { 'content-type': type, 'content-disposition': `attachment; filename="${name}"` },
@@ -40,12 +40,3 @@ export const GET = defineRoute({
     );
   },
 });
-
-/** The name in letters, digits and dashes, which every system takes. */
-function fileName(name: string): string {
-  const plain = name
-    .normalize('NFKD')
-    .replace(/[^A-Za-z0-9]+/g, '-')
-    .replace(/^-+|-+$/g, '');
-  return plain.toLowerCase() || 'kernel';
-}
