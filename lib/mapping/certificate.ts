@@ -45,7 +45,7 @@ export const certificateSchema = z
     method: z.enum(proofMethods),
     /** That the exact search looked at. */
     nodes: count,
-    /** Each says: no legal mapping costs at most `cutoff`, or the best known is the cheapest. */
+    /** Each says: no legal mapping costs at most `cutoff`, or none less than the best one found by then. */
     levels: z.array(z.strictObject({ cutoff: z.number(), nodes: count })).max(10_000),
     /** Choices of a tile for an op that were struck out because their bound exceeded a cutoff. */
     struckTiles: count,

@@ -1,6 +1,6 @@
 /** From a solve by the worker to the bench, the kept mapping and its file; only Next's access to the request is stood in for. */
 import pino from 'pino';
-import { beforeAll, beforeEach, describe, expect, it, vi } from 'vitest';
+import { afterAll, beforeAll, beforeEach, describe, expect, it, vi } from 'vitest';
 import { signInAs } from '../../app/_server/session';
 import { GET as certificateFile } from '../../app/api/w/[workspace]/mappings/[mapping]/certificate.json/route';
 import { GET as mappingFile } from '../../app/api/w/[workspace]/mappings/[mapping]/mapping.json/route';
@@ -9,11 +9,14 @@ import { solveResult, solveSchema } from '../../components/mapping-bench/solve/s
 import { closeDatabase } from '../../db/client';
 import { getMapping } from '../../db/queries/mappings';
 import { createSolve, getSolve } from '../../db/queries/solve-jobs';
+import { writeFabricJson } from '../../lib/formats/fabric-json';
+import { writeKernelJson } from '../../lib/formats/kernel-json';
 import type { Id } from '../../lib/ids';
 import { type Certificate, certificateSchema } from '../../lib/mapping/certificate';
 import type { Pins } from '../../lib/mapping/mapping';
 import { problemDigest } from '../../lib/solver/problem-digest';
 import { runSolveJob } from '../../scripts/worker/run-solve-job';
+import { commandLine } from '../helpers/command-line';
 import { testDatabase } from '../helpers/database';
 import { gaugeKernel, newBench, smallFabric, value } from '../helpers/documents';
 import { newWorkspace } from '../helpers/people';
@@ -27,6 +30,9 @@ vi.mock('next/headers', () => ({
   }),
 }));
 vi.mock('next/cache', () => ({ revalidatePath: () => undefined }));
+
+const { run, scratch, clear } = commandLine();
+afterAll(clear);
 
 const box = testDatabase();
 let of: Awaited<ReturnType<typeof newWorkspace>>;
@@ -113,6 +119,25 @@ describe('a mapping that was kept from it', () => {
     expect(await (await fileOf(mappingId, mappingFile)).json()).toMatchObject({
       provenance: { certificate: { problemDigest: digest() } },
     });
+  });
+
+  it('is proved again by the command line from the files', async () => {
+    const { draftId } = await newBench(box.db, of);
+    const mappingId = await kept(draftId, 1, (claimed) => claimed);
+    const text = async (from: typeof certificateFile) => (await fileOf(mappingId, from)).text();
+    const files = [
+      '--kernel',
+      scratch('gauge.kernel.json', writeKernelJson(gaugeKernel('Renamed since'))),
+      '--fabric',
+      scratch('small.fabric.json', writeFabricJson(smallFabric())),
+      '--certificate',
+      scratch('proved.certificate.json', await text(certificateFile)),
+      '--mapping',
+      scratch('proved.json', await text(mappingFile)),
+    ];
+    const { code, stdout, stderr } = run('prove', ...files);
+    expect({ code, stderr }).toEqual({ code: 0, stderr: '' });
+    expect(JSON.parse(stdout)).toMatchObject({ agrees: true, differences: [] });
   });
 
   it('carries what the solver said, whatever a browser claims', async () => {

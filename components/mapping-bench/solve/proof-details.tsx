@@ -66,12 +66,12 @@ function ProofFigures({ certificate }: { certificate: Certificate }) {
   );
 }
 
-/** No legal mapping costs at most the cutoff, or only the one at hand: what so many nodes have shown. */
+/** No legal mapping costs at most the cutoff, or none less than the best one: what so many nodes have shown. */
 function Levels({ levels }: Pick<Certificate, 'levels'>) {
   if (levels.length === 0) return null;
   return (
     <table className="mt-2 w-full">
-      <caption className="text-left text-quiet">Levels: nothing costs at most the cutoff</caption>
+      <caption className="text-left text-quiet">Levels: nothing better up to the cutoff</caption>
       <thead>
         <tr className="text-left text-xs">
           <th scope="col">Cutoff</th>
