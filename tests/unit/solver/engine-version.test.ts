@@ -12,12 +12,12 @@ import { defaultSolveOptions } from '@/lib/solver/options';
 import { solve } from '@/lib/solver/solve';
 
 const counts = {
-  engineVersion: 1,
+  engineVersion: 2,
   nodes: [
-    ['surge-detector', 'hive', 'wire', 28],
-    ['wavelet-step', 'slope', 'wire', 153],
-    ['wavelet-step', 'slope', 'path', 14],
-    ['fourier-butterfly', 'hive', 'wire', 27],
+    ['surge-detector', 'hive', 'wire', 29],
+    ['wavelet-step', 'slope', 'wire', 141],
+    ['wavelet-step', 'slope', 'path', 13],
+    ['fourier-butterfly', 'hive', 'wire', 26],
     ['fourier-butterfly', 'hive', 'path', 1],
   ],
 } as const;
