@@ -35,7 +35,8 @@ async function solved(want: Wanted): Promise<DemoMapping> {
   const { status, objectiveValue, bound, engine, elapsedMs, objective, seed, placement, routes } = outcome;
   console.log(`${want.name}: ${status}, ${objectiveValue} wire hops, bound ${bound}, ${elapsedMs} ms`);
   const made = { by: 'solver', engine, objective, timeLimitMs: SETTINGS.timeLimitMs, seed, status } as const;
-  const provenance = { ...made, objectiveValue, bound, elapsedMs, changedByHand: false };
+  const proof = outcome.certificate ? { certificate: outcome.certificate } : {};
+  const provenance = { ...made, objectiveValue, bound, elapsedMs, changedByHand: false, ...proof };
   return { ...want, placement, pins: {}, routes, provenance, kept: true };
 }
 

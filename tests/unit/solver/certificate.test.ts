@@ -1,6 +1,7 @@
 import { beforeAll, describe, expect, it } from 'vitest';
 import { demoFabrics } from '@/db/seed/fabrics';
 import { demoKernels } from '@/db/seed/kernels';
+import { demoMappings } from '@/db/seed/mappings';
 import type { Fabric } from '@/lib/fabric/fabric';
 import type { Kernel } from '@/lib/graph/kernel';
 import { type Certificate, certificateSchema } from '@/lib/mapping/certificate';
@@ -151,6 +152,22 @@ describe('the digest of a problem', () => {
     expect(problemDigest({ kernel: gaugeKernel(), fabric: smallFabric(), pins: {}, objective: 'wire' })).toBe(
       stored,
     );
+  });
+});
+
+describe('the mappings of the demonstration', () => {
+  const solved = demoMappings.flatMap((mapping) =>
+    mapping.provenance.by === 'solver' && mapping.provenance.certificate
+      ? [{ ...mapping, certificate: mapping.provenance.certificate }]
+      : [],
+  );
+
+  it('have certificates of their own kernels and fabrics', () => {
+    expect(solved.length).toBeGreaterThan(3);
+    for (const { kernelSlug, fabricKey, pins, certificate } of solved) {
+      const of = { kernel: kernel(kernelSlug), fabric: fabric(fabricKey), pins, objective: 'wire' } as const;
+      expect(certificate.problemDigest).toBe(problemDigest(of));
+    }
   });
 });
 
