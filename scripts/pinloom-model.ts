@@ -1,5 +1,6 @@
 /** `model`: prints a placement problem, routes included, as an integer program that other solvers read. */
 import type { Objective } from '../lib/mapping/mapping';
+import { unequalWeights } from '../lib/mapping/weights';
 import { err, ok, type Result } from '../lib/result';
 import { buildInstance, hopsBetween, type PlacementInstance, withinReach } from '../lib/solver/instance';
 import type { IntegerProgram } from '../lib/solver/integer-program/integer-program';
@@ -24,7 +25,7 @@ import { printFaults } from './command-line/print';
 import { inputFaultLine, readProblem } from './command-line/read-problem';
 
 export const modelUsage = `
-npm run -s pinloom -- model --kernel K --fabric F --format lp|mps [--objective O] [--pins P]
+npm run -s pinloom -- model --kernel K --fabric F --format lp|mps [--objective O] [--weights W] [--pins P]
   Prints the problem as an integer program of placement and routes, rules R1 to R7, as CPLEX LP or
   free MPS text. Comments at its head explain the names. Its optimum is the least objective of a legal
   mapping; where it is infeasible, no legal mapping exists. Exit codes: 0 printed, 2 bad input.
@@ -36,7 +37,7 @@ type ModelFormat = keyof typeof writers;
 /** Columns, and the rows' entries, above which the text would be hundreds of megabytes. */
 const MODEL_LIMITS = { columns: 300_000, reachEntries: 2_000_000 } as const;
 
-const names = ['kernel', 'fabric', 'pins', 'objective', 'format'] as const;
+const names = ['kernel', 'fabric', 'pins', 'objective', 'weights', 'format'] as const;
 
 export function model(args: readonly string[]): 0 | 2 {
   const given = readArguments(args, names, ['kernel', 'fabric', 'format']);
@@ -65,8 +66,8 @@ export function model(args: readonly string[]): 0 | 2 {
 export function modelText(problem: PlacementProblem, format: ModelFormat): Result<string, InputFault[]> {
   const checked = checkProblem(problem);
   if (!checked.ok) return err(checked.error.faults);
-  const { kernel, graph, pins, objective, library } = checked.value;
-  const instance = buildInstance(kernel, graph, pins, objective, library);
+  const { kernel, graph, pins, objective, library, weights } = checked.value;
+  const instance = buildInstance(kernel, graph, pins, objective, library, weights);
   const columns = routedColumnCount(instance, graph.links.length);
   if (columns > MODEL_LIMITS.columns || hasTooManyReachEntries(instance)) {
     const sizes = `${kernel.ops.length} ops on ${graph.tileCount} tiles`;
@@ -99,7 +100,7 @@ const objectiveMeaning: Record<Objective, string> = {
 
 /** What the text is and how to read its names, for the comments at its head. */
 function headLines(
-  { kernel, fabric, graph, objective, pins }: CheckedProblem,
+  { kernel, fabric, graph, objective, pins, weights }: CheckedProblem,
   { columnNames, rowNames }: IntegerProgram,
 ): string[] {
   const families = (group: Readonly<Record<string, NameFamily>>, own: readonly string[]) => {
@@ -111,12 +112,14 @@ function headLines(
   };
   const clock = graph.maxHops === null ? 'no clock limit' : `at most ${graph.maxHops} hops a path`;
   const pinned = Object.entries(pins).map(([id, tile]) => `${id} on ${tile}`);
+  const weighted = unequalWeights(weights, objective).map(([id, weight]) => `  ${id} counts ${weight}`);
   return [
     'Pinloom: where the ops of a kernel stand on a fabric and how their nets run, rules R1 to R7',
     `kernel ${JSON.stringify(kernel.name)}, fabric ${JSON.stringify(fabric.name)}`,
     `${fabric.rows} rows and ${fabric.cols} columns of tiles, ${clock}, ${pinned.length} pinned ops`,
     ...pinned.map((pin) => `  ${pin}`),
-    `minimised: objective ${objective}, ${objectiveMeaning[objective]}`,
+    `minimised: objective ${objective}, ${objectiveMeaning[objective]}${weighted.length > 0 ? ', each by its weight, 1 but for' : ''}`,
+    ...weighted,
     'columns',
     ...families(routedNameFamilies.columns, columnNames),
     'rows; of a row with two sides, _low and _high',

@@ -16,6 +16,7 @@ import {
 import type { Id } from '../../lib/ids';
 import type { Certificate } from '../../lib/mapping/certificate';
 import type { Objective, Pins, Placement, Routes } from '../../lib/mapping/mapping';
+import type { Weights } from '../../lib/mapping/weights';
 import type { InfeasibleReason } from '../../lib/solver/outcome';
 import type { Answer } from '../../lib/solver/pin-price';
 import type { Ask, PinPriceAsk } from '../../lib/solver/solve-ask';
@@ -31,6 +32,8 @@ export type SolveState = (typeof solveStates)[number];
 export interface SolveSettings {
   engine: 'auto' | 'program' | 'highs' | 'simplex' | 'search';
   objective: Objective;
+  /** What nets or connections count in the objective; absent where all count 1. */
+  weights?: Weights;
   timeLimitMs: number;
   seed: number;
   /** Another question than the one for the best mapping; absent in an ordinary solve. */

@@ -4,6 +4,7 @@ import { type Certificate, certificateSchema } from '../mapping/certificate';
 import { parseJsonDocument } from './json-document';
 import { jsonText, sortedRecord } from './json-text';
 import { formatErrorAt, type ParseResult, refuse } from './parse-result';
+import { weightMembers } from './weights-json';
 
 /** What `pinloom place` prints has no format of its own. */
 const outcomeSchema = z.looseObject({
@@ -48,6 +49,7 @@ export const certificateMembers = (certificate: Certificate) => ({
   engineVersion: certificate.engineVersion,
   problemDigest: certificate.problemDigest,
   objective: certificate.objective,
+  ...(certificate.weights && { weights: weightMembers(certificate.weights) }),
   pins: sortedRecord(certificate.pins),
   start: certificate.start && sortedRecord(certificate.start),
   engine: certificate.engine,

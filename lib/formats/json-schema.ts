@@ -5,12 +5,14 @@ import { kernelSchema } from '../graph/kernel';
 import { certificateSchema } from '../mapping/certificate';
 import { mappingSchema } from '../mapping/mapping';
 import { pinsDocumentSchema } from './pins-json';
+import { weightsDocumentSchema } from './weights-json';
 
 const documents = {
   kernel: { title: 'Pinloom kernel', schema: kernelSchema },
   fabric: { title: 'Pinloom fabric', schema: fabricSchema },
   mapping: { title: 'Pinloom mapping', schema: mappingSchema },
   pins: { title: 'Pinloom pins', schema: pinsDocumentSchema },
+  weights: { title: 'Pinloom weights', schema: weightsDocumentSchema },
   certificate: { title: 'Pinloom certificate', schema: certificateSchema },
 } as const;
 

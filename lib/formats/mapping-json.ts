@@ -4,6 +4,7 @@ import { certificateMembers } from './certificate-json';
 import { parseJsonDocument } from './json-document';
 import { jsonText, sortedRecord } from './json-text';
 import type { ParseResult } from './parse-result';
+import { weightMembers } from './weights-json';
 
 /** Reads a mapping by itself. Whether it is legal depends on its kernel and fabric: `verifyMapping` says so. */
 export const parseMappingJson = (text: string): ParseResult<MappingDocument> =>
@@ -29,6 +30,7 @@ function provenanceMembers(provenance: Provenance) {
     by: provenance.by,
     engine: provenance.engine,
     objective: provenance.objective,
+    ...(provenance.weights && { weights: weightMembers(provenance.weights) }),
     timeLimitMs: provenance.timeLimitMs,
     seed: provenance.seed,
     status: provenance.status,

@@ -4,6 +4,7 @@
  */
 import { z } from 'zod';
 import { objectives, pinsSchema, placementSchema } from './placement';
+import { weightsSchema } from './weights';
 
 export const engineChoices = ['auto', 'program', 'highs', 'simplex', 'search'] as const;
 export type EngineChoice = (typeof engineChoices)[number];
@@ -24,11 +25,13 @@ export const certificateSchema = z
     formatVersion: z.literal(1),
     /** Of the solver that proved it. Only the same version goes through the same nodes. */
     engineVersion: z.number().int().min(1),
-    /** Of kernel, fabric, pins and objective. */
+    /** Of kernel, fabric, pins, objective and weights. */
     problemDigest: z
       .string()
       .regex(/^sha256:[0-9a-f]{64}$/, 'A digest is "sha256:" and 64 hexadecimal digits'),
     objective: z.enum(objectives),
+    /** What nets or connections counted; absent where all counted 1. */
+    weights: weightsSchema.optional(),
     pins: pinsSchema,
     /** The placement that the search began with; null: none was given. */
     start: placementSchema.nullable(),

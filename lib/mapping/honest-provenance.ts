@@ -1,5 +1,6 @@
 /** Who may say what of a mapping: a bench's claim about its making, held against what is known of it. */
 import type { Placement, Provenance } from './mapping';
+import { sameWeights } from './weights';
 
 /** A state that is known to be true: a solve's end, or what the server stored before. */
 export interface KnownMaking {
@@ -38,6 +39,7 @@ const digestOf = (provenance: Provenance): string | undefined =>
 const sameSolve = (a: BySolver, b: BySolver): boolean =>
   a.engine === b.engine &&
   a.objective === b.objective &&
+  sameWeights(a.weights, b.weights, a.objective) &&
   a.timeLimitMs === b.timeLimitMs &&
   a.seed === b.seed &&
   a.status === b.status &&

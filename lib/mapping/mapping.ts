@@ -2,6 +2,7 @@
 import { z } from 'zod';
 import { certificateSchema } from './certificate';
 import { objectives, pinsSchema, placementSchema, routesSchema } from './placement';
+import { weightsSchema } from './weights';
 
 export {
   type Objective,
@@ -21,6 +22,8 @@ export const provenanceSchema = z.discriminatedUnion('by', [
     by: z.literal('solver'),
     engine: z.string().max(80),
     objective: z.enum(objectives),
+    /** What nets or connections counted in it; absent where all counted 1. */
+    weights: weightsSchema.optional(),
     timeLimitMs: z.number().int().positive(),
     seed: z.number().int().nonnegative(),
     status: z.enum(['optimal', 'feasible']),

@@ -4,6 +4,8 @@ import type { LinkId, UnitId } from '../fabric/fabric';
 import type { EdgeId, Kernel, OpId } from '../graph/kernel';
 import { netsOf } from '../graph/nets';
 import type { Objective, Placement, Routes } from './mapping';
+import { weightedSum } from './weighted-sum';
+import { edgeWeight, netWeight, type Weights } from './weights';
 
 export interface MappingMetrics {
   /** Links over all nets' trees: a link that serves several consumers of one net counts once. */
@@ -85,11 +87,18 @@ export function measureMapping(
   };
 }
 
-/** What an objective makes of the figures, with all weights 1. */
-export const objectiveValue = (
-  metrics: Pick<MappingMetrics, 'totalWireHops' | 'totalPathHops'>,
+/** What an objective makes of the figures: the sum of weighted hops. */
+export function objectiveOf(
+  metrics: Pick<MappingMetrics, 'netWireHops' | 'connectionHops'>,
   objective: Objective,
-): number => (objective === 'wire' ? metrics.totalWireHops : metrics.totalPathHops);
+  weights?: Weights,
+): number {
+  const terms =
+    objective === 'wire'
+      ? [...metrics.netWireHops].map(([source, hops]) => [netWeight(weights, source), hops] as const)
+      : [...metrics.connectionHops].map(([edge, hops]) => [edgeWeight(weights, edge), hops] as const);
+  return weightedSum(terms);
+}
 
 const sum = (values: Iterable<number>): number => {
   let total = 0;

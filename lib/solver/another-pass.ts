@@ -20,6 +20,7 @@ import type { BestMapping, SolveOutcome, StopReason } from './outcome';
 import type { AnotherAsk, CheckedProblem } from './problem';
 import { searchPlacements } from './search/search';
 import type { SolveState } from './solve-state';
+import type { WeightScale } from './weight-scale';
 
 /** The part of the time that may be spent one step from the given placements, and how many of each one's are routed. */
 const NEAR_SHARE = 0.1;
@@ -32,12 +33,20 @@ const FIRST_STRETCH_NODES = 2000;
 /** Far above rounding, far below the step between two costs. */
 const TOLERANCE = 1e-6;
 
-interface Hunt {
+interface Ask {
   problem: CheckedProblem;
   instance: PlacementInstance;
+  /** With the weights that the search works with. */
+  searched: PlacementInstance;
   options: SolveOptions;
   state: SolveState;
+  scale: WeightScale;
   asked: AnotherAsk;
+}
+
+interface Hunt extends Ask {
+  /** The most that the other one may cost, in the solve's unit. */
+  mostCost: number;
   isAvoided(tiling: Tiling): boolean;
   /** Objective of the cheapest avoided mapping that was met: bounds of the others hold for all mappings up to it. */
   leastAvoided: number;
@@ -45,20 +54,12 @@ interface Hunt {
 }
 
 /** Preconditions: reasons for infeasibility are ruled out. `feasible` says that the proof of the bound is not finished. */
-export function anotherPass(
-  problem: CheckedProblem,
-  instance: PlacementInstance,
-  options: SolveOptions,
-  state: SolveState,
-  asked: AnotherAsk,
-): SolveOutcome {
+export function anotherPass(ask: Ask): SolveOutcome {
+  const { problem, instance, options, state, scale, asked } = ask;
   const avoided = asked.than.flatMap((placement) => tilingOf(problem.kernel, problem.graph, placement) ?? []);
   const hunt: Hunt = {
-    problem,
-    instance,
-    options,
-    state,
-    asked,
+    ...ask,
+    mostCost: scale.fromValue(asked.objectiveValue),
     isAvoided: imageTest(instance, problem.graph.links, avoided),
     leastAvoided: Number.POSITIVE_INFINITY,
     taken: false,
@@ -78,7 +79,7 @@ export function anotherPass(
 /** Takes the mapping if it is one that was asked for. */
 function look(hunt: Hunt, tiling: Tiling, mapping: BestMapping): void {
   if (hunt.isAvoided(tiling)) hunt.leastAvoided = Math.min(hunt.leastAvoided, mapping.objectiveValue);
-  else if (!hunt.taken && mapping.objectiveValue <= hunt.asked.objectiveValue + TOLERANCE) {
+  else if (!hunt.taken && mapping.objectiveValue <= hunt.mostCost + TOLERANCE) {
     hunt.state.offer(mapping);
     hunt.taken = true;
   }
@@ -91,10 +92,10 @@ const isOver = ({ taken, state }: Hunt): boolean => taken || state.shouldStop();
 
 /** On large problems there are often others nearby that the search, which starts afresh, does not come by. */
 function lookNear(hunt: Hunt, avoided: readonly Tiling[]): void {
-  const { problem, instance, options, state, asked } = hunt;
+  const { problem, instance, options, state, mostCost } = hunt;
   const endMs = state.elapsedMs() + shareOf(options, NEAR_SHARE) * state.remainingMs();
   const shouldStop = () => isOver(hunt) || state.elapsedMs() >= endMs;
-  const limits = { mostCost: asked.objectiveValue + TOLERANCE, limit: MOST_NEAR, shouldStop };
+  const limits = { mostCost: mostCost + TOLERANCE, limit: MOST_NEAR, shouldStop };
   for (const around of avoided.toReversed()) {
     if (!isStandable(instance, around)) continue;
     for (const tiling of nearPlacements(instance, around, limits)) {
@@ -123,10 +124,10 @@ function searchAround(
   limits: { rounds: number; staleRounds: number; seed: number },
   isSpent: () => boolean,
 ): void {
-  const { problem, instance, state } = hunt;
+  const { problem, instance, searched, state } = hunt;
   const { links } = problem.graph;
   searchPlacements(
-    instance,
+    searched,
     start && isStandable(instance, start) ? start : null,
     // No mapping costs less than 0, so none ends the search: the one that does not count may be the cheapest.
     { ...limits, bound: -1, links },
@@ -147,13 +148,13 @@ const isStandable = ({ candidates }: PlacementInstance, tiling: Tiling): boolean
   tiling.every((tile, op) => tile < 0 || candidates[op]?.includes(tile));
 
 function searchAll(hunt: Hunt, around: Tiling | null): SolveOutcome {
-  const { problem, instance, options, state, asked } = hunt;
+  const { problem, instance, options, state, asked, mostCost, scale } = hunt;
   let stretches = 0;
   let atNodeLimit = false;
   state.setPhase('exact');
   state.noteEngine('exact');
   const result = exactSearch(instance, problem.graph, {
-    incumbent: () => asked.objectiveValue + costStep(instance),
+    incumbent: () => mostCost + costStep(instance),
     shouldStop: () => atNodeLimit || isOver(hunt),
     onBound: (bound) => void state.raise(Math.min(bound, hunt.leastAvoided), 'exact search'),
     onNodes: (nodes) => {
@@ -177,7 +178,7 @@ function searchAll(hunt: Hunt, around: Tiling | null): SolveOutcome {
   switch (result.kind) {
     case 'proved':
     case 'infeasible':
-      return state.infeasible(noOtherReason(asked, problem.objective), 'exact search');
+      return state.infeasible(noOtherReason(asked, scale.name), 'exact search');
     case 'unresolved':
       return unknown(hunt, 'routing gap');
     case 'too large':
@@ -188,8 +189,8 @@ function searchAll(hunt: Hunt, around: Tiling | null): SolveOutcome {
 }
 
 /** Nothing was found, and that there is nothing is not proved. */
-function unknown({ state, asked, problem }: Hunt, stop: StopReason): SolveOutcome {
+function unknown({ state, asked, scale }: Hunt, stop: StopReason): SolveOutcome {
   const outcome = state.finish(stop);
   if (outcome.status !== 'unknown') return outcome;
-  return { ...outcome, reason: noOtherYet(asked, problem.objective, outcome.stopReason) };
+  return { ...outcome, reason: noOtherYet(asked, scale.name, outcome.stopReason) };
 }

@@ -1,5 +1,6 @@
 /** Makes the certificate of a proved answer, and holds two of one problem against each other. */
 import type { Certificate, ProofMethod } from '../mapping/certificate';
+import { effectiveWeights } from '../mapping/weights';
 import { ENGINE_VERSION } from './engine-version';
 import type { ExactLevel } from './exact/exact-search';
 import type { SolveOptions } from './options';
@@ -28,6 +29,7 @@ export function certificateOf(
   { method, searchTries, levels, struckTiles, isRepeatable }: ProofNotes & { isRepeatable: boolean },
 ): Certificate | null {
   const { status, objectiveValue, bound, nodes } = outcome;
+  const weights = effectiveWeights(problem.weights, problem.objective);
   if ((status !== 'optimal' && status !== 'infeasible') || method === null || problem.another) return null;
   return {
     format: 'pinloom.certificate',
@@ -35,6 +37,7 @@ export function certificateOf(
     engineVersion: ENGINE_VERSION,
     problemDigest: problemDigest(problem),
     objective: problem.objective,
+    ...(weights && { weights }),
     pins: problem.pins,
     start: problem.start ?? null,
     engine: options.engine,
@@ -54,13 +57,14 @@ export function certificateOf(
 
 /** The problem that a certificate is about, to be solved again: kernel and fabric as they are given. */
 export const problemAgain = (
-  { objective, pins, start }: Certificate,
+  { objective, weights, pins, start }: Certificate,
   { kernel, fabric, units }: Pick<PlacementProblem, 'kernel' | 'fabric' | 'units'>,
 ): PlacementProblem => ({
   kernel,
   fabric,
   objective,
   pins,
+  ...(weights && { weights }),
   ...(start && { start }),
   ...(units && { units }),
 });

@@ -40,6 +40,7 @@ export function nothingOutcome(bound: number, stopReason: StopReason, common: Co
     'another found': 'The solve ended without a legal mapping.',
     'routing gap':
       'Placements exist, but none that was tried could be routed: add channels to the links or allow more time.',
+    'weights too far apart': 'The search ended without a legal mapping: allow more time.',
     'thread failed': 'The solver thread ended unexpectedly before a legal mapping was found: try again.',
   };
   return {

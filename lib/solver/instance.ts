@@ -8,10 +8,12 @@ import type { Kernel, OpId } from '../graph/kernel';
 import { netsOf } from '../graph/nets';
 import type { OpKind } from '../graph/op-catalog';
 import type { Objective, Pins, Placement } from '../mapping/mapping';
+import { weightedSum } from '../mapping/weighted-sum';
+import { edgeWeight, netWeight, type Weights } from '../mapping/weights';
 
 export const UNREACHABLE_HOPS = 0xffff;
 
-/** All edges from one op to another, joined; the weight is how many they are (or their weights' sum). */
+/** All edges from one op to another, joined; the weight is the sum of theirs, 1 each under the objective `wire`. */
 export interface PlacedPair {
   from: number;
   to: number;
@@ -21,6 +23,7 @@ export interface PlacedPair {
 export interface PlacedNet {
   source: number;
   consumers: readonly number[];
+  /** 1 under the objective `path`. */
   weight: number;
 }
 
@@ -54,6 +57,7 @@ export function buildInstance(
   pins: Pins,
   objective: Objective,
   library: UnitLibrary = builtInLibrary,
+  weights: Weights = {},
 ): PlacementInstance {
   const index = new Map<OpId, number>(kernel.ops.map((op, i) => [op.id, i]));
   // Ops of one kind share their list.
@@ -73,7 +77,7 @@ export function buildInstance(
   const nets = netsOf(kernel).map((net) => ({
     source: index.get(net.source) as number,
     consumers: net.consumers.map((id) => index.get(id) as number),
-    weight: 1,
+    weight: objective === 'wire' ? netWeight(weights, net.source) : 1,
   }));
   const table = {
     tileCount: graph.tileCount,
@@ -91,7 +95,7 @@ export function buildInstance(
       kernel.edges.map((edge) => ({
         from: index.get(edge.from) as number,
         to: index.get(edge.to) as number,
-        weight: 1,
+        weight: objective === 'path' ? edgeWeight(weights, edge.id) : 1,
       })),
     ),
     nets,
@@ -106,11 +110,13 @@ export function joinPairs(pairs: readonly PlacedPair[]): PlacedPair[] {
     if (from === to) continue;
     const key = `${from}>${to}`;
     const known = joined.get(key);
-    if (known) known.weight += weight;
+    if (known) known.weight = sumOf(known.weight, weight);
     else joined.set(key, { from, to, weight });
   }
   return [...joined.values()];
 }
+
+const sumOf = (...weights: number[]): number => weightedSum(weights.map((weight) => [weight, 1]));
 
 /** Whether all hop counts are grid distances, which also says that every link joins grid neighbours. */
 export function hasMeshDistances({ tileCount, cols, distance }: HopTable): boolean {

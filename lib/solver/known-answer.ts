@@ -1,11 +1,13 @@
 /** What earlier solves of one kernel on one fabric have shown for a set of pins that need not be theirs. */
 import type { Objective, Pins, Placement } from '../mapping/mapping';
+import { sameWeights, type Weights } from '../mapping/weights';
 import type { Answer } from './pin-price';
 
 /** A solve that has ended, however it did. */
 export interface EarlierSolve {
   pins: Pins;
   objective: Objective;
+  weights: Weights | undefined;
   /** It has proved that no legal mapping with its pins exists. */
   isInfeasible: boolean;
   /** No legal mapping with its pins is cheaper; null where nothing was proved. */
@@ -16,18 +18,20 @@ export interface EarlierSolve {
 
 /**
  * A bound holds wherever its pins hold, and so does the proof that there is no mapping: more pins leave fewer mappings.
- * A mapping counts wherever it happens to keep the pins. `from`: the solve whose mapping it is.
+ * A mapping counts wherever it happens to keep the pins. Solves of another objective or with other weights say nothing.
+ * `from`: the solve whose mapping it is.
  */
 export function knownAnswer<Solve extends EarlierSolve>(
   pins: Pins,
   objective: Objective,
   solves: readonly Solve[],
+  weights?: Weights,
 ): Answer & { from: Solve | null } {
   let bound = 0;
   let from: Solve | null = null;
   let isInfeasible = false;
   for (const solve of solves) {
-    if (solve.objective !== objective) continue;
+    if (solve.objective !== objective || !sameWeights(solve.weights, weights, objective)) continue;
     if (keeps(pins, solve.pins)) {
       isInfeasible ||= solve.isInfeasible;
       bound = Math.max(bound, solve.bound ?? 0);

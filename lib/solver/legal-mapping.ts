@@ -2,7 +2,7 @@
 
 import { netsOf } from '../graph/nets';
 import type { Placement, Routes } from '../mapping/mapping';
-import { measureMapping, objectiveValue } from '../mapping/metrics';
+import { measureMapping, objectiveOf } from '../mapping/metrics';
 import { verifyMapping } from '../mapping/verify';
 import { type PlacementInstance, placementOf } from './instance';
 import type { BestMapping } from './outcome';
@@ -28,6 +28,7 @@ export function legalMapping(
   const placement = placementOf(problem.kernel, problem.graph, tiling);
   const routed = routePlacement(problem.kernel, problem.graph, placement, {
     objective: problem.objective,
+    weights: problem.weights,
     seed,
     shouldStop,
     ...(trees && { previous: routesOf(problem, trees), keepPrevious: true }),
@@ -57,11 +58,11 @@ export function verifiedMapping(
   placement: Placement,
   routes: Routes,
 ): BestMapping | null {
-  const { kernel, fabric, pins, library, graph, objective } = problem;
+  const { kernel, fabric, pins, library, graph, objective, weights } = problem;
   if (verifyMapping(kernel, fabric, { placement, routes, pins }, { library }).length > 0) return null;
   const metrics = measureMapping(kernel, graph, { placement, routes });
   return {
-    objectiveValue: objectiveValue(metrics, objective),
+    objectiveValue: objectiveOf(metrics, objective, weights),
     longestPathHops: metrics.longestPathHops,
     placement,
     routes,

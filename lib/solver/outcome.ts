@@ -14,6 +14,7 @@ export type StopReason =
   | 'search complete'
   | 'another found'
   | 'routing gap'
+  | 'weights too far apart'
   | 'thread failed';
 
 export type InfeasibleCode =

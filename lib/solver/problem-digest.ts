@@ -1,11 +1,12 @@
 /**
  * A problem's digest: SHA-256 of its canonical text. Two problems have the same one where they differ in nothing but what
- * only people read (names, labels, descriptions, places on the editor's canvas), the order of members, and what is known or asked
- * besides: a start, a bound, another mapping.
+ * only people read (names, labels, descriptions, places on the editor's canvas), the order of members, weights that do not
+ * count in the objective, and what is known or asked besides: a start, a bound, another mapping.
  */
 import type { Fabric } from '../fabric/fabric';
 import { canHost, type UnitLibrary, unitLibrary } from '../fabric/unit-library';
 import type { Kernel } from '../graph/kernel';
+import { effectiveWeights } from '../mapping/weights';
 import type { PlacementProblem } from './problem';
 import { sha256Hex } from './sha256';
 
@@ -16,8 +17,9 @@ export const problemDigest = (problem: PlacementProblem): string =>
 /** Whole but for what is known or asked besides, so that a later part of the problem is in it without being named here. */
 function digested({ kernel, fabric, units, ...more }: PlacementProblem): object {
   const { start: _, another: __, provenBound: ___, ...rest } = more;
+  const weights = effectiveWeights(more.weights, more.objective);
   const hosts = hostedKinds(kernel, fabric, unitLibrary(units ?? []));
-  return { ...rest, kernel: bareKernel(kernel), fabric: bareFabric(fabric), hosts };
+  return { ...rest, weights, kernel: bareKernel(kernel), fabric: bareFabric(fabric), hosts };
 }
 
 function bareKernel({ name: _, description: __, ops, ...kernel }: Kernel): object {

@@ -13,6 +13,7 @@ import {
   pinsSchema,
   placementSchema,
 } from '../mapping/mapping';
+import { type Weights, weightFaults, weightsSchema } from '../mapping/weights';
 import { err, ok, type Result } from '../result';
 
 export interface PlacementProblem {
@@ -20,6 +21,8 @@ export interface PlacementProblem {
   fabric: Fabric;
   pins: Pins;
   objective: Objective;
+  /** Of nets (`wire`) or connections (`path`) in the objective; 1 where none is named. */
+  weights?: Weights;
   /** A placement to start from, whole or partial. Parts that are not legal are left out. */
   start?: Placement;
   /** Asks for another mapping than these instead of for the best one. */
@@ -57,7 +60,7 @@ export interface BadInput {
 }
 
 export interface InputFault {
-  part: 'kernel' | 'fabric' | 'pins' | 'start' | 'objective' | 'another' | 'provenBound';
+  part: 'kernel' | 'fabric' | 'pins' | 'start' | 'weights' | 'objective' | 'another' | 'provenBound';
   message: string;
   /** The op or connection that is at fault, where it is one. */
   id: string | null;
@@ -69,7 +72,7 @@ const badInput = (faults: InputFault[]): BadInput => ({
   faults,
 });
 
-/** Checks shapes, the kernel's rules, and that pins name ops and tiles that exist. Never throws. */
+/** Checks shapes, the kernel's rules, and that pins and weights name what exists. Never throws. */
 export function checkProblem(problem: PlacementProblem): Result<CheckedProblem, BadInput> {
   const shape = shapeFaults(problem);
   if (shape.length > 0) return err(badInput(shape));
@@ -94,6 +97,9 @@ export function checkProblem(problem: PlacementProblem): Result<CheckedProblem, 
     }
   }
   faults.push(...anotherFaults(problem, graph));
+  faults.push(
+    ...weightFaults(kernel, problem.weights ?? {}).map((fault) => ({ part: 'weights' as const, ...fault })),
+  );
   if (graph.tileCount * kernel.ops.length > PROBLEM_LIMITS.candidates) {
     const message = `${kernel.ops.length} ops on ${graph.tileCount} tiles are more than the solver takes on: use a smaller fabric or kernel.`;
     faults.push({ part: 'kernel', message, id: null });
@@ -122,6 +128,7 @@ function shapeFaults(problem: PlacementProblem): InputFault[] {
     ['start', placementSchema.safeParse(problem.start ?? {})],
     ['another', anotherSchema.optional().safeParse(problem.another)],
     ['provenBound', z.number().nonnegative().optional().safeParse(problem.provenBound)],
+    ['weights', weightsSchema.safeParse(problem.weights ?? {})],
   ] as const;
   const faults: InputFault[] = parts.flatMap(([part, parsed]) =>
     parsed.success
@@ -129,7 +136,8 @@ function shapeFaults(problem: PlacementProblem): InputFault[] {
       : parsed.error.issues.slice(0, 10).map((issue) => ({
           part,
           message: `${[part, ...issue.path].join('.')}: ${issue.message}`,
-          id: null,
+          // A weight's fault is the number's; its name tells the place.
+          id: part === 'weights' && issue.path.length === 2 ? String(issue.path[1]) : null,
         })),
   );
   if (!objectives.includes(problem.objective)) {

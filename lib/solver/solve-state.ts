@@ -15,6 +15,7 @@ import {
   type StopReason,
 } from './outcome';
 import type { CheckedProblem } from './problem';
+import type { WeightScale } from './weight-scale';
 
 export interface SolveClock {
   /** Monotonic milliseconds. */
@@ -30,6 +31,7 @@ const NODES_EVERY_MS = 250;
 /** Engines whose work is counted in moves and nodes; others look at the time themselves. */
 const countedEngines: readonly string[] = ['search', 'exact'];
 
+/** While a solve runs, values and bounds are in its scale's unit; reports and outcomes are in the problem's. */
 export interface SolveState {
   best(): BestMapping | null;
   bound(): number;
@@ -59,6 +61,7 @@ export function solveState(
   options: SolveOptions,
   clock: SolveClock,
   onProgress: (progress: SolveProgress) => void,
+  scale: WeightScale,
 ): SolveState {
   const startMs = clock.nowMs();
   const elapsedMs = () => clock.nowMs() - startMs;
@@ -66,7 +69,12 @@ export function solveState(
   const engines: string[] = [];
   let phase: SolvePhase = 'presolve';
   let best: BestMapping | null = null;
+  let told: BestMapping | null = null;
   let bound = 0;
+  /** Real values that are closer than this are taken as equal. */
+  const tolerance = scale.kind === 'real' ? scale.step : 0;
+  /** What a claim may be wrong by: nothing, unless some weights drown in the rounding of others. */
+  const doubt = scale.kind === 'coarse' ? scale.step : 0;
   let nodes = 0;
   const proof: ProofNotes = { method: 'counting', searchTries: 0, levels: [], struckTiles: 0 };
   let reportedMs = 0;
@@ -74,8 +82,8 @@ export function solveState(
     reportedMs = elapsedMs();
     onProgress({
       phase,
-      best,
-      bound,
+      best: told,
+      bound: scale.toValue(bound),
       gapRatio: gapRatioOf(best?.objectiveValue ?? null, bound),
       elapsedMs: elapsedMs(),
       nodes,
@@ -107,13 +115,16 @@ export function solveState(
     offer: (mapping) => {
       if (best && compareMappings(mapping, best) >= 0) return;
       best = mapping;
+      told = { ...mapping, objectiveValue: scale.toValue(mapping.objectiveValue) };
+      if (mapping.objectiveValue - bound <= tolerance) bound = mapping.objectiveValue;
       report();
     },
-    raise: (next, by) => {
+    raise: (claimed, by) => {
+      const next = claimed - doubt;
       if (!Number.isFinite(next)) return false;
-      if (best && next > best.objectiveValue + 1e-6) return false;
+      if (best && next > best.objectiveValue + Math.max(1e-6, tolerance)) return false;
       if (next > bound) {
-        bound = best ? Math.min(next, best.objectiveValue) : next;
+        bound = best && next >= best.objectiveValue - tolerance ? best.objectiveValue : next;
         proof.method = by;
         report();
       }
@@ -131,9 +142,9 @@ export function solveState(
     isRepeatable: () =>
       remainingMs() > 0 && !clock.shouldStop() && engines.every((name) => countedEngines.includes(name)),
     finish: (fallback) =>
-      best
-        ? foundOutcome(best, bound, cause(fallback), common())
-        : nothingOutcome(bound, cause(fallback), common()),
+      told
+        ? foundOutcome(told, scale.toValue(bound), cause(fallback), common())
+        : nothingOutcome(scale.toValue(bound), cause(fallback), common()),
     infeasible: (explanation, by) => {
       proof.method = by;
       return {

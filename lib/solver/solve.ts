@@ -3,6 +3,7 @@
  * mapping routed and verified before it counts. One pass a function; each may end the solve by proving the best optimal.
  * Where the problem asks for another mapping than given ones, one pass of its own does that: another-pass.ts.
  */
+import { isWeighted } from '../mapping/weights';
 import { ok, type Result } from '../result';
 import { anotherPass } from './another-pass';
 import { starBound, starWork, trivialBound } from './bounds/star-bound';
@@ -18,7 +19,9 @@ import { presolve } from './presolve/presolve';
 import { type BadInput, type CheckedProblem, checkProblem, type PlacementProblem } from './problem';
 import { routedPass } from './routed-pass';
 import { improvePass, searchPass } from './search-pass';
+import { forSearch } from './search-weights';
 import { type SolveClock, type SolveState, solveState } from './solve-state';
+import { type WeightScale, weightScale } from './weight-scale';
 
 export interface SolveHooks extends SolveClock {
   onProgress(progress: SolveProgress): void;
@@ -39,9 +42,13 @@ export function solve(
 ): Result<SolveOutcome, BadInput> {
   const checked = checkProblem(problem);
   if (!checked.ok) return checked;
-  const state = solveState(checked.value, options, hooks, hooks.onProgress);
-  const outcome = runPasses(checked.value, options, hooks, state);
-  const trace = { ...state.proof, isRepeatable: state.isRepeatable() };
+  const { kernel, objective, weights } = checked.value;
+  const scale = weightScale(kernel, objective, weights);
+  const scaled = { ...checked.value, weights: scale.weights };
+  const state = solveState(scaled, options, hooks, hooks.onProgress, scale);
+  const outcome = runPasses(scaled, options, hooks, state, scale);
+  const levels = state.proof.levels.map(({ cutoff, nodes }) => ({ cutoff: scale.toValue(cutoff), nodes }));
+  const trace = { ...state.proof, levels, isRepeatable: state.isRepeatable() };
   return ok({ ...outcome, certificate: certificateOf(problem, options, outcome, trace) });
 }
 
@@ -50,32 +57,39 @@ function runPasses(
   options: SolveOptions,
   hooks: SolveHooks,
   state: SolveState,
+  scale: WeightScale,
 ): SolveOutcome {
-  const { kernel, graph, pins, objective, library } = problem;
-  const whole = buildInstance(kernel, graph, pins, objective, library);
+  const { kernel, graph, pins, objective, library, weights } = problem;
+  const whole = buildInstance(kernel, graph, pins, objective, library, weights);
   const presolved = presolve(problem, whole);
   if (presolved.kind === 'infeasible') return state.infeasible(presolved.explanation, 'counting');
   const { instance } = presolved;
   // On the largest problems a short limit is over by now.
   if (!problem.another && state.shouldStop()) return state.finish('time limit');
   state.raise(trivialBound(instance), 'counting');
-  state.raise(problem.provenBound ?? 0, null);
+  state.raise(scale.roundUp(scale.fromValue(problem.provenBound ?? 0)), null);
   const star = starsWithinWork(instance);
   if (star) {
     const tooFar = explainStars(problem, instance, star.star);
     if (tooFar) return state.infeasible(tooFar, 'bound of the stars');
-    state.raise(Math.ceil(star.bound - 1e-6), 'bound of the stars');
+    state.raise(scale.roundUp(star.bound), 'bound of the stars');
   }
-  // Which placements are mirror images of each other is a matter of all candidates.
-  if (problem.another) return anotherPass(problem, whole, options, state, problem.another);
-  searchPass(problem, instance, options, state);
+  const forIt = (one: PlacementInstance) => (isWeighted(weights, objective) ? forSearch(one) : one);
+  if (problem.another) {
+    // Which placements are mirror images of each other is a matter of all candidates.
+    const searched = forIt(whole);
+    return anotherPass({ problem, instance: whole, searched, options, state, scale, asked: problem.another });
+  }
+  const searched = forIt(instance);
+  searchPass(problem, searched, options, state);
   if (options.engine === 'search' || state.shouldStop()) return state.finish('search complete');
   if (options.engine === 'auto') {
     const exact = exactPass(problem, instance, options, state, (stretch) =>
-      improvePass(problem, instance, options, state, stretch),
+      improvePass(problem, searched, options, state, stretch),
     );
     if (exact.kind === 'infeasible') return state.infeasible(exact.explanation, 'exact search');
-    return state.finish(exact.kind === 'unfinished' ? exact.stop : 'search complete');
+    const complete = scale.kind === 'coarse' ? 'weights too far apart' : 'search complete';
+    return state.finish(exact.kind === 'unfinished' ? exact.stop : complete);
   }
   const engines = enginesFor(options, hooks.engines);
   const placed = placementPass({

@@ -1,6 +1,6 @@
 /** Mappings that are to be avoided, from the files of `--another-than`. */
 import { compileFabric } from '../../lib/fabric/compile';
-import { measureMapping, objectiveValue } from '../../lib/mapping/metrics';
+import { measureMapping, objectiveOf } from '../../lib/mapping/metrics';
 import { verifyMapping } from '../../lib/mapping/verify';
 import { err, ok, type Result } from '../../lib/result';
 import { type AnotherAsk, MOST_AVOIDED, type PlacementProblem } from '../../lib/solver/problem';
@@ -8,7 +8,7 @@ import { type Faults, readPlaced } from './read-document';
 
 /** The other one is to cost at most what the first file's mapping costs, so that one has to be legal; all are checked. */
 export function readAnotherThan(
-  { kernel, fabric, objective }: PlacementProblem,
+  { kernel, fabric, objective, weights }: PlacementProblem,
   paths: readonly string[],
 ): Result<AnotherAsk, Faults> {
   if (paths.length > MOST_AVOIDED) return err([`--another-than: at most ${MOST_AVOIDED} files`]);
@@ -25,7 +25,7 @@ export function readAnotherThan(
   const first = all[0];
   if (faults.length > 0 || !first) return err(faults);
   return ok({
-    objectiveValue: objectiveValue(measureMapping(kernel, compileFabric(fabric), first), objective),
+    objectiveValue: objectiveOf(measureMapping(kernel, compileFabric(fabric), first), objective, weights),
     than: all.map(({ placement }) => placement),
   });
 }

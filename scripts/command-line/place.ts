@@ -9,7 +9,7 @@ import { type GivenProblem, readProblem } from './read-problem';
 import { optionNames, outcomeDocument, readOptions, withSolver } from './solve';
 import { usage } from './usage';
 
-const names = ['kernel', 'fabric', 'pins', 'objective', ...optionNames] as const;
+const names = ['kernel', 'fabric', 'pins', 'objective', 'weights', ...optionNames] as const;
 
 export async function place(args: readonly string[]): Promise<0 | 2 | 3 | 4> {
   const given = readArguments(args, names, ['kernel', 'fabric'], ['another-than']);

@@ -2,7 +2,7 @@
 import { compileFabric } from '../../lib/fabric/compile';
 import type { Certificate } from '../../lib/mapping/certificate';
 import type { MappingDocument } from '../../lib/mapping/mapping';
-import { measureMapping, objectiveValue } from '../../lib/mapping/metrics';
+import { measureMapping, objectiveOf } from '../../lib/mapping/metrics';
 import { verifyMapping } from '../../lib/mapping/verify';
 import { err, ok, type Result } from '../../lib/result';
 import {
@@ -86,7 +86,7 @@ function otherProblem(given: Given, { problemDigest: certified }: Certificate, p
 /** Whether the mapping is a legal one of the problem, with the value that was proved. */
 function mappingDifferences(
   certificate: Certificate,
-  { kernel, fabric, pins, objective }: PlacementProblem,
+  { kernel, fabric, pins, objective, weights }: PlacementProblem,
   { placement, routes }: MappingDocument,
 ): CertificateDifference[] {
   const broken = verifyMapping(kernel, fabric, { placement, routes, pins });
@@ -94,10 +94,8 @@ function mappingDifferences(
     const found = broken.map(({ rule, message }) => `${rule}: ${message}`);
     return [{ what: 'mapping', certificate: 'legal', found }];
   }
-  const value = objectiveValue(
-    measureMapping(kernel, compileFabric(fabric), { placement, routes }),
-    objective,
-  );
+  const metrics = measureMapping(kernel, compileFabric(fabric), { placement, routes });
+  const value = objectiveOf(metrics, objective, weights);
   return value === certificate.objectiveValue
     ? []
     : [{ what: 'mapping', certificate: certificate.objectiveValue, found: value }];

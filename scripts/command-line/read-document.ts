@@ -11,9 +11,11 @@ import { parseMappingJson } from '../../lib/formats/mapping-json';
 import { type ParseResult, positionAt } from '../../lib/formats/parse-result';
 import { parsePinsJson } from '../../lib/formats/pins-json';
 import { parseQaplib, type QaplibDocument } from '../../lib/formats/qaplib';
+import { parseWeightsJson } from '../../lib/formats/weights-json';
 import type { Kernel } from '../../lib/graph/kernel';
 import type { Certificate } from '../../lib/mapping/certificate';
 import { type MappingDocument, type Pins, placementSchema, routesSchema } from '../../lib/mapping/mapping';
+import type { Weights } from '../../lib/mapping/weights';
 import { err, ok, type Result } from '../../lib/result';
 
 /** Lines for standard error. */
@@ -43,6 +45,7 @@ export const readKernel = (path: string): Result<Kernel, Faults> =>
   read(path, path.endsWith('.dot') || path.endsWith('.gv') ? parseKernelDot : parseKernelJson);
 export const readFabric = (path: string): Result<Fabric, Faults> => read(path, parseFabricJson);
 export const readPins = (path: string): Result<Pins, Faults> => read(path, parsePinsJson);
+export const readWeights = (path: string): Result<Weights, Faults> => read(path, parseWeightsJson);
 export const readQaplib = (path: string): Result<QaplibDocument, Faults> => read(path, parseQaplib);
 /** What `place` prints, as far as it says where everything is. */
 const placedSchema = z.object({ placement: placementSchema, routes: routesSchema });

@@ -59,6 +59,7 @@ export function outcomeDocument(problem: PlacementProblem, outcome: SolveOutcome
   return {
     status: outcome.status,
     objective: outcome.objective,
+    weights: problem.weights ?? null,
     objectiveValue: outcome.objectiveValue,
     bound: outcome.bound,
     gapRatio: outcome.gapRatio,

@@ -5,6 +5,7 @@ npm run -s pinloom -- place --kernel K --fabric F [options]
   --fabric F          fabric, .json
   --pins P            pins, .json
   --objective O       wire (default): links of all nets; path: links of all paths
+  --weights W         weights, .json: what nets (wire) or connections (path) count; 1 by default
   --engine E          auto (default), program, highs, simplex or search
   --time-limit-ms N   30000 by default
   --node-limit N      nodes after which the exact search ends; then the answer does not depend on the machine's
@@ -18,8 +19,9 @@ npm run -s pinloom -- pin-price --kernel K --fabric F --pins P --op OP [options]
   Solves with and without the pin of the op OP and tells what it costs: exact where both are proved, else
   from least to most. Options as for place; the limits are for each of the two.
 
-npm run -s pinloom -- verify --kernel K --fabric F --mapping M
-  Checks the mapping by rules R1 to R7 and names each one that it breaks.
+npm run -s pinloom -- verify --kernel K --fabric F --mapping M [--weights W]
+  Checks the mapping by rules R1 to R7 and names each one that it breaks. Weighted figures are by W,
+  or by the weights that the mapping was made with.
 
 npm run -s pinloom -- prove --kernel K --fabric F --certificate C [options]
   Solves the certificate's problem again, from its seed and start, and holds what comes out against it.

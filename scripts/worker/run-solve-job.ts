@@ -82,6 +82,7 @@ async function solveTaken(
         fabric,
         pins,
         objective: settings.objective,
+        weights: settings.weights,
         ...(startPlacement ? { start: startPlacement } : {}),
         ...askedOf(settings.ask),
       },

@@ -13,6 +13,7 @@ import {
   type Routes,
   routesSchema,
 } from '@/lib/mapping/mapping';
+import { effectiveWeights, weightsSchema } from '@/lib/mapping/weights';
 import { engineChoices } from '@/lib/solver/options';
 
 const explanationSchema = z
@@ -22,6 +23,7 @@ const explanationSchema = z
 const solveSettingsSchema = z.object({
   engine: z.enum(engineChoices),
   objective: z.enum(objectives),
+  weights: weightsSchema.optional(),
   timeLimitMs: z.number(),
   seed: z.number(),
 });
@@ -101,6 +103,7 @@ export function solveResult(solve: Solve): SolveResult | null {
   const { best, outcome, settings } = solve;
   if (isLive(solve) || !best) return null;
   const bound = outcome?.bound ?? solve.bound ?? 0;
+  const weights = effectiveWeights(settings.weights, settings.objective);
   return {
     placement: best.placement,
     routes: best.routes,
@@ -108,6 +111,7 @@ export function solveResult(solve: Solve): SolveResult | null {
       by: 'solver',
       engine: outcome?.engine ?? settings.engine,
       objective: settings.objective,
+      ...(weights && { weights }),
       timeLimitMs: settings.timeLimitMs,
       seed: settings.seed,
       status: outcome?.status === 'optimal' ? 'optimal' : 'feasible',
@@ -166,6 +170,7 @@ const stops: Record<string, string> = {
   'search complete': 'the search was complete',
   'another found': 'another one was found',
   'routing gap': 'routes and bound did not meet',
+  'weights too far apart': 'the weights are too far apart to tell their last digits',
   'thread failed': 'its thread failed',
 };
 export const stopText = (reason: string | null): string => (reason === null ? '' : (stops[reason] ?? reason));

@@ -4,7 +4,7 @@ import { useEffect, useMemo, useRef, useState } from 'react';
 import type { OpId } from '@/lib/graph/kernel';
 import { samePlacement } from '@/lib/mapping/honest-provenance';
 import type { Pins, Placement } from '@/lib/mapping/mapping';
-import { objectiveValue } from '@/lib/mapping/metrics';
+import { objectiveOf } from '@/lib/mapping/metrics';
 import { type Ask, pinsOfSide } from '@/lib/solver/solve-ask';
 import type { BenchContent } from '../store/bench-content';
 import { useBench } from '../store/bench-context';
@@ -103,7 +103,7 @@ export function useBenchAsk(store: BenchStore, parts: SolveJobParts & { settings
       return ask(
         {
           kind: 'another',
-          objectiveValue: objectiveValue(facts.metrics, parts.settings.objective),
+          objectiveValue: objectiveOf(facts.metrics, parts.settings.objective, parts.settings.weights),
           than: avoidedPlacements([...found.current, ...steps, content.placement], opCount),
         },
         false,

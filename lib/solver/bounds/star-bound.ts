@@ -116,7 +116,11 @@ function cheapestTiles({ candidates, costs }: Neighbour, row: number, p: number,
   for (const q of candidates) {
     if (q === p) continue;
     let value = 0;
-    for (const { weight, table } of costs) value += weight * (table[row + q] as number);
+    for (const { weight, table } of costs) {
+      const hops = table[row + q] as number;
+      // Also a pair of weight 0 cannot be where there is no way.
+      value += hops === Number.POSITIVE_INFINITY ? hops : weight * hops;
+    }
     if (value === Number.POSITIVE_INFINITY) continue;
     if (values.length === count && value >= (values[count - 1] as number)) continue;
     let at = values.length === count ? count - 1 : values.length;

@@ -36,6 +36,11 @@ export interface Engine {
   solveModel(program: IntegerProgram, limits: EngineLimits): EngineOutcome;
 }
 
-/** A proven bound, rounded up where every objective is an integer; the tolerance forgives the engine's own. */
-export const tightenBound = (program: IntegerProgram, bound: number): number =>
-  program.hasIntegerObjective ? Math.ceil(bound - 1e-5) : bound;
+/**
+ * A proven bound, rounded up where every objective is an integer. Either way less what the engine's own tolerances may
+ * have added, for rows and for the relative precision of large objectives.
+ */
+export function tightenBound(program: IntegerProgram, bound: number): number {
+  const large = 1e-9 * Math.abs(bound);
+  return program.hasIntegerObjective ? Math.ceil(bound - 1e-5 - large) : bound - 1e-6 - large;
+}

@@ -1,5 +1,7 @@
 /** The nets of an instance as the joint router takes them, and the granularity of its costs. */
+import { greatestCommonDivisor } from '../../mapping/weighted-sum';
 import type { PlacementInstance } from '../instance';
+import { costGrain, termsOf } from '../weight-scale';
 import type { StandingNet } from './joint-routing';
 
 export interface StandingNets {
@@ -58,16 +60,14 @@ export function standingNets(instance: PlacementInstance): StandingNets {
   };
 }
 
-/** All objectives are multiples of this: the weights' greatest common divisor, or next to nothing where they are not whole. */
-export function costStep({ objective, pairs, nets }: PlacementInstance): number {
-  const weights = objective === 'path' ? pairs.map((pair) => pair.weight) : nets.map((net) => net.weight);
-  if (weights.length === 0) return 1;
-  if (!weights.every(Number.isInteger)) return 1e-6 * Math.max(...weights);
-  return weights.reduce(greatestCommonDivisor, 0) || 1;
-}
-
-function greatestCommonDivisor(a: number, b: number): number {
-  let [x, y] = [Math.abs(a), Math.abs(b)];
-  while (y > 0) [x, y] = [y, x % y];
-  return x;
+/**
+ * Objectives that differ, differ by this much at least: the weights' greatest common divisor where they are whole or
+ * decimals with room for exact sums, or next to nothing.
+ */
+export function costStep(instance: PlacementInstance): number {
+  const terms = termsOf(instance);
+  if (terms.every(({ weight }) => Number.isInteger(weight))) {
+    return terms.reduce((divisor, { weight }) => greatestCommonDivisor(divisor, weight), 0) || 1;
+  }
+  return costGrain(terms).step;
 }

@@ -1,16 +1,16 @@
 /** What is said where no other mapping than given ones was found, proved or not. */
-import type { Objective } from '../../mapping/mapping';
 import type { InfeasibleReason, StopReason } from '../outcome';
 import type { AnotherAsk } from '../problem';
 
-const wanted = ({ objectiveValue, than }: AnotherAsk, objective: Objective): string =>
-  `${than.length > 0 ? 'other ' : ''}placement of at most ${objectiveValue} ${objective} hops`;
+const wanted = ({ objectiveValue, than }: AnotherAsk, hops: string): string =>
+  `${than.length > 0 ? 'other ' : ''}placement of at most ${objectiveValue} ${hops}`;
 
-export function noOtherReason(asked: AnotherAsk, objective: Objective): InfeasibleReason {
+/** `hops` says what the objective counts: wire hops, weighted path hops. */
+export function noOtherReason(asked: AnotherAsk, hops: string): InfeasibleReason {
   const besides = asked.than.length > 0 ? ' besides mirror images of the ones shown' : '';
   return {
     code: 'no other',
-    message: `Proved by exhaustive search: no ${wanted(asked, objective)} exists${besides}.`,
+    message: `Proved by exhaustive search: no ${wanted(asked, hops)} exists${besides}.`,
     opIds: [],
     tileIds: [],
     edgeIds: [],
@@ -27,5 +27,5 @@ const why: Partial<Record<StopReason, string>> = {
   'routing gap': 'was found, but of some placement it is not settled whether it can be routed',
 };
 
-export const noOtherYet = (asked: AnotherAsk, objective: Objective, stop: StopReason): string =>
-  `No ${wanted(asked, objective)} ${why[stop] ?? 'was found'}.`;
+export const noOtherYet = (asked: AnotherAsk, hops: string, stop: StopReason): string =>
+  `No ${wanted(asked, hops)} ${why[stop] ?? 'was found'}.`;

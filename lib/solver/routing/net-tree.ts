@@ -45,7 +45,19 @@ export function netTree(
   return { links, cost: limited.cost, exact: true };
 }
 
-/** What a tree adds to the objective: its links for `wire`, the hops of all its connections for `path`. */
+/** What a tree adds to the objective where nets compete: its hops, by what they weigh against those of others. */
+export function weightedHops(
+  graph: FabricGraph,
+  task: NetTask,
+  tree: readonly number[],
+  objective: Objective,
+): number {
+  if (objective === 'wire') return task.weight * tree.length;
+  const { hops } = walkLinks(graph, task.sourceTile, tree);
+  return task.edges.reduce((sum, { tile, weight }) => sum + weight * (hops.get(tile) ?? 0), 0);
+}
+
+/** What a tree adds to the objective where all weights are 1: its links for `wire`, the hops of all its connections for `path`. */
 export function objectiveHops(
   graph: FabricGraph,
   task: NetTask,

@@ -3,13 +3,13 @@
  *
  * First on what is left free. Then on a tree of its own choice, where the nets that are in its way are taken up and
  * must find room again; the exchange stays only if no link gets fuller than it may and the hops of all nets
- * together get fewer. Cost: a few trees for each net with a detour, in at most PASSES rounds.
+ * together, by their weights, get fewer. Cost: a few trees for each net with a detour, in at most PASSES rounds.
  */
 import type { FabricGraph } from '../../fabric/compile';
 import type { Objective } from '../../mapping/mapping';
 import type { LinkLoads } from './link-loads';
 import type { NetTask } from './net-tasks';
-import { netTree, objectiveHops } from './net-tree';
+import { netTree, objectiveHops, weightedHops } from './net-tree';
 
 const PASSES = 4;
 /** An exchange that moves more nets than this rarely pays. */
@@ -45,16 +45,22 @@ export function polish(
     let improved = false;
     for (const i of options.order) {
       if (options.shouldStop()) return;
-      if (hopsOf(work, i) <= (state.aloneHops[i] ?? 0)) continue;
+      if (isAsAlone(work, i, state.aloneHops[i] ?? 0)) continue;
       if (intoFreeRoom(work, i) || byExchange(work, i)) improved = true;
     }
     if (!improved) return;
   }
 }
 
+function isAsAlone({ graph, tasks, objective, trees }: Polishing, i: number, aloneHops: number): boolean {
+  const task = tasks[i];
+  return !task || objectiveHops(graph, task, trees[i] ?? [], objective) <= aloneHops;
+}
+
+/** Weighted: an exchange pays where the heavier nets gain. */
 function hopsOf({ graph, tasks, objective, trees }: Polishing, i: number): number {
   const task = tasks[i];
-  return task ? objectiveHops(graph, task, trees[i] ?? [], objective) : 0;
+  return task ? weightedHops(graph, task, trees[i] ?? [], objective) : 0;
 }
 
 /** A tree for a net whose links are not counted at the moment; a full link costs `full`. */

@@ -3,6 +3,7 @@ import type { FabricGraph } from '../../fabric/compile';
 import type { LinkId } from '../../fabric/fabric';
 import type { EdgeId, Kernel, OpId } from '../../graph/kernel';
 import type { Objective, Placement, Routes } from '../../mapping/mapping';
+import type { Weights } from '../../mapping/weights';
 import { pruneToTree, treeDepth, walkLinks } from './link-tree';
 import { negotiate } from './negotiate';
 import { type NetTask, netTasks } from './net-tasks';
@@ -19,6 +20,8 @@ export interface RouteOptions {
   keepPrevious?: boolean;
   /** `wire` (the default) shares links; `path` gives every consumer its shortest path first. */
   objective?: Objective;
+  /** Where nets compete for a link, those that weigh less give way. */
+  weights?: Weights;
   /** Looked at before every net; true ends at once, and then routes may be missing or overfull. */
   shouldStop?: () => boolean;
 }
@@ -26,7 +29,7 @@ export interface RouteOptions {
 export interface NetRoute {
   source: OpId;
   wireHops: number;
-  /** What the net adds to the objective (its links, or the hops of its paths) if no other net were there. */
+  /** The net's links, or the hops of its paths under the objective `path`, if no other net were there. */
   aloneHops: number;
   /** Whether `aloneHops` is proved to be the least possible within the clock's limit. */
   exact: boolean;
@@ -54,8 +57,8 @@ export function routePlacement(
   placement: Placement,
   options: RouteOptions = {},
 ): RoutingResult {
-  const tasks = netTasks(kernel, graph, placement);
   const objective = options.objective ?? 'wire';
+  const tasks = netTasks(kernel, graph, placement, objective, options.weights);
   const shouldStop = options.shouldStop ?? (() => false);
   const start = tasks.map((task) => previousTree(graph, task, options.previous));
   const state = negotiate(graph, tasks, {

@@ -2,7 +2,7 @@ import fc from 'fast-check';
 import { beforeAll, describe, expect, it } from 'vitest';
 import { compileFabric } from '@/lib/fabric/compile';
 import type { Placement } from '@/lib/mapping/mapping';
-import { measureMapping, objectiveValue as objectiveOf } from '@/lib/mapping/metrics';
+import { measureMapping, objectiveOf } from '@/lib/mapping/metrics';
 import { verifyMapping } from '@/lib/mapping/verify';
 import { buildInstance, type PlacementInstance, tilingOf } from '@/lib/solver/instance';
 import { imageTest } from '@/lib/solver/mirror-images';

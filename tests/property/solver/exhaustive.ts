@@ -6,6 +6,7 @@ import type { Fabric } from '@/lib/fabric/fabric';
 import { canHost } from '@/lib/fabric/unit-library';
 import type { Kernel } from '@/lib/graph/kernel';
 import type { Objective, Pins, Placement } from '@/lib/mapping/mapping';
+import type { Weights } from '@/lib/mapping/weights';
 
 interface Link {
   from: string;
@@ -49,9 +50,10 @@ export function exhaustiveOptimum(
   fabric: Fabric,
   pins: Pins,
   objective: Objective,
+  weights: Weights = {},
 ): number | null {
   let best: number | null = null;
-  tryEverything(kernel, fabric, pins, objective, (_, leastBelow) => {
+  tryEverything(kernel, fabric, pins, objective, weights, (_, leastBelow) => {
     best = leastBelow(best ?? Number.POSITIVE_INFINITY) ?? best;
   });
   return best;
@@ -65,7 +67,7 @@ export function everyPlacement(
   objective: Objective,
 ): { placement: Placement; cost: number }[] {
   const found: { placement: Placement; cost: number }[] = [];
-  tryEverything(kernel, fabric, pins, objective, (placement, leastBelow) => {
+  tryEverything(kernel, fabric, pins, objective, {}, (placement, leastBelow) => {
     const cost = leastBelow(Number.POSITIVE_INFINITY);
     if (cost !== null) found.push({ placement: Object.fromEntries(placement) as Placement, cost });
   });
@@ -78,6 +80,7 @@ function tryEverything(
   fabric: Fabric,
   pins: Pins,
   objective: Objective,
+  weights: Weights,
   meet: (placement: ReadonlyMap<string, string>, leastBelow: (below: number) => number | null) => void,
 ): void {
   const links = linksOf(fabric);
@@ -95,7 +98,16 @@ function tryEverything(
     if (!op) {
       const choices = nets.map(({ source, edges }) => {
         const targets = edges.map((edge) => placement.get(edge.to) as string);
-        return usefulTrees(treesFrom.get(placement.get(source) as string) ?? [], links, targets, objective);
+        const trees = usefulTrees(treesFrom.get(placement.get(source) as string) ?? [], links, targets);
+        const perTarget = edges.map((edge) => weights.edges?.[edge.id] ?? 1);
+        const cost = (tree: DeepTree): number =>
+          objective === 'wire'
+            ? (weights.nets?.[source] ?? 1) * tree.links.length
+            : targets.reduce(
+                (sum, target, i) => sum + (perTarget[i] ?? 1) * (tree.depth.get(target) as number),
+                0,
+              );
+        return trees.map((tree) => ({ links: tree.links, cost: cost(tree) })).sort((a, b) => a.cost - b.cost);
       });
       meet(placement, (below) => leastWithinChannels(choices, links, below));
       return;
@@ -130,13 +142,17 @@ function everyTree(links: readonly Link[], root: string, limit: number): Map<str
 }
 const treeLinks = new WeakMap<Map<string, number>, number[]>();
 
-/** Trees that reach the targets and end in targets only, cheapest first. */
+interface DeepTree {
+  links: number[];
+  depth: ReadonlyMap<string, number>;
+}
+
+/** Trees that reach the targets and end in targets only. */
 function usefulTrees(
   trees: readonly Map<string, number>[],
   links: readonly Link[],
   targets: readonly string[],
-  objective: Objective,
-): Tree[] {
+): DeepTree[] {
   return trees
     .filter((depth) => targets.every((target) => depth.has(target)))
     .flatMap((depth) => {
@@ -146,11 +162,8 @@ function usefulTrees(
         const to = links[i]?.to as string;
         return !starts.has(to) && !targets.includes(to);
       });
-      if (hasLooseEnd) return [];
-      const paths = targets.reduce((sum, target) => sum + (depth.get(target) as number), 0);
-      return [{ links: own, cost: objective === 'wire' ? own.length : paths }];
-    })
-    .sort((a, b) => a.cost - b.cost);
+      return hasLooseEnd ? [] : [{ links: own, depth }];
+    });
 }
 
 function leastWithinChannels(

@@ -3,6 +3,7 @@ import { describe, expect, it } from 'vitest';
 import { tileId } from '@/lib/fabric/tiles';
 import type { OpId } from '@/lib/graph/kernel';
 import type { Pins } from '@/lib/mapping/mapping';
+import { weightsSchema } from '@/lib/mapping/weights';
 import { type EarlierSolve, knownAnswer } from '@/lib/solver/known-answer';
 import type { SolveOutcome } from '@/lib/solver/outcome';
 import { type Answer, pinPrice } from '@/lib/solver/pin-price';
@@ -155,6 +156,7 @@ describe('what earlier solves have shown for other pins', () => {
     return {
       pins,
       objective,
+      weights: undefined,
       isInfeasible: status === 'infeasible',
       bound,
       best: placement && { placement, objectiveValue },
@@ -193,8 +195,14 @@ describe('what earlier solves have shown for other pins', () => {
     expect([...seen].sort()).toEqual(['feasible', 'infeasible', 'optimal', 'unknown']);
   });
 
-  it('takes nothing from solves of another objective', () => {
-    const optimal: EarlierSolve = { pins: {}, objective: 'path', isInfeasible: false, bound: 7, best: null };
-    expect(knownAnswer({}, 'wire', [optimal])).toMatchObject({ status: 'unknown', bound: 0, from: null });
+  it('takes nothing from solves of another objective or with other weights', () => {
+    const other = { pins: {}, isInfeasible: false, bound: 7, best: null };
+    const solves: EarlierSolve[] = [
+      { ...other, objective: 'path', weights: undefined },
+      { ...other, objective: 'wire', weights: weightsSchema.parse({ nets: { op_0: 3 } }) },
+    ];
+    expect(knownAnswer({}, 'wire', solves)).toMatchObject({ status: 'unknown', bound: 0, from: null });
+    const same = weightsSchema.parse({ nets: { op_0: 3, op_1: 1 } });
+    expect(knownAnswer({}, 'wire', solves, same)).toMatchObject({ status: 'unknown', bound: 7 });
   });
 });

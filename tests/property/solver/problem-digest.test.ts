@@ -1,6 +1,7 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import type { UnitSpec } from '@/lib/fabric/unit-library';
+import { weightsSchema } from '@/lib/mapping/weights';
 import type { PlacementProblem } from '@/lib/solver/problem';
 import { canonicalText, problemDigest } from '@/lib/solver/problem-digest';
 import { tinyCaseArb } from './tiny-cases';
@@ -51,6 +52,24 @@ const forPeople = [
 ];
 
 describe("a problem's digest", () => {
+  it('is another one with weights that count in the objective, and the same with others', () => {
+    fc.assert(
+      fc.property(tinyCaseArb, (tiny) => {
+        const { kernel, objective } = tiny;
+        const digestWith = (weights: object) =>
+          problemDigest({ ...tiny, weights: weightsSchema.parse(weights) });
+        const [net, edge] = [kernel.edges[0]?.from ?? '', kernel.edges[0]?.id ?? ''];
+        const counting = (weight: number) =>
+          objective === 'wire' ? { nets: { [net]: weight } } : { edges: { [edge]: weight } };
+        const idle = objective === 'wire' ? { edges: { [edge]: 2 } } : { nets: { [net]: 2 } };
+        expect(new Set([2, 3, 0].map((weight) => digestWith(counting(weight)))).size).toBe(3);
+        expect(digestWith(counting(2))).not.toBe(problemDigest(tiny));
+        for (const same of [{}, idle, counting(1)]) expect(digestWith(same)).toBe(problemDigest(tiny));
+      }),
+      { seed: SEED, numRuns: 30 },
+    );
+  });
+
   it('is the same whatever the order of members', () => {
     fc.assert(
       fc.property(tinyCaseArb, (tiny) => {

@@ -1,7 +1,7 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { netsOf } from '@/lib/graph/nets';
-import { measureMapping, objectiveValue } from '@/lib/mapping/metrics';
+import { measureMapping, objectiveOf } from '@/lib/mapping/metrics';
 import { verifyMapping } from '@/lib/mapping/verify';
 import { buildInstance, placementOf, tilingOf } from '@/lib/solver/instance';
 import { annealMoves } from '@/lib/solver/search/anneal';
@@ -58,7 +58,7 @@ describe('annealing of ops and routes together', () => {
           );
           expect(result.found.overfull).toBe(excess);
           if (excess > 0) overfull++;
-          const value = objectiveValue(metrics, objective);
+          const value = objectiveOf(metrics, objective);
           const isTooLong = broken.some(({ rule }) => rule === 'R7');
           if (isTooLong) expect(result.found.cost).toBeGreaterThan(value);
           else expect(result.found.cost).toBe(value);

@@ -6,12 +6,14 @@ import { edgeId, opId } from '@/lib/graph/ids';
 import { type Edge, emptyKernel, type Kernel, type Op } from '@/lib/graph/kernel';
 import type { OpKind } from '@/lib/graph/op-catalog';
 import type { Objective, Pins } from '@/lib/mapping/mapping';
+import type { Weights } from '@/lib/mapping/weights';
 
 export interface TinyCase {
   kernel: Kernel;
   fabric: Fabric;
   pins: Pins;
   objective: Objective;
+  weights?: Weights;
 }
 
 const kindOf: Record<number, readonly OpKind[]> = {
@@ -128,3 +130,40 @@ export const tinyCaseArb: fc.Arbitrary<TinyCase> = fc
     if (op) pins[op.id] = `r${Math.floor(at / fabric.cols)}c${at % fabric.cols}` as TileId;
     return { kernel, fabric, pins, objective };
   });
+
+/** Weights of one kind: whole, decimal, any number, far apart; 0 among all of them. */
+export const weightKinds: Record<string, fc.Arbitrary<number>> = {
+  whole: fc.nat(9),
+  decimal: fc.oneof(
+    fc.nat(40).map((n) => n / 10),
+    fc.nat(300).map((n) => n / 100),
+  ),
+  real: fc.oneof(
+    { weight: 1, arbitrary: fc.constant(0) },
+    { weight: 6, arbitrary: fc.double({ min: 0.01, max: 9, noNaN: true }) },
+  ),
+  'far apart': fc.constantFrom(0, 1, 3, 1e6, 2e6),
+  'nothing or most': fc.constantFrom(0, 1e9),
+};
+
+/** A tiny case with weights, some of them left at 1. */
+export const weightedCaseArb = (
+  weight: fc.Arbitrary<number>,
+): fc.Arbitrary<TinyCase & { weights: Weights }> =>
+  fc
+    .record({
+      tiny: tinyCaseArb,
+      values: fc.array(fc.option(weight, { freq: 5 }), { minLength: 8, maxLength: 8 }),
+    })
+    .map(({ tiny, values }) => {
+      const named = (ids: readonly string[]) =>
+        Object.fromEntries(ids.flatMap((id, i) => (values[i] == null ? [] : [[id, values[i]]])));
+      const sources = tiny.kernel.ops
+        .map((op) => op.id)
+        .filter((id) => tiny.kernel.edges.some((e) => e.from === id));
+      const weights: Weights =
+        tiny.objective === 'wire'
+          ? { nets: named(sources) }
+          : { edges: named(tiny.kernel.edges.map((edge) => edge.id)) };
+      return { ...tiny, weights };
+    });

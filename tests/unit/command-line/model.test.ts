@@ -3,6 +3,7 @@ import { mkdtempSync, rmSync, writeFileSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import { afterAll, describe, expect, it } from 'vitest';
+import { weightsSchema } from '@/lib/mapping/weights';
 import {
   apart,
   type Case,
@@ -39,6 +40,24 @@ describe('pinloom model', { timeout: 60_000 }, () => {
     const printed = run('model', ...small, '--pins', pins, '--objective', 'path', '--format', format);
     expect(printed).toEqual({ code: 0, stdout: textOf(one, format), stderr: '' });
     expect(printed.stdout).toMatch(form);
+  });
+
+  it('takes weights into the objective, and says so at the head', () => {
+    const weights = { edges: { edge_0: 2.5 } };
+    const file = scratch('weights.json', { format: 'pinloom.weights', formatVersion: 1, ...weights });
+    const one: Case = [
+      '',
+      3,
+      chain,
+      fabricOf('mam aam', hopLimit(2)),
+      {},
+      'path',
+      weightsSchema.parse(weights),
+    ];
+    const { stdout } = run('model', ...small, '--objective', 'path', '--weights', file, '--format', 'lp');
+    expect(stdout).toBe(textOf(one, 'lp'));
+    expect(stdout).toContain('each by its weight, 1 but for\n\\   edge_0 counts 2.5\n');
+    expect(stdout).toMatch(/2\.5 flow\.net_op_in\.op_abs/);
   });
 
   it('takes wire where no objective is given', () => {

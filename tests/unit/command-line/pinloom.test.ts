@@ -4,6 +4,9 @@ import { commandLine } from '../../helpers/command-line';
 
 const { run, scratch, fixture, chain, clear } = commandLine();
 
+const weightsText = (nets: string): string =>
+  `{"format": "pinloom.weights", "formatVersion": 1,\n "nets": {${nets}}}`;
+
 beforeAll(() => {
   // The first call may have to bundle.
   run('--help');
@@ -40,6 +43,36 @@ describe('pinloom place', { timeout: 60_000 }, () => {
     );
     expect(code).toBe(0);
     expect(JSON.parse(stdout)).toMatchObject({ objective: 'path', placement: { op_raw: 'r3c0' } });
+  });
+
+  it('takes weights: the net of op_raw counts 10, the three others 1', () => {
+    const weights = scratch('weights.json', weightsText('"op_raw": 10'));
+    const { code, stdout } = run('place', ...chain, '--weights', weights);
+    expect(code).toBe(0);
+    expect(JSON.parse(stdout)).toMatchObject({
+      status: 'optimal',
+      objectiveValue: 13,
+      bound: 13,
+      weights: { nets: { op_raw: 10 } },
+      metrics: { totalWireHops: 4 },
+    });
+  });
+
+  it.each([
+    [
+      'a weight below 0',
+      '"op_raw": -1',
+      ':2:21: nets.op_raw: -1 cannot stand here: give a number of at least 0.',
+    ],
+    ['a weight without end', '"op_raw": 1e999', ':2:21: nets.op_raw: '],
+    ['the net of an op that is not there', '"op_ghost": 2', ':2:12: A weight names the net of op_ghost,'],
+  ])('exits 2 at the exact place for %s', (_, nets, place) => {
+    const weights = scratch('wrong-weights.json', weightsText(nets));
+    for (const command of [['place'], ['model', '--format', 'lp']]) {
+      const { code, stdout, stderr } = run(...command, ...chain, '--weights', weights);
+      expect({ code, stdout }).toEqual({ code: 2, stdout: '' });
+      expect(stderr).toContain(`${weights}${place}`);
+    }
   });
 
   it('exits 3 with the reason as JSON where nothing fits', () => {
@@ -112,7 +145,10 @@ describe('pinloom place', { timeout: 60_000 }, () => {
 });
 
 describe('pinloom verify', { timeout: 60_000 }, () => {
-  type Editable = Record<'placement' | 'pins' | 'routes', Record<string, unknown>>;
+  type Editable = Record<'placement' | 'pins' | 'routes' | 'provenance', Record<string, unknown>>;
+  const [firstEdge] = JSON.parse(readFileSync(fixture('scale-and-clamp.kernel.json'), 'utf8')).edges.map(
+    (edge: { id: string }) => edge.id,
+  );
   const mapping = (change: (document: Editable) => void): string => {
     const placed = JSON.parse(run('place', ...chain).stdout);
     const document = {
@@ -139,6 +175,30 @@ describe('pinloom verify', { timeout: 60_000 }, () => {
     );
     expect(code).toBe(0);
     expect(JSON.parse(stdout)).toMatchObject({ legal: true, violations: [], totalWireHops: 4 });
+  });
+
+  it('gives figures by the weights of a file, or else by those that the mapping was made with', () => {
+    const path = mapping((document) => {
+      document.provenance = {
+        by: 'solver',
+        engine: 'exact',
+        objective: 'path',
+        weights: { edges: { [firstEdge]: 3 } },
+        timeLimitMs: 1,
+        seed: 1,
+        status: 'optimal',
+        objectiveValue: 6,
+        bound: 6,
+        elapsedMs: 1,
+        changedByHand: false,
+      };
+    });
+    const figures = (...more: string[]) =>
+      JSON.parse(run('verify', ...chain, '--mapping', path, ...more).stdout);
+    // One connection of 1 hop at 3 and three at 1.
+    expect(figures()).toMatchObject({ totalPathHops: 4, weightedWireHops: 4, weightedPathHops: 6 });
+    const weights = scratch('other-weights.json', weightsText('"op_raw": 0.5'));
+    expect(figures('--weights', weights)).toMatchObject({ weightedWireHops: 3.5, weightedPathHops: 4 });
   });
 
   it('exits 3 and names R5 for a route that is gone, R4 for a pin that is not kept', () => {

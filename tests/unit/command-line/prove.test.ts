@@ -58,6 +58,15 @@ describe('pinloom prove', { timeout: 60_000 }, () => {
     expect(answer.compared).toEqual(expect.arrayContaining(['bound', 'nodes', 'levels', 'mapping']));
   });
 
+  it('takes weights from the certificate', () => {
+    const weights = scratch('w.json', '{"format":"pinloom.weights","formatVersion":1,"nets":{"op_raw":2.5}}');
+    const { path, document } = placed('weighted', ...chain, '--weights', weights);
+    expect(document.certificate).toMatchObject({ weights: { nets: { op_raw: 2.5 } }, objectiveValue: 5.5 });
+    const mapping = scratch('weighted.mapping.json', JSON.stringify(mappingOf(document)));
+    const { code, answer } = prove(...chain, '--certificate', path, '--mapping', mapping);
+    expect({ code, agrees: answer.agrees }).toEqual({ code: 0, agrees: true });
+  });
+
   it('agrees with a proof that nothing fits, in a file of its own', () => {
     const given = [
       '--kernel',

@@ -6,6 +6,7 @@ import type { Fabric } from '@/lib/fabric/fabric';
 import type { Kernel } from '@/lib/graph/kernel';
 import { type Certificate, certificateSchema } from '@/lib/mapping/certificate';
 import type { Objective, Pins, Placement } from '@/lib/mapping/mapping';
+import { weightsSchema } from '@/lib/mapping/weights';
 import { certificateDifferences, comparedFields, optionsAgain, problemAgain } from '@/lib/solver/certificate';
 import type { Engine } from '@/lib/solver/engines/engine';
 import { highsEngine } from '@/lib/solver/engines/highs';
@@ -59,6 +60,27 @@ const again = (certificate: Certificate, of: PlacementProblem): SolveOutcome =>
   outcomeOf(problemAgain(certificate, of), optionsAgain(certificate, LIMIT_MS));
 
 describe('the certificate of a solve', { timeout: 30_000 }, () => {
+  it('names the weights, counts levels in weighted hops, and comes out the same when solved again', () => {
+    const surge = problem('surge-detector');
+    const sources = [...new Set(surge.kernel.edges.map((edge) => edge.from))];
+    const nets = Object.fromEntries(sources.map((source, i) => [source, [0.5, 0.1, 1][i % 3]]));
+    const weighted = { ...surge, weights: weightsSchema.parse({ nets }) };
+    const certificate = proved(weighted);
+    const named = Object.fromEntries(Object.entries(nets).filter(([, weight]) => weight !== 1));
+    expect(certificate).toMatchObject({
+      weights: { nets: named },
+      method: 'exact search',
+      isRepeatable: true,
+    });
+    const cutoffs = certificate.levels.map((level) => level.cutoff);
+    expect(cutoffs.length).toBeGreaterThan(0);
+    // Whole tenths, below the optimum.
+    expect(cutoffs.map((cutoff) => Math.round(cutoff * 10) / 10)).toEqual(cutoffs);
+    expect(Math.max(...cutoffs)).toBeLessThanOrEqual(certificate.objectiveValue ?? 0);
+    expect(certificateDifferences(certificate, again(certificate, surge))).toEqual([]);
+    expect(certificate.problemDigest).not.toBe(problemDigest(surge));
+  });
+
   it('tells the levels, nodes and struck choices of the exact search', () => {
     const certificate = proved(problem('surge-detector'));
     expect(certificate).toMatchObject({

@@ -2,6 +2,7 @@ import type { MappingDraftView } from '@/db/queries/mapping-drafts';
 import type { SolveView } from '@/db/queries/solve-jobs';
 import type { KnownMaking } from '@/lib/mapping/honest-provenance';
 import type { Provenance } from '@/lib/mapping/mapping';
+import { effectiveWeights } from '@/lib/mapping/weights';
 
 /** What is known of a bench's making: its solves that ended with a mapping, and what was stored before. */
 export function knownMakings(
@@ -22,10 +23,12 @@ export function solveProvenance({
 }: Pick<SolveView, 'settings' | 'outcome'>): Provenance | null {
   if (!outcome || outcome.objectiveValue === null || outcome.bound === null) return null;
   if (outcome.status !== 'optimal' && outcome.status !== 'feasible') return null;
+  const weights = effectiveWeights(settings.weights, settings.objective);
   return {
     by: 'solver',
     engine: outcome.engine,
     objective: settings.objective,
+    ...(weights && { weights }),
     timeLimitMs: settings.timeLimitMs,
     seed: settings.seed,
     status: outcome.status,

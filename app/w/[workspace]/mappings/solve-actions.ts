@@ -39,13 +39,14 @@ export const startSolve = defineAction({
       fabric: draft.fabric.document,
       pins: ask?.kind === 'pin price' ? { ...input.pins, [ask.op]: ask.tile } : input.pins,
       objective: settings.objective,
+      weights: settings.weights,
       ...(input.startPlacement ? { start: input.startPlacement } : {}),
       ...(ask?.kind === 'another' ? { another: { objectiveValue: ask.objectiveValue, than: ask.than } } : {}),
     });
     if (!problem.ok) return err(appError('invalid', problem.error.messages.join(' ')));
     const made = await database().transaction(async (tx) => {
       const solves = ask ? await listSolves(tx, { ...of, limit: SOLVES_KNOWN }) : [];
-      const asked = ask && askedSolve(draft, solves, { ...input, ask, objective: settings.objective });
+      const asked = ask && askedSolve(draft, solves, { ...input, ask, ...plain });
       const solve = await createSolve(tx, {
         ...of,
         userId: member.user.id,

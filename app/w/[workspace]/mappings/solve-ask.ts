@@ -3,8 +3,9 @@ import type { SolveView } from '@/db/queries/solve-jobs';
 import type { KnownSide, SolveAsk } from '@/db/schema/solve-jobs';
 import { compileFabric } from '@/lib/fabric/compile';
 import type { Objective, Pins, Placement } from '@/lib/mapping/mapping';
-import { measureMapping, objectiveValue } from '@/lib/mapping/metrics';
+import { measureMapping, objectiveOf } from '@/lib/mapping/metrics';
 import { verifyMapping } from '@/lib/mapping/verify';
+import type { Weights } from '@/lib/mapping/weights';
 import { type EarlierSolve, knownAnswer } from '@/lib/solver/known-answer';
 import { type Ask, otherSide, pinsOfSide } from '@/lib/solver/solve-ask';
 
@@ -22,16 +23,23 @@ export interface AskedSolve {
 export function askedSolve(
   bench: Bench,
   solves: readonly SolveView[],
-  asked: { ask: Ask; objective: Objective; pins: Pins; startPlacement: Placement | null },
+  asked: {
+    ask: Ask;
+    objective: Objective;
+    weights?: Weights;
+    pins: Pins;
+    startPlacement: Placement | null;
+  },
 ): AskedSolve {
-  const { ask, objective, pins, startPlacement } = asked;
-  const known = [...solves.map(earlierSolve), ...onTheBench(bench, objective)];
+  const { ask, objective, weights, pins, startPlacement } = asked;
+  const known = [...solves.map(earlierSolve), ...onTheBench(bench, objective, weights)];
+  const answerFor = (wanted: Pins) => knownAnswer(wanted, objective, known, weights);
   if (ask.kind === 'another') {
-    const provenBound = knownAnswer(pins, objective, known).bound ?? 0;
+    const provenBound = answerFor(pins).bound ?? 0;
     return { pins, startPlacement, ask: { ...ask, provenBound } };
   }
   const ownPins = pinsOfSide(pins, ask);
-  const own = knownAnswer(ownPins, objective, known);
+  const own = answerFor(ownPins);
   const other = pinsOfSide(pins, { ...ask, side: otherSide(ask.side) });
   return {
     pins: ownPins,
@@ -39,7 +47,7 @@ export function askedSolve(
     ask: {
       ...ask,
       isPinned: pins[ask.op] === ask.tile,
-      other: knownSide(knownAnswer(other, objective, known)),
+      other: knownSide(answerFor(other)),
       provenBound: own.bound ?? 0,
     },
   };
@@ -52,14 +60,15 @@ const knownSide = ({ from, ...answer }: ReturnType<typeof knownAnswer<Known>>): 
 
 function earlierSolve({ id, settings, pins, bound, best, outcome }: SolveView): Known {
   const isInfeasible = outcome?.status === 'infeasible' && outcome.explanation?.code !== 'no other';
-  return { pins, objective: settings.objective, isInfeasible, bound, best, solveId: id };
+  const { objective, weights } = settings;
+  return { pins, objective, weights, isInfeasible, bound, best, solveId: id };
 }
 
 /** What is stored as the bench's own mapping, where it is a legal one: made by hand, it may be the only one known. */
-function onTheBench({ kernel, fabric, document }: Bench, objective: Objective): Known[] {
+function onTheBench({ kernel, fabric, document }: Bench, objective: Objective, weights?: Weights): Known[] {
   const { placement, routes } = document;
   if (verifyMapping(kernel.document, fabric.document, { placement, routes, pins: {} }).length > 0) return [];
   const metrics = measureMapping(kernel.document, compileFabric(fabric.document), { placement, routes });
-  const best = { placement, objectiveValue: objectiveValue(metrics, objective) };
-  return [{ pins: {}, objective, isInfeasible: false, bound: null, best, solveId: null }];
+  const best = { placement, objectiveValue: objectiveOf(metrics, objective, weights) };
+  return [{ pins: {}, objective, weights, isInfeasible: false, bound: null, best, solveId: null }];
 }

@@ -2,6 +2,7 @@
 import { z } from 'zod';
 import { idSchema } from '@/lib/ids';
 import { objectives, pinsSchema, placementSchema } from '@/lib/mapping/mapping';
+import { weightsSchema } from '@/lib/mapping/weights';
 import { engineChoices, SOLVE_LIMITS } from '@/lib/solver/options';
 import { askSchema } from '@/lib/solver/solve-ask';
 
@@ -13,6 +14,7 @@ export const solveInput = z.object({
   settings: z.strictObject({
     engine: z.enum(engineChoices),
     objective: z.enum(objectives),
+    weights: weightsSchema.optional(),
     timeLimitMs: z.number().int().min(1000, 'At least 1 second').max(LONGEST_MS, 'At most 10 minutes'),
     seed: z.number().int().min(0).max(SOLVE_LIMITS.seed),
     ask: askSchema.optional(),

@@ -5,9 +5,15 @@ import { initialParams } from '@/lib/graph/edits';
 import { emptyKernel, type Kernel, kernelSchema } from '@/lib/graph/kernel';
 import type { OpKind } from '@/lib/graph/op-catalog';
 import type { Objective } from '@/lib/mapping/mapping';
+import { type Weights, weightsSchema } from '@/lib/mapping/weights';
 import { modelText } from '@/scripts/pinloom-model';
 import { exhaustiveOptimum } from '../../../property/solver/exhaustive';
-import { type TinyCase, tinyCaseArb } from '../../../property/solver/tiny-cases';
+import {
+  type TinyCase,
+  tinyCaseArb,
+  weightedCaseArb,
+  weightKinds,
+} from '../../../property/solver/tiny-cases';
 import type { Answer, TextFormat } from './outside-solvers';
 
 /** Ops by name and kind; connections as `from>to:port`. */
@@ -66,9 +72,9 @@ export const fan = kernelOf({ in: 'load', left: 'store', right: 'store' }, [
   'in>left:value',
   'in>right:value',
 ]);
-const twoWays = kernelOf({ a: 'load', b: 'load', x: 'store', y: 'store' }, ['a>x:value', 'b>y:value']);
-const crossing = pinsOf({ a: 'r0c0', x: 'r0c2', b: 'r0c1', y: 'r1c2' });
-const noWayDown = { removedLinks: ['r0c1>r1c1'] as LinkId[] };
+export const twoWays = kernelOf({ a: 'load', b: 'load', x: 'store', y: 'store' }, ['a>x:value', 'b>y:value']);
+export const crossing = pinsOf({ a: 'r0c0', x: 'r0c2', b: 'r0c1', y: 'r1c2' });
+export const noWayDown = { removedLinks: ['r0c1>r1c1'] as LinkId[] };
 export const longName = 'a_name_that_is_as_long_as_the_ids_of_ops_may_become_at_last';
 const longNames = kernelOf(
   { [`${longName}1`]: 'load', [`${longName}2`]: 'absolute', [`${longName}3`]: 'store' },
@@ -76,7 +82,15 @@ const longNames = kernelOf(
   'Größe "1"',
 );
 
-export type Case = [title: string, expected: Answer, Kernel, Fabric, TinyCase['pins'], Objective];
+export type Case = [
+  title: string,
+  expected: Answer,
+  Kernel,
+  Fabric,
+  TinyCase['pins'],
+  Objective,
+  weights?: Weights,
+];
 export const cases: Case[] = [
   ['a chain of three side by side', 2, chain, fabricOf('mam aaa'), {}, 'wire'],
   ['its ends pinned 3 hops apart', 3, chain, fabricOf('mam aam'), apart, 'wire'],
@@ -112,8 +126,48 @@ export const cases: Case[] = [
   ],
   ['an op that no tile implements', 'infeasible', chain, fabricOf('mmm mmm'), {}, 'wire'],
   ['no tile for any op and no link', 'infeasible', fan, fabricOf('a'), {}, 'wire'],
+  [
+    'the dear one of two goes straight, 5 · 2 + 4',
+    14,
+    twoWays,
+    fabricOf('mmm mmm', noWayDown),
+    crossing,
+    'wire',
+    weightsSchema.parse({ nets: { op_b: 5 } }),
+  ],
+  [
+    'the near consumer is the one that counts, 1 · 2.5 + 2 · 0.5',
+    3.5,
+    fan,
+    fabricOf('mmm'),
+    pinsOf({ in: 'r0c0' }),
+    'path',
+    weightsSchema.parse({ edges: { edge_0: 0.5, edge_1: 2.5 } }),
+  ],
+  [
+    'a net that counts nothing, beside one of a thousand million',
+    1e9,
+    chain,
+    fabricOf('mam aam'),
+    apart,
+    'wire',
+    weightsSchema.parse({ nets: { op_in: 0, op_abs: 1e9 } }),
+  ],
   ['ids of the greatest length', 2, longNames, fabricOf('mam aaa'), {}, 'wire'],
 ];
+
+/** Weights of which every reader prints the sum whole. */
+export const randomWeighted: Case[] = fc
+  .sample(weightedCaseArb(weightKinds.decimal as fc.Arbitrary<number>), { seed: 4712, numRuns: 6 })
+  .map(({ kernel, fabric, pins, objective, weights }, i) => [
+    `random case ${i} with weights`,
+    exhaustiveOptimum(kernel, fabric, pins, objective, weights) ?? 'infeasible',
+    kernel,
+    fabric,
+    pins,
+    objective,
+    weights,
+  ]);
 
 export const random: Case[] = fc
   .sample(tinyCaseArb, { seed: 4711, numRuns: 6 })
@@ -126,8 +180,8 @@ export const random: Case[] = fc
     objective,
   ]);
 
-export function textOf([, , kernel, fabric, pins, objective]: Case, format: TextFormat): string {
-  const text = modelText({ kernel, fabric, pins, objective }, format);
+export function textOf([, , kernel, fabric, pins, objective, weights]: Case, format: TextFormat): string {
+  const text = modelText({ kernel, fabric, pins, objective, weights }, format);
   if (!text.ok) throw new Error(JSON.stringify(text.error));
   return text.value;
 }

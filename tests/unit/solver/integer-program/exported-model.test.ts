@@ -4,7 +4,7 @@ import type { Kernel, OpId } from '@/lib/graph/kernel';
 import type { Placement, Routes } from '@/lib/mapping/mapping';
 import { verifyMapping } from '@/lib/mapping/verify';
 import { exhaustiveOptimum } from '../../../property/solver/exhaustive';
-import { type Case, cases, longName, random, textOf } from './exported-cases';
+import { type Case, cases, longName, random, randomWeighted, textOf } from './exported-cases';
 import { type OutsideSolvers, outsideSolvers, textFormats } from './outside-solvers';
 
 let solvers: OutsideSolvers;
@@ -15,11 +15,20 @@ afterAll(() => solvers.remove());
 
 describe('the exported model, read by GLPK, CBC and HiGHS', { timeout: 30_000 }, () => {
   it.each([...cases, ...random])('%s: %s', async (...one) => {
-    const [, expected, kernel, fabric, pins, objective] = one;
-    expect(exhaustiveOptimum(kernel, fabric, pins, objective) ?? 'infeasible').toBe(expected);
+    const [, expected, kernel, fabric, pins, objective, weights] = one;
+    expect(exhaustiveOptimum(kernel, fabric, pins, objective, weights) ?? 'infeasible').toBe(expected);
     const runs = textFormats.map((format) => solvers.answers(textOf(one, format), format));
     const all = { glpk: expected, cbc: expected, highs: expected };
     expect(await Promise.all(runs)).toEqual([all, all]);
+  });
+
+  it.each(randomWeighted)('%s: %s', async (...one) => {
+    const [, expected] = one;
+    const runs = textFormats.map((format) => solvers.answers(textOf(one, format), format));
+    for (const answer of (await Promise.all(runs)).flatMap((run) => Object.values(run))) {
+      if (expected === 'infeasible') expect(answer).toBe(expected);
+      else expect(answer).toBeCloseTo(expected, 6);
+    }
   });
 
   it('meets both ends among the random cases', () => {
@@ -87,7 +96,7 @@ describe('names in the exported model', () => {
 
   it('read back into a mapping that the verifier passes: the optimal points of CBC', async () => {
     const wire = [...cases, ...random].filter(
-      ([, end, , , , goal]) => end !== 'infeasible' && goal === 'wire',
+      ([, end, , , , goal, weights]) => end !== 'infeasible' && goal === 'wire' && !weights,
     );
     expect(wire.length).toBeGreaterThanOrEqual(5);
     for (const one of wire) {
