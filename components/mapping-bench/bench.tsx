@@ -13,7 +13,7 @@ import { shortName } from '@/lib/mapping/picture/op-label';
 import type { BenchCalls } from './bench-calls';
 import { BenchPanes } from './bench-panes';
 import { NameDialog } from './keep-dialog';
-import { type BenchView, previewView } from './panes/bench-view';
+import { type BenchView, countedIn, previewView } from './panes/bench-view';
 import { contentOf, documentOf } from './save/save-machine';
 import { SaveBanner, SaveStatus } from './save/save-status';
 import { useBenchSave } from './save/use-bench-save';
@@ -228,12 +228,17 @@ function usePreview(solving: BenchSolve, asking: BenchAsk): BenchView {
   const facts = useBench((state) => state.facts);
   const byTile = useBench((state) => state.byTile);
   const ownPins = useBench((state) => state.content.pins);
+  const provenance = useBench((state) => state.content.provenance);
   const offered = asking.previewing ? asking.offered : null;
   const best = offered?.result ?? (solving.previewing ? solving.solve?.best : null) ?? null;
   const pins = offered?.pins ?? ownPins;
+  const made = offered?.result.provenance ?? solving.solve?.settings ?? null;
   return useMemo(
-    () => (best ? previewView(store, best, pins) : { facts, byTile, preview: false }),
-    [best, store, pins, facts, byTile],
+    () =>
+      best
+        ? previewView(store, best, pins, countedIn(made))
+        : { facts, byTile, preview: false, counted: countedIn(provenance) },
+    [best, store, pins, made, facts, byTile, provenance],
   );
 }
 

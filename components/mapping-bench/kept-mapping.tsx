@@ -14,9 +14,11 @@ import { shortName } from '@/lib/mapping/picture/op-label';
 import type { Result } from '@/lib/result';
 import { BenchPanes } from './bench-panes';
 import { NameDialog } from './keep-dialog';
+import { countedIn } from './panes/bench-view';
 import { PanelTitle } from './panes/figures';
+import { MadeWithWeights } from './solve/made-with-weights';
 import { ProvedBlock } from './solve/making-status';
-import { durationText, objectiveNames } from './solve/solve-state';
+import { boundText, durationText, objectiveLabel, valueText } from './solve/solve-state';
 import { BenchProvider, useBench, useBenchStore } from './store/bench-context';
 import { createBenchStore } from './store/bench-store';
 
@@ -116,13 +118,14 @@ function KeptScreen(props: KeptMappingProps) {
         }
       />
       <BenchPanes
-        shown={{ facts, byTile, preview: false }}
+        shown={{ facts, byTile, preview: false, counted: countedIn(document.provenance) }}
         kernelTitle={`version ${document.kernel.version ?? '–'} · ${props.kernel.ops.length} ops · ${props.kernel.edges.length} connections`}
         fabricTitle={`${document.fabric.name} · version ${document.fabric.version ?? '–'} · ${props.fabric.topology}`}
         solvePanel={null}
         more={
           <>
             <Making {...props} shownName={name} files={files} />
+            <MadeWithWeights provenance={document.provenance} />
             <ConnectionHops />
           </>
         }
@@ -175,9 +178,9 @@ function Making(props: KeptMappingProps & { shownName: string; files: string }) 
   else {
     rows.push(
       ['Engine', provenance.engine],
-      ['Aim', objectiveNames[provenance.objective]],
-      ['Found', provenance.objectiveValue],
-      ['Lower bound', Math.round(provenance.bound * 100) / 100],
+      ['Aim', objectiveLabel(provenance.objective, provenance.weights)],
+      ['Found', valueText(provenance.objectiveValue)],
+      ['Lower bound', boundText(provenance.bound, provenance.objective, provenance.weights)],
       ['Time', `${durationText(provenance.elapsedMs)} of ${durationText(provenance.timeLimitMs)}`],
       ['Seed', provenance.seed],
       ['Changed by hand', provenance.changedByHand ? 'yes' : 'no'],

@@ -3,7 +3,9 @@
 import type { ReactNode } from 'react';
 import { parseLink, tileLabel } from '@/lib/fabric/tiles';
 import { unitSpec } from '@/lib/fabric/unit-library';
+import { objectiveOf } from '@/lib/mapping/metrics';
 import { ruleText } from '@/lib/mapping/violation';
+import { objectiveLabel, valueText } from '../solve/solve-state';
 import { useBench, useBenchStore } from '../store/bench-context';
 import type { BenchView } from './bench-view';
 
@@ -29,6 +31,7 @@ export function Figure({ label, value, broken }: { label: string; value: ReactNo
 
 /** The mapping's figures as they stand. */
 export function Figures({ shown }: { shown: BenchView }) {
+  const { counted } = shown;
   const { metrics } = shown.facts;
   const { fullestLink, maxHops } = metrics;
   return (
@@ -38,6 +41,12 @@ export function Figures({ shown }: { shown: BenchView }) {
         <Figure label="Placed" value={`${metrics.placedOps} of ${metrics.totalOps}`} />
         <Figure label="Wire hops" value={metrics.totalWireHops} />
         <Figure label="Path hops" value={metrics.totalPathHops} />
+        {counted ? (
+          <Figure
+            label={objectiveLabel(counted.objective, counted.weights)}
+            value={valueText(objectiveOf(metrics, counted.objective, counted.weights))}
+          />
+        ) : null}
         <Figure
           label="Longest path"
           value={maxHops === null ? metrics.longestPathHops : `${metrics.longestPathHops} of ${maxHops}`}

@@ -2,9 +2,10 @@
 
 import { Button } from '@/components/ui/button';
 import { Notice } from '@/components/ui/notice';
+import { objectiveName } from '@/lib/mapping/weights';
 import { useBench } from '../store/bench-context';
 import { SolveProgress } from './solve-progress';
-import { anotherSentence, isLive, objectiveNames } from './solve-state';
+import { anotherSentence, isLive, valueText } from './solve-state';
 import type { BenchAsk } from './use-bench-ask';
 
 interface AnotherAnswerProps {
@@ -29,7 +30,7 @@ export function AnotherAnswer({ asking, readOnly, busy }: AnotherAnswerProps) {
         isLive(solve) ? (
           <SolveProgress
             solve={solve}
-            title={`Another of at most ${ask.objectiveValue} ${objectiveNames[solve.settings.objective].toLowerCase()}`}
+            title={`Another of at most ${valueText(ask.objectiveValue)} ${objectiveName(solve.settings.objective, solve.settings.weights)}`}
             stopLabel="Stop looking"
             readOnly={readOnly}
             onStop={asking.stop}

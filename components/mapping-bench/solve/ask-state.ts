@@ -1,9 +1,10 @@
 /** What a solve with a question of its own has answered, and the words for it. */
 import type { Pins, Placement } from '@/lib/mapping/mapping';
+import { objectiveName, type Weights } from '@/lib/mapping/weights';
 import type { Answer, PinPrice } from '@/lib/solver/pin-price';
 import { MOST_AVOIDED } from '@/lib/solver/problem';
 import { isSettled, otherSide, type PinPriceAsk, pinsOfSide, priceOf } from '@/lib/solver/solve-ask';
-import { type AskView, isLive, objectiveNames, type Solve } from './solve-state';
+import { type AskView, boundText, isLive, type Solve, valueText } from './solve-state';
 
 export type PriceView = Extract<AskView, { kind: 'pin price' }>;
 
@@ -12,15 +13,17 @@ export interface PriceAnswer {
   price: PinPrice;
   withPin: Answer;
   withoutPin: Answer;
+  /** Of the solve; the other side is known for the same. */
+  weights: Weights | undefined;
 }
 
 /** As far as the solve has come, with what was known of the other side when it was asked for. */
 export function priceAnswer(solve: Solve): PriceAnswer | null {
-  const { ask, objective } = solve.settings;
+  const { ask, objective, weights } = solve.settings;
   if (ask?.kind !== 'pin price') return null;
   const own = ownAnswer(solve, objective);
   const [withPin, withoutPin] = ask.side === 'with pin' ? [own, ask.other] : [ask.other, own];
-  return { ask, price: priceOf(ask.side, own, ask.other), withPin, withoutPin };
+  return { ask, price: priceOf(ask.side, own, ask.other), withPin, withoutPin, weights };
 }
 
 function ownAnswer({ outcome, bestObjective, bound }: Solve, objective: Answer['objective']): Answer {
@@ -60,33 +63,35 @@ function samePins(a: Pins, b: Pins): boolean {
 }
 
 /** "Without this pin: 38 wire hops, proved. With it: 41 wire hops, proved. The pin costs 3." */
-export function priceSentence({ ask, price, withPin, withoutPin }: PriceAnswer): string {
+export function priceSentence({ ask, price, withPin, withoutPin, weights }: PriceAnswer): string {
+  const side = (answer: Answer) => sideText(answer, weights);
   const [first, second] = ask.isPinned
-    ? [`Without this pin: ${sideText(withoutPin)}`, `With it: ${sideText(withPin)}`]
-    : [`Pinned here: ${sideText(withPin)}`, `Not pinned: ${sideText(withoutPin)}`];
-  return `${first}. ${second}. ${priceText(price, ask.isPinned)}`;
+    ? [`Without this pin: ${side(withoutPin)}`, `With it: ${side(withPin)}`]
+    : [`Pinned here: ${side(withPin)}`, `Not pinned: ${side(withoutPin)}`];
+  return `${first}. ${second}. ${priceText(price, ask.isPinned, (least) => boundText(least, withPin.objective, weights))}`;
 }
 
-function sideText({ status, objective, objectiveValue, bound }: Answer): string {
-  const hops = objectiveNames[objective].toLowerCase();
-  const least = `at least ${wholeBound(bound)}`;
+function sideText(
+  { status, objective, objectiveValue, bound }: Answer,
+  weights: Weights | undefined,
+): string {
+  const hops = objectiveName(objective, weights);
+  const least = `at least ${boundText(bound ?? 0, objective, weights)}`;
   if (status === 'infeasible') return 'no legal mapping';
   if (objectiveValue === null) return bound ? `none found, ${least}` : 'none found';
   return status === 'optimal'
-    ? `${objectiveValue} ${hops}, proved`
-    : `${objectiveValue} ${hops} found, ${least}`;
+    ? `${valueText(objectiveValue)} ${hops}, proved`
+    : `${valueText(objectiveValue)} ${hops} found, ${least}`;
 }
 
-const wholeBound = (bound: number | null): number => Math.ceil((bound ?? 0) - 1e-6);
-
-function priceText(price: PinPrice, isPinned: boolean): string {
+function priceText(price: PinPrice, isPinned: boolean, leastText: (least: number) => string): string {
   const costs = isPinned ? 'The pin costs' : 'The pin would cost';
   switch (price.kind) {
     case 'exact':
-      return `${costs} ${price.hops === 0 ? 'nothing' : price.hops}.`;
+      return `${costs} ${price.hops === 0 ? 'nothing' : valueText(price.hops)}.`;
     case 'between': {
-      const least = wholeBound(price.leastHops);
-      return `${costs} ${least === 0 ? 'at most' : `from ${least} to`} ${price.mostHops}.`;
+      const least = leastText(price.leastHops);
+      return `${costs} ${least === '0' ? 'at most' : `from ${least} to`} ${valueText(price.mostHops)}.`;
     }
     case 'makes infeasible':
       return `The pin ${isPinned ? 'leaves' : 'would leave'} no legal mapping.`;

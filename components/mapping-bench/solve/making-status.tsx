@@ -1,10 +1,11 @@
 'use client';
 
 import type { Provenance } from '@/lib/mapping/mapping';
+import { objectiveName } from '@/lib/mapping/weights';
 import { useBench } from '../store/bench-context';
 import { ProofDetails } from './proof-details';
 import type { ProofFiles } from './proof-words';
-import { durationText, gapText, objectiveNames } from './solve-state';
+import { boundText, durationText, gapText, valueText } from './solve-state';
 
 /** What was proved of the mapping on the bench. */
 export function MakingStatus({ files }: { files: ProofFiles }) {
@@ -25,13 +26,16 @@ interface ProvedBlockProps {
 export function ProvedBlock({ provenance, files, href }: ProvedBlockProps) {
   if (provenance.by === 'hand')
     return <p className="text-sm text-quiet">Placed by hand; nothing is proved.</p>;
-  const { objective, objectiveValue, bound, status, elapsedMs, changedByHand, certificate } = provenance;
-  const name = objectiveNames[objective].toLowerCase();
+  const { objective, weights, objectiveValue, bound, status, elapsedMs, changedByHand, certificate } =
+    provenance;
+  const name = objectiveName(objective, weights);
+  const value = valueText(objectiveValue);
+  const least = boundText(bound, objective, weights);
   if (changedByHand) {
     return (
       <p className="text-sm text-quiet">
-        Changed by hand since the solve, which had found {objectiveValue} {name}
-        {status === 'optimal' ? ' and proved them optimal' : `, lower bound ${bound}`}.
+        Changed by hand since the solve, which had found {value} {name}
+        {status === 'optimal' ? ' and proved them optimal' : `, lower bound ${least}`}.
       </p>
     );
   }
@@ -42,7 +46,7 @@ export function ProvedBlock({ provenance, files, href }: ProvedBlockProps) {
           ✓ Proved optimal · {durationText(elapsedMs)}
         </p>
         <p className="mt-1 text-sm text-quiet">
-          No legal mapping has fewer than {objectiveValue} {name}.
+          No legal mapping has fewer than {value} {name}.
         </p>
         {certificate ? <ProofDetails certificate={certificate} files={files} href={href} /> : null}
       </>
@@ -54,7 +58,7 @@ export function ProvedBlock({ provenance, files, href }: ProvedBlockProps) {
         Feasible, {gapText(objectiveValue, bound)}
       </p>
       <p className="mt-1 text-sm text-quiet">
-        {objectiveValue} {name}, lower bound {Math.ceil(bound - 1e-6)}, after {durationText(elapsedMs)}.
+        {value} {name}, lower bound {least}, after {durationText(elapsedMs)}.
       </p>
     </>
   );

@@ -5,6 +5,7 @@ import { useToast } from '@/components/ui/toast';
 import { writeCertificateJson } from '@/lib/formats/certificate-json';
 import type { Certificate } from '@/lib/mapping/certificate';
 import { methodSentence, type ProofFiles, proveCommand, repeatSentence } from './proof-words';
+import { valueText } from './solve-state';
 
 interface ProofDetailsProps {
   certificate: Certificate;
@@ -83,7 +84,7 @@ function Levels({ levels }: Pick<Certificate, 'levels'>) {
       <tbody className="font-mono tabular-nums">
         {levels.map(({ cutoff, nodes }, i) => (
           <tr key={i} className="border-t border-rule">
-            <td className="py-0.5">{Math.round(cutoff * 1000) / 1000}</td>
+            <td className="py-0.5">{valueText(cutoff)}</td>
             <td className="text-right">{grouped(nodes)}</td>
           </tr>
         ))}

@@ -1,11 +1,11 @@
 /** The words for how an answer was proved. */
 import type { Certificate } from '@/lib/mapping/certificate';
-import { objectiveNames } from './solve-state';
+import { objectiveName } from '@/lib/mapping/weights';
 
 /** What proves it, in one sentence. */
 export function methodSentence(certificate: Certificate): string {
-  const { method, status, objective, levels } = certificate;
-  const name = objectiveNames[objective].toLowerCase();
+  const { method, status, objective, weights, levels } = certificate;
+  const name = objectiveName(objective, weights);
   if (status === 'infeasible') {
     switch (method) {
       case 'counting':

@@ -4,11 +4,12 @@ import { Button } from '@/components/ui/button';
 import { Notice } from '@/components/ui/notice';
 import type { TileId } from '@/lib/fabric/fabric';
 import type { OpId } from '@/lib/graph/kernel';
+import { objectiveName } from '@/lib/mapping/weights';
 import { useBench, useBenchStore } from '../store/bench-context';
 import { BestChart } from './best-chart';
 import { ProofDetails } from './proof-details';
 import type { SolvePanelProps } from './solve-panel-props';
-import { durationText, gapText, objectiveNames, type Solve, solveResult, stopText } from './solve-state';
+import { durationText, gapText, type Solve, solveResult, stopText, valueText } from './solve-state';
 
 /** How the last solve of this bench ended, and its result if the bench does not hold it already. */
 export function SolveEnd(props: SolvePanelProps & { solve: Solve }) {
@@ -36,7 +37,7 @@ function Offer({ solve, previewing, readOnly, onPreview, onTake }: SolvePanelPro
   );
   const result = solveResult(solve);
   if (result?.provenance.by !== 'solver') return null;
-  const { objectiveValue, bound, objective, elapsedMs, status } = result.provenance;
+  const { objectiveValue, bound, objective, weights, elapsedMs, status } = result.provenance;
   return (
     <Notice className="mt-2" tone={status === 'optimal' ? 'proven' : 'plain'} live>
       <p className="font-semibold">
@@ -44,7 +45,7 @@ function Offer({ solve, previewing, readOnly, onPreview, onTake }: SolvePanelPro
         {durationText(elapsedMs)}
       </p>
       <p>
-        A solve found {objectiveValue} {objectiveNames[objective].toLowerCase()}.{' '}
+        A solve found {valueText(objectiveValue)} {objectiveName(objective, weights)}.{' '}
         {isOwn ? 'Your own changes are untouched.' : 'Another mapping is on the bench.'}
       </p>
       <div className="mt-2 flex flex-wrap gap-2">

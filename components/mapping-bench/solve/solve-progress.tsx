@@ -1,7 +1,8 @@
 import { Button } from '@/components/ui/button';
 import { CheckboxField } from '@/components/ui/field';
+import { isWeighted, objectiveName } from '@/lib/mapping/weights';
 import { BestChart } from './best-chart';
-import { durationText, phaseText, type Solve } from './solve-state';
+import { boundText, durationText, phaseText, type Solve, valueText } from './solve-state';
 
 interface SolveProgressProps {
   solve: Solve;
@@ -17,6 +18,7 @@ interface SolveProgressProps {
 /** A solve while it is queued or runs. */
 export function SolveProgress({ solve, title, stopLabel, readOnly, onStop, preview }: SolveProgressProps) {
   const { bestObjective, bound, gapRatio } = solve;
+  const { objective, weights } = solve.settings;
   const queued = solve.state === 'queued';
   return (
     <div className="mt-2">
@@ -25,6 +27,9 @@ export function SolveProgress({ solve, title, stopLabel, readOnly, onStop, previ
         {queued ? 'Waiting for a worker' : phaseText(solve.phase)}
         {solve.cancelRequested ? ', stopping' : ''}
       </p>
+      {isWeighted(weights, objective) ? (
+        <p className="text-sm text-quiet">Values are {objectiveName(objective, weights)}.</p>
+      ) : null}
       <div
         className="mt-1 h-1.5 bg-(--channel)"
         role="progressbar"
@@ -40,8 +45,8 @@ export function SolveProgress({ solve, title, stopLabel, readOnly, onStop, previ
       </div>
       <dl className="mt-2 grid grid-cols-3 gap-x-2 gap-y-1 text-sm">
         {[
-          ['Best', bestObjective ?? '–'],
-          ['Bound', bound === null ? '–' : Math.round(bound * 100) / 100],
+          ['Best', bestObjective === null ? '–' : valueText(bestObjective)],
+          ['Bound', bound === null ? '–' : boundText(bound, objective, weights)],
           ['Gap', gapRatio === null ? '–' : `${Math.round(gapRatio * 100)} %`],
           ['Time', durationText(solve.elapsedMs)],
           ['Nodes', solve.nodes.toLocaleString('en-GB')],

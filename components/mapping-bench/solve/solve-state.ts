@@ -13,7 +13,13 @@ import {
   type Routes,
   routesSchema,
 } from '@/lib/mapping/mapping';
-import { effectiveWeights, weightsSchema } from '@/lib/mapping/weights';
+import {
+  effectiveWeights,
+  isWeighted,
+  objectiveName,
+  type Weights,
+  weightsSchema,
+} from '@/lib/mapping/weights';
 import { engineChoices } from '@/lib/solver/options';
 
 const explanationSchema = z
@@ -128,7 +134,8 @@ export function solveResult(solve: Solve): SolveResult | null {
 export function anotherSentence(solve: Solve): string {
   const { outcome, state, best, settings } = solve;
   if (best) {
-    return `Another mapping of ${best.objectiveValue} ${objectiveNames[settings.objective].toLowerCase()} was found; it is offered beside the fabric.`;
+    const hops = objectiveName(settings.objective, settings.weights);
+    return `Another mapping of ${valueText(best.objectiveValue)} ${hops} was found; it is offered beside the fabric.`;
   }
   if (outcome?.explanation?.code === 'no other') return 'There is no other, besides mirror images.';
   if (state === 'cancelled') return 'It was stopped before another one was found; there may be one.';
@@ -147,10 +154,22 @@ export function durationText(elapsedMs: number): string {
 export function gapText(value: number, bound: number): string {
   if (value <= bound) return 'no better one is possible';
   if (bound <= 0) return 'no useful bound yet';
-  return `gap at most ${Math.ceil((100 * (value - bound)) / value)} %`;
+  const percent = (100 * (value - bound)) / value;
+  return percent < 0.01 ? 'gap below 0.01 %' : `gap at most ${Math.ceil(percent)} %`;
 }
 
-export const objectiveNames: Record<Objective, string> = { wire: 'Wire hops', path: 'Path hops' };
+/** "weighted wire hops", with a capital where it begins a label. */
+export function objectiveLabel(objective: Objective, weights?: Weights): string {
+  const name = objectiveName(objective, weights);
+  return name.charAt(0).toUpperCase() + name.slice(1);
+}
+
+/** Without the noise of sums of decimal fractions. */
+export const valueText = (value: number): string => String(Math.round(value * 1e6) / 1e6);
+
+/** A proven bound, never shown higher than it is; whole where all hops count 1. */
+export const boundText = (bound: number, objective: Objective, weights?: Weights): string =>
+  String(isWeighted(weights, objective) ? Math.floor(bound * 1e6 + 1e-3) / 1e6 : Math.ceil(bound - 1e-6));
 
 const phases: Record<string, string> = {
   presolve: 'Looking for what cannot fit',

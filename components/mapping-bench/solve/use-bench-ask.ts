@@ -5,6 +5,7 @@ import type { OpId } from '@/lib/graph/kernel';
 import { samePlacement } from '@/lib/mapping/honest-provenance';
 import type { Pins, Placement } from '@/lib/mapping/mapping';
 import { objectiveOf } from '@/lib/mapping/metrics';
+import { objectiveName } from '@/lib/mapping/weights';
 import { type Ask, pinsOfSide } from '@/lib/solver/solve-ask';
 import type { BenchContent } from '../store/bench-content';
 import { useBench } from '../store/bench-context';
@@ -13,11 +14,11 @@ import { avoidedPlacements, furtherAsk, priceAnswer, priceSentence, supposedSide
 import {
   anotherSentence,
   isLive,
-  objectiveNames,
   type Solve,
   type SolveResult,
   type SolveSettings,
   solveResult,
+  valueText,
 } from './solve-state';
 import { useSolve } from './use-solve';
 import { type SolveJobParts, useSolveJob } from './use-solve-job';
@@ -149,5 +150,5 @@ function useOffered(workspace: string, solve: Solve | null): OfferedMapping | nu
   }, [from, ask, pins]);
 }
 
-const takenText = ({ best, settings: { objective } }: Solve): string =>
-  `Another mapping, of ${best?.objectiveValue} ${objectiveNames[objective].toLowerCase()}, is on the bench. Undo brings back the former.`;
+const takenText = ({ best, settings: { objective, weights } }: Solve): string =>
+  `Another mapping, of ${valueText(best?.objectiveValue ?? 0)} ${objectiveName(objective, weights)}, is on the bench. Undo brings back the former.`;
