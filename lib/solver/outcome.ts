@@ -108,7 +108,7 @@ export interface BestMapping {
   routes: Routes;
 }
 
-export type SolvePhase = 'presolve' | 'search' | 'bound' | 'exact' | 'routes';
+export type SolvePhase = 'presolve' | 'search' | 'bound' | 'exact' | 'ties' | 'routes';
 
 export interface SolveProgress {
   phase: SolvePhase;

@@ -43,6 +43,8 @@ export interface SolveState {
   /** Takes a proven bound if it is higher, and reports it. A bound above a legal mapping is refused: false. */
   raise(bound: number, method: ProofNotes['method']): boolean;
   isProved(): boolean;
+  /** Out of time or stopped by hand, whatever is proved. */
+  isOutOfTime(): boolean;
   /** Out of time, stopped by hand, or proved. */
   shouldStop(): boolean;
   noteEngine(name: string): void;
@@ -130,6 +132,7 @@ export function solveState(
       }
       return true;
     },
+    isOutOfTime: () => remainingMs() <= 0 || clock.shouldStop(),
     shouldStop: () => isProved() || remainingMs() <= 0 || clock.shouldStop(),
     noteEngine: (name) => {
       if (!engines.includes(name)) engines.push(name);

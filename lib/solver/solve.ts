@@ -20,6 +20,7 @@ import { type BadInput, type CheckedProblem, checkProblem, type PlacementProblem
 import { routedPass } from './routed-pass';
 import { improvePass, searchPass } from './search-pass';
 import { forSearch } from './search-weights';
+import { shortenPass } from './shorten-pass';
 import { type SolveClock, type SolveState, solveState } from './solve-state';
 import { type WeightScale, weightScale } from './weight-scale';
 
@@ -82,12 +83,17 @@ function runPasses(
   }
   const searched = forIt(instance);
   searchPass(problem, searched, options, state);
+  const breakTies = () => {
+    if (scale.kind !== 'coarse' && state.isProved()) shortenPass(problem, instance, state);
+  };
+  if (options.engine === 'auto') breakTies();
   if (options.engine === 'search' || state.shouldStop()) return state.finish('search complete');
   if (options.engine === 'auto') {
     const exact = exactPass(problem, instance, options, state, (stretch) =>
       improvePass(problem, searched, options, state, stretch),
     );
     if (exact.kind === 'infeasible') return state.infeasible(exact.explanation, 'exact search');
+    breakTies();
     const complete = scale.kind === 'coarse' ? 'weights too far apart' : 'search complete';
     return state.finish(exact.kind === 'unfinished' ? exact.stop : complete);
   }

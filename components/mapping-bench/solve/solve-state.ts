@@ -176,6 +176,7 @@ const phases: Record<string, string> = {
   search: 'Searching for good placements',
   bound: 'Raising the lower bound',
   exact: 'Proving by exact search',
+  ties: 'Looking for shorter longest paths',
   routes: 'Finding routes',
 };
 export const phaseText = (phase: string): string => phases[phase] ?? 'Waiting for a worker';
