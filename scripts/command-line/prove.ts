@@ -19,11 +19,19 @@ import type { PlacementProblem } from '../../lib/solver/problem';
 import { problemDigest } from '../../lib/solver/problem-digest';
 import { readArguments, wholeNumber } from './arguments';
 import { printDocument, printFaults } from './print';
-import { type Faults, readCertificate, readFabric, readKernel, readMapping, readPins } from './read-document';
+import {
+  type Faults,
+  readCertificate,
+  readFabric,
+  readKernel,
+  readMapping,
+  readPins,
+  readWeights,
+} from './read-document';
 import { withSolver } from './solve';
 import { usage } from './usage';
 
-const names = ['kernel', 'fabric', 'certificate', 'pins', 'mapping', 'time-limit-ms'] as const;
+const names = ['kernel', 'fabric', 'certificate', 'pins', 'weights', 'mapping', 'time-limit-ms'] as const;
 type Given = Partial<Record<(typeof names)[number], string>>;
 
 interface ProveInput {
@@ -62,16 +70,30 @@ function readInput(given: Given): Result<ProveInput, Faults> {
   const certificate = readCertificate(given.certificate ?? '');
   const pins = given.pins === undefined ? ok(null) : readPins(given.pins);
   const mapping = given.mapping === undefined ? ok(null) : readMapping(given.mapping);
-  const faults = [kernel, fabric, certificate, pins, mapping].flatMap((part) => (part.ok ? [] : part.error));
+  const weights = given.weights === undefined ? ok(null) : readWeights(given.weights);
+  const parts = [kernel, fabric, certificate, pins, weights, mapping];
+  const faults: Faults = parts.flatMap((part) => (part.ok ? [] : part.error));
   const timeLimitMs = wholeNumber(given['time-limit-ms'] ?? String(SOLVE_LIMITS.timeLimitMs)) ?? 0;
   if (timeLimitMs < 1 || timeLimitMs > SOLVE_LIMITS.timeLimitMs) {
     faults.push(`--time-limit-ms: a whole number from 1 to ${SOLVE_LIMITS.timeLimitMs}`);
   }
-  if (!kernel.ok || !fabric.ok || !certificate.ok || !pins.ok || !mapping.ok || faults.length > 0) {
+  if (
+    !kernel.ok ||
+    !fabric.ok ||
+    !certificate.ok ||
+    !pins.ok ||
+    !weights.ok ||
+    !mapping.ok ||
+    faults.length > 0
+  ) {
     return err(faults);
   }
   const again = problemAgain(certificate.value, { kernel: kernel.value, fabric: fabric.value });
-  const problem = pins.value ? { ...again, pins: pins.value } : again;
+  const problem = {
+    ...again,
+    ...(pins.value && { pins: pins.value }),
+    ...(weights.value && { weights: weights.value }),
+  };
   return ok({ certificate: certificate.value, problem, mapping: mapping.value, timeLimitMs });
 }
 
@@ -79,7 +101,9 @@ function readInput(given: Given): Result<ProveInput, Faults> {
 function otherProblem(given: Given, { problemDigest: certified }: Certificate, problem: PlacementProblem) {
   const found = problemDigest(problem);
   if (found === certified) return null;
-  const files = [given.kernel, given.fabric, ...(given.pins ? [given.pins] : [])].join(', ');
+  const files = [given.kernel, given.fabric, given.pins, given.weights]
+    .filter((file) => file !== undefined)
+    .join(', ');
   return `${given.certificate}:1:1: problemDigest: This certificate is of another problem: its digest is ${certified}, that of ${files} is ${found}.`;
 }
 

@@ -27,6 +27,7 @@ npm run -s pinloom -- prove --kernel K --fabric F --certificate C [options]
   Solves the certificate's problem again, from its seed and start, and holds what comes out against it.
   --certificate C     certificate, .json, or what place has printed
   --pins P            pins, .json; the certificate's own where this is left out
+  --weights W         weights, .json; the certificate's own where this is left out
   --mapping M         mapping, .json, to be checked as the answer that was proved
   --time-limit-ms N   3600000 by default
 

@@ -4,6 +4,7 @@ import { Button, ButtonLink } from '@/components/ui/button';
 import { useToast } from '@/components/ui/toast';
 import { writeCertificateJson } from '@/lib/formats/certificate-json';
 import type { Certificate } from '@/lib/mapping/certificate';
+import { unequalWeights } from '@/lib/mapping/weights';
 import { methodSentence, type ProofFiles, proveCommand, repeatSentence } from './proof-words';
 import { valueText } from './solve-state';
 
@@ -47,12 +48,14 @@ const opsText = (record: object | null): string => {
 };
 
 function ProofFigures({ certificate }: { certificate: Certificate }) {
+  const weighted = unequalWeights(certificate.weights, certificate.objective).length;
   const rows: [string, string | number][] = [
     ['Engine version', certificate.engineVersion],
     ['Nodes', grouped(certificate.nodes)],
     ['Choices struck out', grouped(certificate.struckTiles)],
     ['Seed', certificate.seed],
     ['Pinned', opsText(certificate.pins)],
+    ...(weighted > 0 ? [['Weights other than 1', weighted] as [string, number]] : []),
     ['Placed at the start', opsText(certificate.start)],
   ];
   return (

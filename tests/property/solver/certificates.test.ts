@@ -6,7 +6,7 @@ import { defaultSolveOptions, type SolveOptions } from '@/lib/solver/options';
 import type { SolveOutcome } from '@/lib/solver/outcome';
 import type { PlacementProblem } from '@/lib/solver/problem';
 import { solve } from '@/lib/solver/solve';
-import { tinyCaseArb } from './tiny-cases';
+import { tinyCaseArb, weightedCaseArb, weightKinds } from './tiny-cases';
 
 const SEED = 20260412;
 const LIMIT_MS = 3_600_000;
@@ -27,7 +27,7 @@ it('whatever is proved carries a certificate, which agrees when its problem is s
   const seen = new Map<ProofMethod, number>();
   fc.assert(
     fc.property(
-      tinyCaseArb,
+      fc.oneof(tinyCaseArb, weightedCaseArb(fc.oneof(...Object.values(weightKinds)))),
       fc.nat(1000),
       fc.integer({ min: 0, max: 100_000 }),
       fc.boolean(),

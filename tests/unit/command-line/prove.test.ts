@@ -65,6 +65,11 @@ describe('pinloom prove', { timeout: 60_000 }, () => {
     const mapping = scratch('weighted.mapping.json', JSON.stringify(mappingOf(document)));
     const { code, answer } = prove(...chain, '--certificate', path, '--mapping', mapping);
     expect({ code, agrees: answer.agrees }).toEqual({ code: 0, agrees: true });
+    expect(prove(...chain, '--certificate', path, '--weights', weights).code).toBe(0);
+    const others = scratch('v.json', '{"format":"pinloom.weights","formatVersion":1,"nets":{"op_raw":2}}');
+    const other = prove(...chain, '--certificate', path, '--weights', others);
+    expect(other.code).toBe(2);
+    expect(other.stderr).toContain('This certificate is of another problem');
   });
 
   it('agrees with a proof that nothing fits, in a file of its own', () => {
