@@ -11,7 +11,7 @@ import type { Fabric } from '../lib/fabric/fabric';
 import type { Kernel } from '../lib/graph/kernel';
 import { objectives } from '../lib/mapping/mapping';
 import { type EngineChoice, engineChoices, SOLVE_LIMITS } from '../lib/solver/options';
-import { runSolve } from '../lib/solver/worker/client';
+import { runSolve, threadsHere } from '../lib/solver/worker/client';
 import { compareEngines, type EngineRun } from './bench/compare-engines';
 
 const { values } = parseArgs({
@@ -50,6 +50,7 @@ async function measure(kernel: Kernel, fabric: Fabric, engine: EngineChoice) {
       { engine, timeLimitMs, seed: 1, nodeLimit: null, searchTries: null },
       {
         threadPath,
+        threads: threadsHere(),
         onProgress: ({ best }) => {
           if (!best) return;
           firstMs ??= performance.now() - startMs;

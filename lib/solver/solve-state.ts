@@ -23,12 +23,18 @@ export interface SolveClock {
   shouldStop(): boolean;
   /** Why `shouldStop` is true, where it is not a person's wish. */
   stopCause?(): 'stopped' | 'memory limit';
+  /** A verified mapping from another thread that has not been handed over yet; null when there is none. */
+  news?(): BestMapping | null;
 }
+
+/** How often another thread's mappings are looked for. */
+const NEWS_EVERY_MS = 50;
 
 /** How often the number of nodes is reported while nothing else happens. */
 const NODES_EVERY_MS = 250;
 
 /** Engines whose work is counted in moves and nodes; others look at the time themselves. */
+const SECOND_THREAD = 'second thread';
 const countedEngines: readonly string[] = ['search', 'exact'];
 
 /** While a solve runs, values and bounds are in its scale's unit; reports and outcomes are in the problem's. */
@@ -104,6 +110,23 @@ export function solveState(
     if (clock.shouldStop()) return clock.stopCause?.() ?? 'stopped';
     return remainingMs() <= 0 ? 'time limit' : fallback;
   };
+  const offer = (mapping: BestMapping) => {
+    if (best && compareMappings(mapping, best) >= 0) return;
+    best = mapping;
+    told = { ...mapping, objectiveValue: scale.toValue(mapping.objectiveValue) };
+    if (mapping.objectiveValue - bound <= tolerance) bound = mapping.objectiveValue;
+    report();
+  };
+  let newsMs = 0;
+  const takeNews = () => {
+    if (!clock.news || elapsedMs() - newsMs < NEWS_EVERY_MS) return;
+    newsMs = elapsedMs();
+    for (let mapping = clock.news(); mapping; mapping = clock.news()) {
+      // Its own name among the engines says that the solve cannot be repeated node for node.
+      if (!engines.includes(SECOND_THREAD)) engines.push(SECOND_THREAD);
+      offer({ ...mapping, objectiveValue: scale.fromValue(mapping.objectiveValue) });
+    }
+  };
   return {
     best: () => best,
     bound: () => bound,
@@ -114,13 +137,7 @@ export function solveState(
       phase = next;
       report();
     },
-    offer: (mapping) => {
-      if (best && compareMappings(mapping, best) >= 0) return;
-      best = mapping;
-      told = { ...mapping, objectiveValue: scale.toValue(mapping.objectiveValue) };
-      if (mapping.objectiveValue - bound <= tolerance) bound = mapping.objectiveValue;
-      report();
-    },
+    offer,
     raise: (claimed, by) => {
       const next = claimed - doubt;
       if (!Number.isFinite(next)) return false;
@@ -133,7 +150,10 @@ export function solveState(
       return true;
     },
     isOutOfTime: () => remainingMs() <= 0 || clock.shouldStop(),
-    shouldStop: () => isProved() || remainingMs() <= 0 || clock.shouldStop(),
+    shouldStop: () => {
+      takeNews();
+      return isProved() || remainingMs() <= 0 || clock.shouldStop();
+    },
     noteEngine: (name) => {
       if (!engines.includes(name)) engines.push(name);
     },

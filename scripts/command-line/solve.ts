@@ -5,7 +5,7 @@ import { err, ok, type Result } from '../../lib/result';
 import { defaultSolveOptions, type SolveOptions, solveOptionsSchema } from '../../lib/solver/options';
 import type { SolveOutcome } from '../../lib/solver/outcome';
 import type { PlacementProblem } from '../../lib/solver/problem';
-import { isBadInputError, runSolve } from '../../lib/solver/worker/client';
+import { isBadInputError, runSolve, threadsHere } from '../../lib/solver/worker/client';
 import { wholeNumber } from './arguments';
 import type { Faults } from './read-document';
 import { type GivenProblem, inputFaultLine } from './read-problem';
@@ -44,7 +44,11 @@ export async function withSolver<T>(
   process.once('SIGINT', onInterrupt);
   try {
     const threadPath = new URL('./threads/solver.mjs', import.meta.url);
-    return ok(await work((problem) => runSolve(problem, options, { threadPath, signal: abort.signal })));
+    return ok(
+      await work((problem) =>
+        runSolve(problem, options, { threadPath, threads: threadsHere(), signal: abort.signal }),
+      ),
+    );
   } catch (error) {
     if (!isBadInputError(error)) throw error;
     return err(error.badInput.faults.map((fault) => inputFaultLine(given, fault)));

@@ -15,7 +15,7 @@ import type { Id } from '../../lib/ids';
 import { verifyMapping } from '../../lib/mapping/verify';
 import type { SolveOutcome, SolveProgress } from '../../lib/solver/outcome';
 import type { PlacementProblem } from '../../lib/solver/problem';
-import { isBadInputError, runSolve } from '../../lib/solver/worker/client';
+import { isBadInputError, runSolve, threadsHere } from '../../lib/solver/worker/client';
 
 /** How often the row learns of progress; also how soon a stop by a person is noticed. */
 const REPORT_MS = 300;
@@ -87,7 +87,7 @@ async function solveTaken(
         ...askedOf(settings.ask),
       },
       { engine: settings.engine, timeLimitMs, seed: settings.seed, nodeLimit: null, searchTries: null },
-      { signal, memoryLimitMb: MEMORY_LIMIT_MB, onProgress: ledger.take },
+      { signal, memoryLimitMb: MEMORY_LIMIT_MB, threads: threadsHere(), onProgress: ledger.take },
     );
     return { ok: true, outcome };
   } catch (error) {

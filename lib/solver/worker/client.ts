@@ -2,13 +2,16 @@
  * Runs a solve in a thread of its own and answers with its outcome, whatever becomes of the thread: the best mapping
  * so far is kept here, so a thread that is stopped, ends or runs out of memory loses nothing.
  */
+import { availableParallelism } from 'node:os';
 import { join } from 'node:path';
 import { Worker } from 'node:worker_threads';
 import { interruptedOutcome } from '../ended-outcome';
+import { compareMappings } from '../legal-mapping';
 import { defaultSolveOptions, SOLVE_LIMITS, type SolveOptions } from '../options';
 import type { SolveOutcome, SolveProgress, StopReason } from '../outcome';
 import type { BadInput, PlacementProblem } from '../problem';
 import { STOP_BY_MEMORY, STOP_BY_PERSON, STOP_NONE, type ThreadInput, type ThreadMessage } from './protocol';
+import { type SecondThread, startSecondThread } from './second-thread';
 
 export interface RunHooks {
   onProgress?: (progress: SolveProgress) => void;
@@ -18,6 +21,8 @@ export interface RunHooks {
   stopFlag?: SharedArrayBuffer;
   /** Heap of the thread, and growth of the process while it runs. */
   memoryLimitMb?: number;
+  /** 2: the search goes on in a thread of its own while the first one proves. By default 1, which can be repeated. */
+  threads?: 1 | 2;
   /** The bundled thread; by default dist/threads/solver.mjs of the working directory or of APP_THREADS_DIR. */
   threadPath?: string | URL;
 }
@@ -37,6 +42,9 @@ const DEFAULT_MEMORY_LIMIT_MB = 1024;
 export const threadPath = (): string =>
   join(process.env.APP_THREADS_DIR ?? join(process.cwd(), 'dist', 'threads'), 'solver.mjs');
 
+/** Two where the machine has two cores to spare for them. */
+export const threadsHere = (): 1 | 2 => (availableParallelism() > 1 ? 2 : 1);
+
 /** A fresh cell to stop a solve with. */
 export const newStopFlag = (): SharedArrayBuffer => new SharedArrayBuffer(4);
 
@@ -53,7 +61,8 @@ export function runSolve(
   const startRss = process.memoryUsage.rss();
   const input: ThreadInput = { problem, options, stopCell };
   return new Promise((resolve, reject) => {
-    const worker = new Worker(hooks.threadPath ?? threadPath(), {
+    const path = hooks.threadPath ?? threadPath();
+    const worker = new Worker(path, {
       workerData: input,
       resourceLimits: { maxOldGenerationSizeMb: memoryLimitMb },
     });
@@ -70,6 +79,7 @@ export function runSolve(
       settled = true;
       clearInterval(memoryWatch);
       clearTimeout(deadline);
+      second?.end();
       hooks.signal?.removeEventListener('abort', onAbort);
       void worker.terminate();
       act();
@@ -81,6 +91,21 @@ export function runSolve(
           interruptedOutcome(problem.objective, options, last, performance.now() - startMs, stopReason),
         ),
       );
+    const second: SecondThread | null =
+      hooks.threads === 2 && canUseSecondThread(problem, options)
+        ? startSecondThread({
+            path,
+            problem,
+            options,
+            stopCell,
+            memoryLimitMb,
+            remainingMs: () => options.timeLimitMs - (performance.now() - startMs),
+            best: () => last?.best ?? null,
+            onMapping: (mapping) => {
+              if (!last?.best || compareMappings(mapping, last.best) < 0) worker.postMessage(mapping);
+            },
+          })
+        : null;
     if (hooks.signal?.aborted) onAbort();
     hooks.signal?.addEventListener('abort', onAbort, { once: true });
     worker.on('message', (message: ThreadMessage) => {
@@ -99,6 +124,12 @@ export function runSolve(
     worker.on('exit', () => end(Atomics.load(cell, 0) === STOP_NONE ? 'thread failed' : 'stopped'));
   });
 }
+
+/** What is to be repeated must not depend on what another thread finds when; "another" has a way of its own. */
+const canUseSecondThread = (
+  problem: PlacementProblem,
+  { engine, nodeLimit, searchTries }: SolveOptions,
+): boolean => engine !== 'search' && nodeLimit === null && searchTries === null && !problem.another;
 
 const badInputError = (badInput: BadInput): BadInputError =>
   Object.assign(new Error(badInput.messages.join('\n')), { badInput });

@@ -1,5 +1,5 @@
 /** The solver thread's entry: solves what it was started with, reports as it goes, ends. */
-import { parentPort, workerData } from 'node:worker_threads';
+import { parentPort, receiveMessageOnPort, workerData } from 'node:worker_threads';
 import { highsEngine } from '../engines/highs';
 import { simplexEngine } from '../engines/simplex';
 import { solve } from '../solve';
@@ -24,6 +24,7 @@ const result = solve(
     nowMs: () => performance.now(),
     shouldStop: () => Atomics.load(cell, 0) !== STOP_NONE,
     stopCause: () => (Atomics.load(cell, 0) === STOP_BY_MEMORY ? 'memory limit' : 'stopped'),
+    news: () => (parentPort ? (receiveMessageOnPort(parentPort)?.message ?? null) : null),
     onProgress: (progress) => send({ type: 'progress', progress }),
     engines,
   },
