@@ -33,8 +33,8 @@ const NEWS_EVERY_MS = 50;
 /** How often the number of nodes is reported while nothing else happens. */
 const NODES_EVERY_MS = 250;
 
-/** Engines whose work is counted in moves and nodes; others look at the time themselves. */
 const SECOND_THREAD = 'second thread';
+/** Engines whose work is counted in moves and nodes; others look at the time themselves. */
 const countedEngines: readonly string[] = ['search', 'exact'];
 
 /** While a solve runs, values and bounds are in its scale's unit; reports and outcomes are in the problem's. */

@@ -55,4 +55,4 @@ export const proveCommand = ({ kernel, fabric, certificate, mapping }: ProofFile
 export const repeatSentence = ({ isRepeatable }: Certificate): string =>
   isRepeatable
     ? 'The same engine version comes to the same nodes and levels.'
-    : 'The answer comes out again; its nodes need not, as time or an engine with a clock of its own had a part in it.';
+    : 'The answer comes out again; its nodes need not, as time, a second thread or an engine with a clock of its own had a part in it.';
