@@ -195,6 +195,53 @@ async function saveCertificate(page: Page, within: Locator): Promise<{ name: str
   return { name: download.suggestedFilename(), text: readFileSync(await download.path(), 'utf8') };
 }
 
+test('a net is made to count more by keys alone: values are weighted, the settings stay, the kept mapping tells the weights', async ({
+  pageOf,
+}) => {
+  const page = await pageOf('architect');
+  const name = ownName('Weighted');
+  await openBench(page, name);
+  const panel = page.getByRole('region', { name: 'Auto-place' });
+  const weights = panel.getByText(/^Weights ·/);
+  await expect(weights).toHaveText('Weights · all 1');
+  await expect(panel.getByRole('table')).toHaveCount(0);
+  await weights.focus();
+  await page.keyboard.press('Enter');
+  await page.keyboard.press('Tab');
+  await expect(panel.getByLabel('raw → gain', { exact: true })).toBeFocused();
+  await page.keyboard.press('Control+a');
+  await page.keyboard.type('2.5');
+  await page.keyboard.press('Enter');
+  // Five ops in a chain: one link at 2.5 and three at 1.
+  await expect(panel).toContainText('No legal mapping has fewer than 5.5 weighted wire hops.', {
+    timeout: 40_000,
+  });
+  await expect(figures(page)).toContainText(/Wire hops\s*4/);
+  await expect(figures(page)).toContainText(/Weighted wire hops\s*5\.5/);
+  await saved(page);
+  await page.reload();
+  await expect(weights).toHaveText('Weights · 1 not 1');
+  await weights.click();
+  await expect(panel.getByLabel('raw → gain', { exact: true })).toHaveValue('2.5');
+  await checkAccessible(page, 'the bench with weights');
+
+  const phone = await pageOf('architect', { viewport: { width: 390, height: 844 }, hasTouch: true });
+  await phone.goto(page.url());
+  await phone.getByRole('button', { name: 'Figures', exact: true }).tap();
+  await phone.getByText(/^Weights ·/).tap();
+  await expect(phone.getByLabel('raw → gain', { exact: true })).toHaveValue('2.5');
+  await checkNoSidewaysScroll(phone, 'the weights on a phone');
+  await checkAccessible(phone, 'the weights on a phone');
+
+  await page.getByRole('button', { name: 'Keep as mapping' }).click();
+  await page.getByRole('dialog').getByRole('button', { name: 'Keep', exact: true }).click();
+  await page.waitForURL(/\/mappings\/mapping_/);
+  await expect(page.getByRole('region', { name: 'How it was made' })).toContainText('Weighted wire hops');
+  await expect(page.getByRole('row', { name: 'raw → gain 2.5' })).toBeVisible();
+  const mapping = await page.request.get(page.url().replace('/w/', '/api/w/').concat('/mapping.json'));
+  expect(await mapping.json()).toMatchObject({ provenance: { weights: { nets: { op_raw: 2.5 } } } });
+});
+
 test('two people at one bench: the second is told and keeps both', async ({ pageOf }) => {
   const first = await pageOf('architect');
   const name = ownName('Shared');
