@@ -2,7 +2,8 @@
  * Solves every demo kernel on every demo fabric with each engine and prints one JSON line a case, then a summary of how
  * the first engine compares with the others in the same run:
  *   npm run bench:solve -- [--time-limit-ms N] [--objective wire|path] [--engines auto,program,highs,simplex,search]
- *                          [--kernel part of its name] [--fabric part of its name]
+ *                          [--kernel part of its name] [--fabric part of its name] [--large yes]
+ * With --large, kernels of 40 to 60 ops on 10 × 10 and 12 × 12 tiles in their place.
  */
 import { parseArgs } from 'node:util';
 import { demoFabrics } from '../db/seed/fabrics';
@@ -13,6 +14,7 @@ import { objectives } from '../lib/mapping/mapping';
 import { type EngineChoice, engineChoices, SOLVE_LIMITS } from '../lib/solver/options';
 import { runSolve, threadsHere } from '../lib/solver/worker/client';
 import { compareEngines, type EngineRun } from './bench/compare-engines';
+import { largeCases } from './bench/large-cases';
 
 const { values } = parseArgs({
   options: {
@@ -21,6 +23,7 @@ const { values } = parseArgs({
     engines: { type: 'string', default: 'auto,highs,simplex' },
     kernel: { type: 'string', default: '' },
     fabric: { type: 'string', default: '' },
+    large: { type: 'string', default: '' },
   },
 });
 const objective = objectives.find((one) => one === values.objective) ?? 'wire';
@@ -83,15 +86,19 @@ async function measure(kernel: Kernel, fabric: Fabric, engine: EngineChoice) {
 }
 
 const runs: EngineRun[] = [];
-for (const { slug, kernel } of demoKernels) {
-  for (const { key, fabric } of demoFabrics) {
-    if (!slug.includes(values.kernel) || !key.includes(values.fabric)) continue;
-    for (const engine of engines) {
-      const figures = await measure(kernel, fabric, engine);
-      const line = { case: `${slug} on ${key}`, ops: kernel.ops.length, fabric: fabric.name, ...figures };
-      runs.push({ case: line.case, asked: engine, status: figures.status, elapsedMs: figures.elapsedMs });
-      process.stdout.write(`${JSON.stringify(line)}\n`);
-    }
+const cases =
+  values.large === ''
+    ? demoKernels.flatMap(({ slug, kernel }) =>
+        demoFabrics.map(({ key, fabric }) => ({ slug, kernel, key, fabric })),
+      )
+    : largeCases();
+for (const { slug, kernel, key, fabric } of cases) {
+  if (!slug.includes(values.kernel) || !key.includes(values.fabric)) continue;
+  for (const engine of engines) {
+    const figures = await measure(kernel, fabric, engine);
+    const line = { case: `${slug} on ${key}`, ops: kernel.ops.length, fabric: fabric.name, ...figures };
+    runs.push({ case: line.case, asked: engine, status: figures.status, elapsedMs: figures.elapsedMs });
+    process.stdout.write(`${JSON.stringify(line)}\n`);
   }
 }
 for (const summary of compareEngines(runs, engines)) process.stdout.write(`${JSON.stringify(summary)}\n`);

@@ -1,5 +1,6 @@
 /** Kernels of 36 to 60 ops and the fabrics to place them on, the same at every call. */
 
+import { demoKernels } from '../../db/seed/kernels';
 import type { Fabric } from '../../lib/fabric/fabric';
 import { type NewFabricForm, newFabric, unitMixPattern } from '../../lib/fabric/presets';
 import { initialParams } from '../../lib/graph/edits';
@@ -93,4 +94,28 @@ export function largeFabric(side: number): Fabric {
     mix,
   };
   return newFabric(form);
+}
+
+export interface LargeCase {
+  slug: string;
+  kernel: Kernel;
+  key: string;
+  fabric: Fabric;
+}
+
+/** Unrolled demo kernels and scrambled ones of 40 to 60 ops, the larger ones on 12 × 12 tiles. */
+export function largeCases(): LargeCase[] {
+  const kernels = [
+    ...demoKernels
+      .filter(({ kernel }) => kernel.ops.length >= 20 && kernel.ops.length <= 30)
+      .map(({ slug, kernel }) => ({ slug: `${slug} x 2`, kernel: unrolled(kernel, 2) })),
+    ...([40, 50, 60] as const).map((opCount) => ({
+      slug: `scrambled ${opCount}`,
+      kernel: scrambledKernel(opCount, 1),
+    })),
+  ];
+  return kernels.map(({ slug, kernel }) => {
+    const side = kernel.ops.length <= 50 ? 10 : 12;
+    return { slug, kernel, key: `${side}x${side}`, fabric: largeFabric(side) };
+  });
 }
