@@ -57,7 +57,8 @@ export const TABLE_ENTRIES_LIMIT = 2_500_000;
 const SYMMETRY_LIMIT = 256;
 const ROOT_SWEEPS = 40;
 const ROOT_LEAST_GAIN = 0.02;
-const NODE_SWEEPS = 6;
+/** At inner nodes: fewer where one costs more, as more nodes then gain more. */
+const nodeSweeps = (entries: number): number => (entries < 100_000 ? 6 : entries < 400_000 ? 2 : 1);
 const NODE_LEAST_GAIN = 0.2;
 /** Conflicts looked at for the nets that stand at an inner node, and for a whole placement. */
 const INNER_ROUTE_NODES = 40;
@@ -229,7 +230,7 @@ function visit(search: Search, depth: number, levelCutoff: number, decided: Deci
   if (extra === null) return;
   const limits = {
     cutoff: cutoff + search.margin - extra,
-    sweeps: NODE_SWEEPS,
+    sweeps: nodeSweeps(node.tables.length),
     leastGain: NODE_LEAST_GAIN,
     ...(node.tables.length > SLOW_ASCENT_ENTRIES ? { shouldStop: search.hooks.shouldStop } : {}),
   };
