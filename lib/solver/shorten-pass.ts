@@ -12,7 +12,7 @@ import type { CheckedProblem } from './problem';
 import type { SolveState } from './solve-state';
 
 /** Nodes for each length that is asked for: ties are not worth more than a proof. */
-const NODES_A_LENGTH = 2000;
+const NODES_A_LENGTH = 500;
 
 /** Precondition: the best mapping is proved optimal. True when no mapping of its cost has a shorter longest path. */
 export function shortenPass(
