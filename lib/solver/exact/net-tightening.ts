@@ -3,6 +3,7 @@
  * plain mesh). When one terminal of such a net is still free, its least tree for each tile of that op is known: what it
  * costs above the pairs' share is added to the op's residuals. With two free of three, the meeting tile gives the cost.
  */
+import { meetingHops } from '../bounds/meeting-hops';
 import { undirectedDistance } from '../bounds/pair-costs';
 import type { PlacementInstance } from '../instance';
 import type { JointRouter, StandingNet } from './joint-routing';
@@ -105,14 +106,7 @@ function meetingCosts({ tileCount, distance }: PlacementInstance) {
     const key = (source * tileCount + Math.min(left, right)) * tileCount + Math.max(left, right);
     const found = known.get(key);
     if (found !== undefined) return found;
-    let least = Number.POSITIVE_INFINITY;
-    for (let m = 0; m < tileCount; m++) {
-      const hops =
-        (distance[source * tileCount + m] as number) +
-        (distance[m * tileCount + left] as number) +
-        (distance[m * tileCount + right] as number);
-      if (hops < least) least = hops;
-    }
+    const least = meetingHops(distance, tileCount, source, left, right);
     known.set(key, least);
     return least;
   };

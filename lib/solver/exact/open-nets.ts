@@ -4,6 +4,7 @@
  * barred links say it all. The clock is left aside, which can only lower what a net pays.
  */
 import type { LinkGraph } from '../../fabric/link-graph';
+import { meetingHops } from '../bounds/meeting-hops';
 
 export interface OpenNetCost {
   /** Links more than without the bars, at least. */
@@ -40,17 +41,7 @@ export function openNetCosts(fabric: LinkGraph): OpenNetCosts {
   };
   /** Links of the least tree for each tile of the free consumer. */
   const leastTrees = (hops: Float64Array, source: number, consumer: number, openTiles: readonly number[]) =>
-    openTiles.map((tile) => {
-      let least = Number.POSITIVE_INFINITY;
-      for (let m = 0; m < tileCount; m++) {
-        const links =
-          (hops[source * tileCount + m] as number) +
-          (hops[m * tileCount + consumer] as number) +
-          (hops[m * tileCount + tile] as number);
-        if (links < least) least = links;
-      }
-      return least;
-    });
+    openTiles.map((tile) => meetingHops(hops, tileCount, source, consumer, tile));
   /** The least rise over all tiles that the free consumer can take. */
   const rise = (
     source: number,
