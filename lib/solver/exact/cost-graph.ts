@@ -38,6 +38,8 @@ export interface OpTriple {
 const LONGEST_CYCLE = 12;
 /** Where pairs are as dense as in a general assignment problem, triples cost more than they gain (measured on QAPLIB). */
 const MOST_TRIANGLES_A_PAIR = 2;
+/** The basis of cycles takes about a tenth of a second at this size. */
+const MOST_OPS_FOR_CYCLES = 400;
 
 /** `pairs` are the ops that cost something together, each once. `work` bounds the entries of all tables. */
 export function costGraph(
@@ -49,17 +51,17 @@ export function costGraph(
 ): CostGraph {
   const graph = growingGraph(opCount, pairs);
   const limited = withinWork(graph, tilesOf, work);
-  const closed = triangles(graph);
-  if (closed.length <= MOST_TRIANGLES_A_PAIR * pairs.length) {
+  const closed = triangles(graph, MOST_TRIANGLES_A_PAIR * pairs.length);
+  if (closed) {
     for (const triangle of closed) limited([triangle]);
     fourCycles(graph, limited);
-    longerCycles(graph, limited, tilesOf);
+    if (opCount <= MOST_OPS_FOR_CYCLES) longerCycles(graph, limited, tilesOf);
   }
   const first = Int32Array.from(graph.pairs, ([a]) => a);
   const second = Int32Array.from(graph.pairs, ([, b]) => b);
-  const pairsOf = Array.from({ length: opCount }, (_, op) =>
-    Int32Array.from(graph.pairs.flatMap(([a, b], pair) => (a === op || b === op ? [pair] : []))),
-  );
+  const lists = Array.from({ length: opCount }, (): number[] => []);
+  for (const [pair, ends] of graph.pairs.entries()) for (const op of ends) lists[op]?.push(pair);
+  const pairsOf = lists.map((list) => Int32Array.from(list));
   const triples = graph.triples.map(({ a, b, c }, i) => ({
     a,
     b,
@@ -137,12 +139,18 @@ function withinWork(graph: GrowingGraph, tilesOf: (op: number) => number, work: 
   };
 }
 
-const triangles = ({ pairs, neighbours }: GrowingGraph): Three[] =>
-  pairs.flatMap(([a, b]) =>
-    [...(neighbours[a] as ReadonlySet<number>)]
-      .filter((c) => c > b && neighbours[b]?.has(c))
-      .map((c): Three => [a, b, c]),
-  );
+/** Null where there are more than `most`: a net of hundreds of consumers has millions. */
+function triangles({ pairs, neighbours }: GrowingGraph, most: number): Three[] | null {
+  const found: Three[] = [];
+  for (const [a, b] of pairs) {
+    for (const c of neighbours[a] as ReadonlySet<number>) {
+      if (c <= b || !neighbours[b]?.has(c)) continue;
+      if (found.length >= most) return null;
+      found.push([a, b, c]);
+    }
+  }
+  return found;
+}
 
 /** Two ops with several common neighbours: a chord between them, and a triple with each of those. */
 function fourCycles({ neighbours }: GrowingGraph, add: AddTriples): void {

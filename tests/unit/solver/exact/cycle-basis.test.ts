@@ -102,3 +102,19 @@ describe('the triples of a cost graph', () => {
     expect(triplesOf(3, ring(3), 3 * 81 + 486)).toEqual([[0, 1, 2]]);
   });
 });
+
+describe('large cost graphs are bounded', () => {
+  it('a net of 300 terminals, each pinned: no triples of its 4,455,100 triangles', () => {
+    const all = Array.from({ length: 300 }, (_, a) =>
+      Array.from({ length: a }, (_, b) => [b, a] as const),
+    ).flat();
+    expect(costGraph(300, 300, all, () => 1, 1e6).triples).toEqual([]);
+  });
+  it('a grid of 20 × 20 ops: a basis of its 361 squares within the limit of ops', () => {
+    const grid = Array.from({ length: 400 }, (_, at) => [
+      ...(at % 20 < 19 ? [[at, at + 1] as const] : []),
+      ...(at < 380 ? [[at, at + 20] as const] : []),
+    ]).flat();
+    expect(shortCycleBasis(graphOf(400, grid), 12)).toHaveLength(361);
+  });
+});
