@@ -63,6 +63,8 @@ async function runTaken(taken: TakenSolve, log: Logger, stopping: AbortSignal): 
     await releaseSolve(database(), hold);
     return 'handed back';
   }
+  // The last rise of the bound often is the end: the history has it before the row says so.
+  await reportProgress(database(), hold, ledger.note());
   return writeEnd(hold, taken, result, (asked as string) === 'stop', log);
 }
 

@@ -97,6 +97,13 @@ describe('a solve that proves its answer', () => {
     });
   });
 
+  it('ends with a history whose last point is where best and bound have met', async () => {
+    const { draftId } = await newBench(box.db, of);
+    const { outcome, history } = await solved(draftId);
+    expect(outcome?.status).toBe('optimal');
+    expect(history.at(-1)).toMatchObject({ best: outcome?.objectiveValue, bound: outcome?.bound });
+  });
+
   it('does so where it proves that nothing fits', async () => {
     const { draftId } = await newBench(box.db, of);
     const pins = { op_load: 'r0c0', op_store: 'r0c0' } as Pins;
