@@ -11,14 +11,16 @@ import { exactSearch, TABLE_ENTRIES_LIMIT } from './exact/exact-search';
 import { tableEntries } from './exact/root-relaxation';
 import { costStep } from './exact/standing-nets';
 import { noOtherReason, noOtherYet } from './explain/no-other';
-import { type PlacementInstance, placementOf, type Tiling, tilingOf } from './instance';
-import { legalMapping, routesOf, startTiles, verifiedMapping } from './legal-mapping';
+import { type PlacementInstance, type Tiling, tilingOf } from './instance';
+import { legalMapping, mappingOf, startTiles } from './legal-mapping';
 import { imageTest } from './mirror-images';
 import { nearPlacements } from './near-placements';
+import { nodeWatch } from './node-watch';
 import type { SolveOptions } from './options';
 import type { BestMapping, SolveOutcome, StopReason } from './outcome';
 import type { AnotherAsk, CheckedProblem } from './problem';
 import { searchPlacements } from './search/search';
+import { firstLimits, type StretchLimits, stretchLimits } from './search-pass';
 import type { SolveState } from './solve-state';
 import type { WeightScale } from './weight-scale';
 
@@ -27,9 +29,6 @@ const NEAR_SHARE = 0.1;
 const MOST_NEAR = 100;
 /** The part of the time that the search may take before the exact search begins. */
 const SEARCH_SHARE = 0.15;
-const FIRST_STALE_ROUNDS = 4;
-/** Nodes after which the search has another try for the first time; each later time after twice as many. */
-const FIRST_STRETCH_NODES = 2000;
 /** Far above rounding, far below the step between two costs. */
 const TOLERANCE = 1e-6;
 
@@ -70,7 +69,7 @@ export function anotherPass(ask: Ask): SolveOutcome {
   lookNear(hunt, avoided);
   if (!hunt.taken) searchFirst(hunt, avoided.at(-1) ?? null, isAlone);
   if (hunt.taken) return state.finish('another found');
-  if (options.engine === 'search' || state.remainingMs() <= 0 || state.shouldStop()) {
+  if (options.engine === 'search' || state.shouldStop()) {
     return unknown(hunt, 'search complete');
   }
   return searchAll(hunt, avoided.at(-1) ?? null);
@@ -110,20 +109,12 @@ function lookNear(hunt: Hunt, avoided: readonly Tiling[]): void {
 function searchFirst(hunt: Hunt, around: Tiling | null, isAlone: boolean): void {
   const { problem, instance, options, state } = hunt;
   const endMs = state.elapsedMs() + (isAlone ? 1 : shareOf(options, SEARCH_SHARE)) * state.remainingMs();
-  const limits = isAlone
-    ? { rounds: 400, staleRounds: 120 }
-    : { rounds: 60, staleRounds: FIRST_STALE_ROUNDS };
   const start = startTiles(problem, instance) ?? around;
-  searchAround(hunt, start, { ...limits, seed: options.seed }, () => state.elapsedMs() >= endMs);
+  searchAround(hunt, start, firstLimits(options, isAlone), () => state.elapsedMs() >= endMs);
 }
 
 /** Every legal mapping that the search meets is looked at, not only those that are better than the last. */
-function searchAround(
-  hunt: Hunt,
-  start: Tiling | null,
-  limits: { rounds: number; staleRounds: number; seed: number },
-  isSpent: () => boolean,
-): void {
+function searchAround(hunt: Hunt, start: Tiling | null, limits: StretchLimits, isSpent: () => boolean): void {
   const { problem, instance, searched, state } = hunt;
   const { links } = problem.graph;
   searchPlacements(
@@ -149,26 +140,18 @@ const isStandable = ({ candidates }: PlacementInstance, tiling: Tiling): boolean
 
 function searchAll(hunt: Hunt, around: Tiling | null): SolveOutcome {
   const { problem, instance, options, state, asked, mostCost, scale } = hunt;
-  let stretches = 0;
-  let atNodeLimit = false;
+  const watch = nodeWatch(options, state, (stretch) =>
+    searchAround(hunt, around, stretchLimits(options, stretch), () => false),
+  );
   state.setPhase('exact');
   state.noteEngine('exact');
   const result = exactSearch(instance, problem.graph, {
     incumbent: () => mostCost + costStep(instance),
-    shouldStop: () => atNodeLimit || isOver(hunt),
+    shouldStop: () => watch.isAtLimit() || isOver(hunt),
     onBound: (bound) => void state.raise(Math.min(bound, hunt.leastAvoided), 'exact search'),
-    onNodes: (nodes) => {
-      state.noteNodes(nodes);
-      atNodeLimit = options.nodeLimit !== null && nodes >= options.nodeLimit;
-      if (atNodeLimit || nodes < FIRST_STRETCH_NODES * 2 ** stretches) return;
-      stretches++;
-      const seed = options.seed + stretches;
-      const limits = { rounds: 60, staleRounds: FIRST_STALE_ROUNDS + stretches, seed };
-      searchAround(hunt, around, limits, () => false);
-    },
+    onNodes: watch.onNodes,
     onMapping: (tiling, netLinks) => {
-      const placement = placementOf(problem.kernel, problem.graph, tiling);
-      const mapping = netLinks && verifiedMapping(problem, placement, routesOf(problem, netLinks));
+      const mapping = netLinks && mappingOf(problem, tiling, netLinks);
       if (mapping) look(hunt, tiling, mapping);
       return mapping !== null;
     },
@@ -184,7 +167,7 @@ function searchAll(hunt: Hunt, around: Tiling | null): SolveOutcome {
     case 'too large':
       return unknown(hunt, 'model too large');
     case 'stopped':
-      return unknown(hunt, atNodeLimit ? 'node limit' : 'time limit');
+      return unknown(hunt, watch.isAtLimit() ? 'node limit' : 'time limit');
   }
 }
 

@@ -1,8 +1,9 @@
 /** Proves the best mapping optimal, finds better ones, or proves that there is none: the exact search. */
 import { exactSearch } from './exact/exact-search';
 import { noPlacementReason } from './explain/proved-reasons';
-import { type PlacementInstance, placementOf } from './instance';
-import { routesOf, verifiedMapping } from './legal-mapping';
+import type { PlacementInstance } from './instance';
+import { mappingOf } from './legal-mapping';
+import { nodeWatch } from './node-watch';
 import type { SolveOptions } from './options';
 import type { InfeasibleReason, StopReason } from './outcome';
 import type { CheckedProblem } from './problem';
@@ -13,35 +14,24 @@ export type ExactPassResult =
   | { kind: 'infeasible'; explanation: InfeasibleReason }
   | { kind: 'unfinished'; stop: StopReason };
 
-/** Nodes after which the search for better mappings goes on for the first time; each later time after twice as many. */
-const FIRST_STRETCH_NODES = 2000;
-
 /** `improve` is a stretch of search, called with 1, 2, 3, … while the proof waits. */
 export function exactPass(
   problem: CheckedProblem,
   instance: PlacementInstance,
-  { nodeLimit }: Pick<SolveOptions, 'nodeLimit'>,
+  options: Pick<SolveOptions, 'nodeLimit'>,
   state: SolveState,
   improve: (stretch: number) => void,
 ): ExactPassResult {
-  let stretches = 0;
-  let atNodeLimit = false;
+  const watch = nodeWatch(options, state, improve);
   state.setPhase('exact');
   state.noteEngine('exact');
   const result = exactSearch(instance, problem.graph, {
     incumbent: () => state.best()?.objectiveValue ?? Number.POSITIVE_INFINITY,
-    shouldStop: () => atNodeLimit || state.shouldStop(),
+    shouldStop: () => watch.isAtLimit() || state.shouldStop(),
     onBound: (bound) => void state.raise(bound, 'exact search'),
-    onNodes: (nodes) => {
-      state.noteNodes(nodes);
-      atNodeLimit = nodeLimit !== null && nodes >= nodeLimit;
-      if (atNodeLimit || nodes < FIRST_STRETCH_NODES * 2 ** stretches) return;
-      stretches++;
-      improve(stretches);
-    },
+    onNodes: watch.onNodes,
     onMapping: (tiling, netLinks) => {
-      const placement = placementOf(problem.kernel, problem.graph, tiling);
-      const mapping = netLinks && verifiedMapping(problem, placement, routesOf(problem, netLinks));
+      const mapping = netLinks && mappingOf(problem, tiling, netLinks);
       if (mapping) state.offer(mapping);
       return mapping !== null;
     },
@@ -66,7 +56,7 @@ export function exactPass(
     case 'too large':
       return { kind: 'unfinished', stop: 'model too large' };
     case 'stopped':
-      return { kind: 'unfinished', stop: atNodeLimit ? 'node limit' : 'time limit' };
+      return { kind: 'unfinished', stop: watch.isAtLimit() ? 'node limit' : 'time limit' };
   }
 }
 

@@ -44,7 +44,7 @@ export function legalMapping(
 }
 
 /** Routes of link indices, one list for each of the kernel's nets in the order of `netsOf`, which is the instance's. */
-export function routesOf({ kernel, graph }: CheckedProblem, trees: readonly (readonly number[])[]): Routes {
+function routesOf({ kernel, graph }: CheckedProblem, trees: readonly (readonly number[])[]): Routes {
   const routes: Routes = {};
   netsOf(kernel).forEach(({ source }, net) => {
     routes[source] = (trees[net] ?? []).flatMap((link) => graph.links[link]?.id ?? []);
@@ -52,12 +52,16 @@ export function routesOf({ kernel, graph }: CheckedProblem, trees: readonly (rea
   return routes;
 }
 
-/** Null where any rule of R1 to R7 is broken. */
-export function verifiedMapping(
+/** The mapping of a tiling with the links of each net; null where it breaks a rule. */
+export const mappingOf = (
   problem: CheckedProblem,
-  placement: Placement,
-  routes: Routes,
-): BestMapping | null {
+  tiling: ArrayLike<number>,
+  netLinks: readonly (readonly number[])[],
+): BestMapping | null =>
+  verifiedMapping(problem, placementOf(problem.kernel, problem.graph, tiling), routesOf(problem, netLinks));
+
+/** Null where any rule of R1 to R7 is broken. */
+function verifiedMapping(problem: CheckedProblem, placement: Placement, routes: Routes): BestMapping | null {
   const { kernel, fabric, pins, library, graph, objective, weights } = problem;
   if (verifyMapping(kernel, fabric, { placement, routes, pins }, { library }).length > 0) return null;
   const metrics = measureMapping(kernel, graph, { placement, routes });

@@ -1,8 +1,8 @@
 /** Closes the gap that congestion and large nets leave, by the full model of placement and routes, where it is small. */
 import type { OpId } from '../graph/kernel';
-import { placementOf, tilingOf } from './instance';
+import { tilingOf } from './instance';
 import { type RoutedMappingPoint, routedColumnCount, routedProgram } from './integer-program/routed-program';
-import { routesOf, verifiedMapping } from './legal-mapping';
+import { mappingOf } from './legal-mapping';
 import type { BestMapping } from './outcome';
 import { type PassInput, type PassResult, runEngines } from './placement-pass';
 import type { CheckedProblem } from './problem';
@@ -23,8 +23,7 @@ export function routedPass(input: PassInput): PassResult {
     onPoint: (values) => {
       const point = built.decode(values);
       if (!point) return;
-      const placement = placementOf(problem.kernel, problem.graph, point.tiling);
-      const mapping = verifiedMapping(problem, placement, routesOf(problem, point.netLinks));
+      const mapping = mappingOf(problem, point.tiling, point.netLinks);
       if (mapping) state.offer(mapping);
     },
     infeasible: () => ({

@@ -19,6 +19,24 @@ const FIRST_MAPPING_SHARE = 0.6;
 /** Slices without a better mapping after which the proof begins; it lets the search go on now and then. */
 const FIRST_STALE_ROUNDS = 4;
 
+/** Slices of one stretch of search, and its seed. */
+export interface StretchLimits {
+  rounds: number;
+  staleRounds: number;
+  seed: number;
+}
+
+/** Before a proof, or all that is done where none can follow. */
+export const firstLimits = ({ seed }: SolveOptions, alone: boolean): StretchLimits =>
+  alone ? { rounds: 400, staleRounds: 120, seed } : { rounds: 60, staleRounds: FIRST_STALE_ROUNDS, seed };
+
+/** The 1st, 2nd, 3rd, … stretch while a proof waits: each a little more patient, with a seed of its own. */
+export const stretchLimits = ({ seed }: SolveOptions, stretch: number): StretchLimits => ({
+  rounds: 60,
+  staleRounds: FIRST_STALE_ROUNDS + stretch,
+  seed: seed + stretch,
+});
+
 /** From the problem's start, until its share is used up or it finds no more. */
 export function searchPass(
   problem: CheckedProblem,
@@ -30,12 +48,11 @@ export function searchPass(
   state.noteEngine('search');
   // Where nothing can follow, the search has all the time.
   const alone = options.engine === 'search' || !canProve(options, instance);
-  const limits = alone ? { rounds: 400, staleRounds: 120 } : { rounds: 60, staleRounds: FIRST_STALE_ROUNDS };
   runSearch(
     problem,
     instance,
     startTiles(problem, instance),
-    { ...limits, seed: options.seed },
+    firstLimits(options, alone),
     state,
     searchShare(options, state, alone),
   );
@@ -56,8 +73,7 @@ export function improvePass(
 ): void {
   const best = state.best();
   const start = best ? tilingOf(problem.kernel, problem.graph, best.placement) : null;
-  const limits = { rounds: 60, staleRounds: FIRST_STALE_ROUNDS + stretch, seed: options.seed + stretch };
-  runSearch(problem, instance, start, limits, state, noShare);
+  runSearch(problem, instance, start, stretchLimits(options, stretch), state, noShare);
 }
 
 /** How much of the search there may be. */
@@ -99,7 +115,7 @@ function runSearch(
   problem: CheckedProblem,
   instance: PlacementInstance,
   start: Int32Array | null,
-  limits: { rounds: number; staleRounds: number; seed: number },
+  limits: StretchLimits,
   state: SolveState,
   share: SearchShare,
 ): void {

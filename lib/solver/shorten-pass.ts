@@ -5,8 +5,8 @@
  */
 import { exactSearch } from './exact/exact-search';
 import { costStep } from './exact/standing-nets';
-import { type PlacementInstance, placementOf } from './instance';
-import { routesOf, verifiedMapping } from './legal-mapping';
+import type { PlacementInstance } from './instance';
+import { mappingOf } from './legal-mapping';
 import type { BestMapping } from './outcome';
 import type { CheckedProblem } from './problem';
 import type { SolveState } from './solve-state';
@@ -53,8 +53,7 @@ function shorterThan(
         nodes = looked;
       },
       onMapping: (tiling, netLinks) => {
-        const placement = placementOf(problem.kernel, problem.graph, tiling);
-        const mapping = netLinks && verifiedMapping(problem, placement, routesOf(problem, netLinks));
+        const mapping = netLinks && mappingOf(problem, tiling, netLinks);
         if (mapping && mapping.longestPathHops <= maxHops) found ??= mapping;
         return mapping !== null;
       },

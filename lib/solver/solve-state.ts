@@ -97,6 +97,7 @@ export function solveState(
       nodes,
     });
   };
+  const isOutOfTime = () => remainingMs() <= 0 || clock.shouldStop();
   const isProved = () => best !== null && best.objectiveValue <= bound;
   const common = () => ({
     engine: engines.join(' + ') || 'presolve',
@@ -149,10 +150,10 @@ export function solveState(
       }
       return true;
     },
-    isOutOfTime: () => remainingMs() <= 0 || clock.shouldStop(),
+    isOutOfTime,
     shouldStop: () => {
       takeNews();
-      return isProved() || remainingMs() <= 0 || clock.shouldStop();
+      return isProved() || isOutOfTime();
     },
     noteEngine: (name) => {
       if (!engines.includes(name)) engines.push(name);
@@ -162,8 +163,7 @@ export function solveState(
       if (elapsedMs() - reportedMs >= NODES_EVERY_MS) report();
     },
     proof,
-    isRepeatable: () =>
-      remainingMs() > 0 && !clock.shouldStop() && engines.every((name) => countedEngines.includes(name)),
+    isRepeatable: () => !isOutOfTime() && engines.every((name) => countedEngines.includes(name)),
     finish: (fallback) =>
       told
         ? foundOutcome(told, scale.toValue(bound), cause(fallback), common())
