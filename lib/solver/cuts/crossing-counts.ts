@@ -20,15 +20,23 @@ export interface CrossingCounts {
 /** A net leaves or enters; `both` where its consumers are on both sides and its source has none yet: it will do either. */
 type Crosses = 'no' | 'leaves' | 'enters' | 'either';
 
+/** Nets that each op is a terminal of. */
+export type NetsAt = readonly (readonly number[])[];
+
+export function netsAtOps({ nets, opCount }: PlacementInstance): NetsAt {
+  const netsAt: number[][] = Array.from({ length: opCount }, () => []);
+  nets.forEach(({ source, consumers }, net) => {
+    for (const op of [source, ...consumers]) netsAt[op]?.push(net);
+  });
+  return netsAt;
+}
+
 export function crossingCounts(
   { nets, opCount }: PlacementInstance,
+  netsAt: NetsAt,
   { channelsOut, channelsIn }: { channelsOut: number; channelsIn: number },
 ): CrossingCounts {
   const sides = new Int8Array(opCount);
-  const netsAt: number[][] = Array.from({ length: opCount }, () => []);
-  nets.forEach(({ source, consumers }, net) => {
-    for (const op of new Set([source, ...consumers])) netsAt[op]?.push(net);
-  });
   const within = new Int32Array(nets.length);
   const beyond = new Int32Array(nets.length);
   const counts: Record<Crosses, number> = { no: nets.length, leaves: 0, enters: 0, either: 0 };

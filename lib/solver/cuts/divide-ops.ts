@@ -9,7 +9,7 @@
 import type { PlacementInstance } from '../instance';
 import { hasTile } from '../presolve/tile-sets';
 import { matchOps } from '../search/matching';
-import { type CrossingCounts, crossingCounts } from './crossing-counts';
+import { type CrossingCounts, crossingCounts, type NetsAt, netsAtOps } from './crossing-counts';
 import { FREE, INSIDE, OUTSIDE } from './forced-crossings';
 import type { TileCut } from './tile-cut';
 
@@ -31,8 +31,9 @@ const MATCHING_LIMIT = 20_000;
 /** `work` is spent by one a net touched; the search ends when there is none left. */
 export function divideOps(problem: CutProblem, missing: number, work: { left: number }): Division {
   const { instance, sides } = problem;
-  const order = orderOf(instance, sides);
-  const counts = crossingCounts(instance, problem.cut);
+  const netsAt = netsAtOps(instance);
+  const order = orderOf(instance, netsAt, sides);
+  const counts = crossingCounts(instance, netsAt, problem.cut);
   /** Sides still to try at each depth, the next one last. */
   const toTry: number[][] = [];
   for (;;) {
@@ -83,11 +84,7 @@ function sidesToTry(
 }
 
 /** Ops with one side only, then breadth-first along the nets from them, or from an op with the most nets. */
-function orderOf({ opCount, nets }: PlacementInstance, sides: Int8Array): number[] {
-  const netsAt: number[][] = Array.from({ length: opCount }, () => []);
-  nets.forEach(({ source, consumers }, net) => {
-    for (const op of [source, ...consumers]) netsAt[op]?.push(net);
-  });
+function orderOf({ opCount, nets }: PlacementInstance, netsAt: NetsAt, sides: Int8Array): number[] {
   const ops = [...netsAt.keys()];
   const isSeen = new Uint8Array(opCount);
   const isSpread = new Uint8Array(nets.length);

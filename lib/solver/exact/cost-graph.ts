@@ -19,6 +19,10 @@ export interface CostGraph {
   triples: readonly OpTriple[];
   /** Tables of a node: one for each pair, then three for each triple. */
   tableCount: number;
+  /** Of each table: its two ops, the lower one first, and the other op of its triple, −1 for a pair. */
+  tableA: Int32Array;
+  tableB: Int32Array;
+  tableThird: Int32Array;
 }
 
 export interface OpTriple {
@@ -71,8 +75,22 @@ export function costGraph(
     bc: graph.pairAt(b, c),
     table: graph.pairs.length + 3 * i,
   }));
-  const tableCount = graph.pairs.length + 3 * triples.length;
-  return { opCount, tileCount, first, second, pairsOf, triples, tableCount };
+  const tableOps = [
+    ...graph.pairs.map(([a, b]) => [a, b, -1] as const),
+    ...triples.flatMap(({ a, b, c }) => [[a, b, c] as const, [a, c, b] as const, [b, c, a] as const]),
+  ];
+  return {
+    opCount,
+    tileCount,
+    first,
+    second,
+    pairsOf,
+    triples,
+    tableCount: tableOps.length,
+    tableA: Int32Array.from(tableOps, ([a]) => a),
+    tableB: Int32Array.from(tableOps, ([, b]) => b),
+    tableThird: Int32Array.from(tableOps, ([, , third]) => third),
+  };
 }
 
 interface GrowingGraph {

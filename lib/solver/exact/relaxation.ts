@@ -137,48 +137,41 @@ function keepTiles(
   return size > 0;
 }
 
-/** Copies the tables between free ops, for the tiles that they keep. */
-function keepTables(child: Relaxation, from: Relaxation, op: number, kept: Int32Array): void {
-  const { first, second, triples } = child.graph;
-  const { domainSize, tableAt } = child;
+/** Lays out the tables that stay, for the domains as they are; returns the entries of all of them. */
+export function layTables(relaxation: Relaxation, stays: (table: number) => boolean): number {
+  const { graph, domainSize, tableAt } = relaxation;
   let size = 0;
-  const lay = (table: number, a: number, b: number) => {
-    if (a === op || b === op || from.tableAt[table] === -1) {
+  for (let table = 0; table < graph.tableCount; table++) {
+    if (!stays(table)) {
       tableAt[table] = -1;
-      return;
+      continue;
     }
     tableAt[table] = size;
-    size += (domainSize[a] as number) * (domainSize[b] as number);
-  };
-  for (let pair = 0; pair < first.length; pair++) lay(pair, first[pair] as number, second[pair] as number);
-  for (const { a, b, c, table } of triples) {
-    const isWhole = a !== op && b !== op && c !== op && from.tableAt[table] !== -1;
-    for (let k = 0; k < 3; k++) {
-      if (!isWhole) tableAt[table + k] = -1;
-      else lay(table + k, k === 2 ? b : a, k === 0 ? b : c);
-    }
+    size +=
+      (domainSize[graph.tableA[table] as number] as number) *
+      (domainSize[graph.tableB[table] as number] as number);
   }
+  return size;
+}
+
+/** Copies the tables between free ops, for the tiles that they keep. */
+function keepTables(child: Relaxation, from: Relaxation, op: number, kept: Int32Array): void {
+  const { tableCount, tableA, tableB, tableThird } = child.graph;
+  const size = layTables(
+    child,
+    (table) =>
+      from.tableAt[table] !== -1 && tableA[table] !== op && tableB[table] !== op && tableThird[table] !== op,
+  );
   if (child.tables.length < size) child.tables = new Float64Array(Math.ceil(1.25 * size));
-  const copy = (table: number, a: number, b: number) => {
-    if (tableAt[table] !== -1) copyTable(child, from, table, a, b, kept);
-  };
-  for (let pair = 0; pair < first.length; pair++) copy(pair, first[pair] as number, second[pair] as number);
-  for (const { a, b, c, table } of triples) {
-    copy(table, a, b);
-    copy(table + 1, a, c);
-    copy(table + 2, b, c);
+  for (let table = 0; table < tableCount; table++) {
+    if (child.tableAt[table] !== -1) copyTable(child, from, table, kept);
   }
 }
 
-function copyTable(
-  child: Relaxation,
-  from: Relaxation,
-  table: number,
-  a: number,
-  b: number,
-  kept: Int32Array,
-): void {
-  const { tileCount } = child.graph;
+function copyTable(child: Relaxation, from: Relaxation, table: number, kept: Int32Array): void {
+  const { tileCount, tableA, tableB } = child.graph;
+  const a = tableA[table] as number;
+  const b = tableB[table] as number;
   const source = from.tables;
   const target = child.tables;
   const rows = child.domainSize[a] as number;

@@ -3,7 +3,7 @@ import { neighboursOf, pairCosts, type WeightedPair } from '../bounds/pair-costs
 import type { PlacementInstance } from '../instance';
 import { matchOps } from '../search/matching';
 import { costGraph } from './cost-graph';
-import { blankRelaxation, NOBODY, type Relaxation } from './relaxation';
+import { blankRelaxation, layTables, NOBODY, type Relaxation } from './relaxation';
 
 /** Entries of all tables together, before anything is struck out. */
 export function tableEntries(instance: PlacementInstance): number {
@@ -36,7 +36,7 @@ export function rootRelaxation(instance: PlacementInstance): Relaxation | null {
     root.domainSize[op] = tiles.length;
     for (const tile of tiles) root.residual[op * tileCount + tile] = 0;
   });
-  layTables(root);
+  root.tables = new Float64Array(layTables(root, () => true));
   graph.first.forEach((a, pair) => {
     const b = graph.second[pair] as number;
     const group = groups[pair] ?? { a, b, terms: [] };
@@ -48,25 +48,6 @@ export function rootRelaxation(instance: PlacementInstance): Relaxation | null {
     root.holderOf[tile] = op;
   });
   return root;
-}
-
-/** A table for each pair, and three for each triple: whatever they hold at first, its pairs have. */
-function layTables(root: Relaxation): void {
-  const { first, second, triples } = root.graph;
-  let size = 0;
-  const lay = (table: number, a: number, b: number) => {
-    root.tableAt[table] = size;
-    size += (root.domainSize[a] as number) * (root.domainSize[b] as number);
-  };
-  first.forEach((a, pair) => {
-    lay(pair, a, second[pair] as number);
-  });
-  for (const { a, b, c, table } of triples) {
-    lay(table, a, b);
-    lay(table + 1, a, c);
-    lay(table + 2, b, c);
-  }
-  root.tables = new Float64Array(size);
 }
 
 interface Group {
