@@ -130,7 +130,13 @@ export async function reportProgress(
 export async function finishSolve(
   tx: Tx,
   hold: Hold,
-  end: { state: 'done' | 'failed' | 'cancelled'; outcome: SolveEnd; best: SolveBest | null },
+  end: {
+    state: 'done' | 'failed' | 'cancelled';
+    outcome: SolveEnd;
+    best: SolveBest | null;
+    /** Up to the end; without it, what was reported last stays. */
+    history?: SolveHistoryPoint[];
+  },
 ): Promise<boolean> {
   const { outcome } = end;
   const rows = await tx
@@ -144,6 +150,7 @@ export async function finishSolve(
       nodes: outcome.nodes,
       leaseUntil: null,
       finishedAt: sql`now()`,
+      ...(end.history ? { history: thinned(end.history) } : {}),
       ...(end.best ? { best: end.best, bestObjective: end.best.objectiveValue } : {}),
     })
     .where(held(hold))

@@ -63,9 +63,7 @@ async function runTaken(taken: TakenSolve, log: Logger, stopping: AbortSignal): 
     await releaseSolve(database(), hold);
     return 'handed back';
   }
-  // The last rise of the bound often is the end: the history has it before the row says so.
-  await reportProgress(database(), hold, ledger.note());
-  return writeEnd(hold, taken, result, (asked as string) === 'stop', log);
+  return writeEnd(hold, taken, result, ledger.note().history, (asked as string) === 'stop', log);
 }
 
 type SolveResult = { ok: true; outcome: SolveOutcome } | { ok: false; reason: string };
@@ -108,6 +106,7 @@ async function writeEnd(
   hold: Hold,
   taken: TakenSolve,
   result: SolveResult,
+  history: SolveHistoryPoint[],
   stoppedByPerson: boolean,
   log: Logger,
 ): Promise<string> {
@@ -128,7 +127,7 @@ async function writeEnd(
     return 'broken';
   }
   const state = stoppedByPerson ? 'cancelled' : 'done';
-  const written = await finishSolve(database(), hold, { state, outcome: endOf(outcome), best });
+  const written = await finishSolve(database(), hold, { state, outcome: endOf(outcome), best, history });
   return written ? outcome.status : 'lost to another worker';
 }
 
