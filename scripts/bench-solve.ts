@@ -2,7 +2,7 @@
  * Solves every demo kernel on every demo fabric with each engine and prints one JSON line a case, then a summary of how
  * the first engine compares with the others in the same run:
  *   npm run bench:solve -- [--time-limit-ms N] [--objective wire|path] [--engines auto,program,highs,simplex,search]
- *                          [--kernel part of its name] [--fabric part of its name] [--large yes]
+ *                          [--kernel part of its name] [--fabric part of its name] [--large]
  * With --large, kernels of 40 to 60 ops on 10 × 10 and 12 × 12 tiles in their place.
  */
 import { parseArgs } from 'node:util';
@@ -23,7 +23,7 @@ const { values } = parseArgs({
     engines: { type: 'string', default: 'auto,highs,simplex' },
     kernel: { type: 'string', default: '' },
     fabric: { type: 'string', default: '' },
-    large: { type: 'string', default: '' },
+    large: { type: 'boolean', default: false },
   },
 });
 const objective = objectives.find((one) => one === values.objective) ?? 'wire';
@@ -86,12 +86,11 @@ async function measure(kernel: Kernel, fabric: Fabric, engine: EngineChoice) {
 }
 
 const runs: EngineRun[] = [];
-const cases =
-  values.large === ''
-    ? demoKernels.flatMap(({ slug, kernel }) =>
-        demoFabrics.map(({ key, fabric }) => ({ slug, kernel, key, fabric })),
-      )
-    : largeCases();
+const cases = !values.large
+  ? demoKernels.flatMap(({ slug, kernel }) =>
+      demoFabrics.map(({ key, fabric }) => ({ slug, kernel, key, fabric })),
+    )
+  : largeCases();
 for (const { slug, kernel, key, fabric } of cases) {
   if (!slug.includes(values.kernel) || !key.includes(values.fabric)) continue;
   for (const engine of engines) {

@@ -4,6 +4,7 @@ import type { Provenance } from '@/lib/mapping/mapping';
 import { unequalWeights } from '@/lib/mapping/weights';
 import { useBenchStore } from '../store/bench-context';
 import { weightRows } from './weight-entries';
+import { WeightsTable } from './weights-table';
 
 /** More are told only when asked for. */
 const WEIGHTS_SHOWN = 12;
@@ -22,22 +23,16 @@ export function MadeWithWeights({ provenance }: { provenance: Provenance }) {
         Weights
       </summary>
       <p className="mt-1 text-quiet">All others are 1.</p>
-      <table className="mt-1 w-full">
-        <thead className="sr-only">
-          <tr>
-            <th scope="col">{objective === 'wire' ? 'Net' : 'Connection'}</th>
-            <th scope="col">Weight</th>
-          </tr>
-        </thead>
-        <tbody>
+      <div className="mt-1">
+        <WeightsTable objective={objective}>
           {rows.map(({ id, label }) => (
             <tr key={id} className="border-t border-rule">
               <td className="py-0.5 pr-2">{label}</td>
               <td className="text-right font-mono">{unequal.get(id)}</td>
             </tr>
           ))}
-        </tbody>
-      </table>
+        </WeightsTable>
+      </div>
     </details>
   );
 }

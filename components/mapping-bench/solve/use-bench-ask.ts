@@ -78,13 +78,14 @@ export function useBenchAsk(store: BenchStore, parts: SolveJobParts & { settings
     if (result && content === started.content) takeResult(result, { said: takenText(ended) });
     else say(anotherSentence(ended));
   };
-  const finish = useRef(onFinished);
-  finish.current = onFinished;
+  const finish = useRef(() => {});
+  finish.current = () => {
+    if (solve) onFinished(solve);
+  };
   const finishedId = solve && !isLive(solve) ? solve.id : null;
   // Once for each solve that ends, whatever else of it changes afterwards.
-  // biome-ignore lint/correctness/useExhaustiveDependencies: the solve is the one whose id is looked at
   useEffect(() => {
-    if (finishedId !== null && solve) finish.current(solve);
+    if (finishedId !== null) finish.current();
   }, [finishedId]);
 
   return {

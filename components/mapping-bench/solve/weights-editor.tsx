@@ -13,6 +13,7 @@ import {
   weightRows,
   wrongTexts,
 } from './weight-entries';
+import { WeightsTable } from './weights-table';
 
 interface WeightsEditorProps {
   objective: Objective;
@@ -56,19 +57,11 @@ function WeightTable({ objective, texts, onTexts }: WeightsEditorProps) {
         A hop of a {what} counts its weight. With 0 the {what} is routed, but costs nothing.
       </p>
       <div className="mt-2 max-h-72 overflow-y-auto border-y border-rule">
-        <table className="w-full">
-          <thead className="sr-only">
-            <tr>
-              <th scope="col">{objective === 'wire' ? 'Net' : 'Connection'}</th>
-              <th scope="col">Weight</th>
-            </tr>
-          </thead>
-          <tbody>
-            {rows.map((row) => (
-              <WeightField key={row.id} row={row} text={texts[row.id] ?? '1'} onText={onText} />
-            ))}
-          </tbody>
-        </table>
+        <WeightsTable objective={objective}>
+          {rows.map((row) => (
+            <WeightField key={row.id} row={row} text={texts[row.id] ?? '1'} onText={onText} />
+          ))}
+        </WeightsTable>
       </div>
       <Button
         look="secondary"

@@ -5,6 +5,7 @@ import { honestProvenance } from '@/lib/mapping/honest-provenance';
 import { mappingSvg, PICTURE_CAUTION } from '@/lib/mapping/picture/mapping-svg';
 import { picturePalette } from '@/lib/mapping/picture/picture-palette';
 import { escapeXml } from '@/lib/mapping/picture/svg-text';
+import { sampleCertificate } from '../../helpers/sample-certificate';
 import { fabric, kernel, newStore, placeAll } from './bench-fixture';
 
 function smallMapping(name: string) {
@@ -90,26 +91,7 @@ test('of solves with the same figures the certificate tells which one is meant',
     bound: 5,
     elapsedMs: 9,
     changedByHand: false,
-    certificate: certificateSchema.parse({
-      format: 'pinloom.certificate',
-      formatVersion: 1,
-      engineVersion: 1,
-      problemDigest: `sha256:${digit.repeat(64)}`,
-      objective: 'wire',
-      pins: {},
-      start: null,
-      engine: 'auto',
-      seed: 1,
-      searchTries: 1,
-      status: 'optimal',
-      objectiveValue: 5,
-      bound: 5,
-      method: 'counting',
-      nodes: 0,
-      levels: [],
-      struckTiles: 0,
-      isRepeatable: true,
-    }),
+    certificate: certificateSchema.parse(sampleCertificate({ problemDigest: `sha256:${digit.repeat(64)}` })),
   });
   const known = ['0', '1', '2'].map((digit) => ({ provenance: made(digit), placement }));
   expect(honestProvenance(made('1'), placement, known)).toEqual(made('1'));
