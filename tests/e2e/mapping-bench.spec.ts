@@ -207,8 +207,11 @@ test('a net is made to count more by keys alone: values are weighted, the settin
   await expect(panel.getByRole('table')).toHaveCount(0);
   await weights.focus();
   await page.keyboard.press('Enter');
+  const gain = panel.getByLabel('raw → gain', { exact: true });
+  // The fields come up once the browser has told of the opening: a Tab before that has nothing to go to.
+  await expect(gain).toBeVisible();
   await page.keyboard.press('Tab');
-  await expect(panel.getByLabel('raw → gain', { exact: true })).toBeFocused();
+  await expect(gain).toBeFocused();
   await page.keyboard.press('Control+a');
   await page.keyboard.type('2.5');
   await page.keyboard.press('Enter');
